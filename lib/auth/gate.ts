@@ -1,0 +1,81 @@
+import "server-only";
+import { and, eq } from "drizzle-orm";
+import { database } from "@/db/client";
+import { users } from "@/db/schema/accounts";
+import { members, projects } from "@/db/schema/projects";
+import { allows, type Right, type Role } from "@/lib/auth/roles";
+import { findSession } from "@/lib/auth/session";
+import { AppError } from "@/lib/errors/app-error";
+import type { ProjectId, SessionId, UserId } from "@/lib/ids";
+
+declare const gate: unique symbol;
+
+/** Proof that somebody may see or change a project. Only this file makes one; every project read and write takes one. */
+export interface ProjectAccess {
+  readonly [gate]: true;
+  readonly projectId: ProjectId;
+  /** Null: the worker, on behalf of a job. */
+  readonly userId: UserId | null;
+  readonly role: Role;
+}
+
+/** Who is signed in. */
+export interface SignedInUser {
+  readonly id: UserId;
+  readonly sessionId: SessionId;
+  readonly email: string;
+  readonly name: string;
+  readonly isAdministrator: boolean;
+}
+
+/** @throws AppError unauthenticated where no living session of an enabled account is presented */
+export async function requireUser(): Promise<SignedInUser> {
+  const user = await findSession();
+  if (!user) throw new AppError("unauthenticated", "Sign in first.");
+  return user;
+}
+
+/** @throws AppError unauthenticated or forbidden */
+export async function requireAdministrator(): Promise<SignedInUser> {
+  const user = await requireUser();
+  if (!user.isAdministrator)
+    throw new AppError("forbidden", "Only the administrator of this installation may do this.");
+  return user;
+}
+
+/**
+ * The one authorisation gate of projects. The role comes from the database, never from the cookie.
+ * @throws AppError unauthenticated; not_found where the person is no member (the administrator too); forbidden
+ */
+export async function requireProject(projectId: ProjectId, right: Right): Promise<ProjectAccess> {
+  const user = await requireUser();
+  const [member] = await database()
+    .select({ role: members.role })
+    .from(members)
+    .innerJoin(projects, eq(projects.id, members.projectId))
+    .where(and(eq(members.projectId, projectId), eq(members.userId, user.id)));
+  if (!member) throw new AppError("not_found", "There is no such project, or you are not in it.");
+  if (!allows(member.role, right)) throw new AppError("forbidden", REFUSALS[right]);
+  return mint(projectId, user.id, member.role);
+}
+
+/** The same for the worker: a job has been asked for by somebody who had the right. */
+export function accessForJob(job: { readonly projectId: ProjectId }): ProjectAccess {
+  return mint(job.projectId, null, "editor");
+}
+
+/** Whether an account is still enabled; for places that hold a user id already. */
+export async function isEnabled(userId: UserId): Promise<boolean> {
+  const [user] = await database().select({ disabledAtMs: users.disabledAtMs }).from(users).where(eq(users.id, userId));
+  return user !== undefined && user.disabledAtMs === null;
+}
+
+const REFUSALS: Record<Right, string> = {
+  view: "You may not see this project.",
+  edit: "As a viewer you may look and comment, not change. Ask the project's lead to make you an editor.",
+  manage: "Only a lead of the project may do this.",
+};
+
+function mint(projectId: ProjectId, userId: UserId | null, role: Role): ProjectAccess {
+  return { projectId, userId, role } as ProjectAccess;
+}

@@ -23,6 +23,10 @@ const PIXELS_PER_SAMPLE = 12;
 const TAPER_SHARE = 0.06;
 /** A coarse pixel is two fine ones and its peak may be one off, so the climb at 256 px seldom goes further than this. */
 const LONGEST_CLIMB_PX = 6;
+/** Two candidates that climb to within this distance of each other are one peak. */
+const SAME_PEAK_PX = 4;
+/** Nothing beside the best peak: as clear as a ratio can usefully say. */
+const HIGHEST_PEAK_RATIO = 100;
 /** atanh(1) is infinite; a picture against itself must stay comparable. */
 const HIGHEST_NCC = 0.999999;
 
@@ -124,7 +128,7 @@ export function measureShift(a: PreparedImage, b: PreparedImage): ImageShift {
   return {
     ...refine(a.fine, b.fine, x, y, correlation.ncc),
     ncc: correlation.ncc,
-    peakRatio: peakRatio(best.peak, peaks),
+    peakRatio: peakRatio(best.climbed, ranked.map(({ climbed }) => climbed)),
     contrast: Math.min(correlation.deviationA, correlation.deviationB) / TEXTURE_LEVEL,
   };
 }
@@ -174,9 +178,10 @@ function refine(a: FloatPlane, b: FloatPlane, x: number, y: number, ncc: number)
   return { x: x + parabolaOffset(at(-1, 0), ncc, at(1, 0)), y: y + parabolaOffset(at(0, -1), ncc, at(0, 1)) };
 }
 
-function peakRatio(best: SurfacePeak, peaks: readonly SurfacePeak[]): number {
-  const second = peaks.find((peak) => peak !== best)?.height ?? 0;
-  // Nothing beside it: as clear as a ratio can usefully say.
-  if (second <= 0) return 100;
-  return Math.max(1, Math.min(100, best.height / second));
+/** Best score over the second best of those that lie elsewhere. */
+function peakRatio(best: Climbed, all: readonly Climbed[]): number {
+  const others = all.filter(({ x, y }) => Math.max(Math.abs(x - best.x), Math.abs(y - best.y)) > SAME_PEAK_PX);
+  const second = Math.max(0, ...others.map(({ score }) => score));
+  if (second === 0) return best.score > 0 ? HIGHEST_PEAK_RATIO : 1;
+  return Math.max(1, Math.min(HIGHEST_PEAK_RATIO, best.score / second));
 }

@@ -1,0 +1,95 @@
+"use client";
+
+import Link from "next/link";
+import { usePathname } from "next/navigation";
+import { ticketLines, type TicketLine, type TicketStatus } from "@/components/shell/ticket-lines";
+import { classNames } from "@/components/ui/class-names";
+
+// Only what is built: a view joins the ticket together with its page.
+const STUBS = [
+  { view: "intake", title: "Bring in" },
+  { view: "board", title: "Board" },
+  { view: "handover", title: "Hand over" },
+] as const;
+
+interface JobTicketProps {
+  readonly projectId: string;
+  readonly status: TicketStatus;
+}
+
+/** Navigation and status at once: one perforated stub a step, each with one line saying how far it is. */
+export function JobTicket({ projectId, status }: JobTicketProps) {
+  const pathname = usePathname();
+  const lines = ticketLines(status);
+  return (
+    <nav aria-label="Job ticket" className="border-y border-ink">
+      <ol className="grid grid-cols-3">
+        {STUBS.map(({ view, title }, index) => {
+          const href = `/projects/${projectId}/${view}`;
+          const isHere = pathname === href || pathname.startsWith(`${href}/`);
+          return (
+            <li key={view} className="relative min-w-0">
+              {index > 0 && <Perforation />}
+              <Stub href={href} number={index + 1} title={title} line={lines[view]} isHere={isHere} />
+            </li>
+          );
+        })}
+      </ol>
+    </nav>
+  );
+}
+
+const LINE_TONES: Record<TicketLine["tone"], string> = {
+  quiet: "text-quiet",
+  ink: "text-quiet",
+  ochre: "text-ochre font-semibold",
+  madder: "text-madder font-semibold",
+};
+
+interface StubProps {
+  readonly href: string;
+  readonly number: number;
+  readonly title: string;
+  readonly line: TicketLine;
+  readonly isHere: boolean;
+}
+
+function Stub({ href, number, title, line, isHere }: StubProps) {
+  return (
+    <Link
+      href={href}
+      aria-current={isHere ? "page" : undefined}
+      className="group flex h-full items-center gap-x-4 px-3 py-2 -outline-offset-4 hover:bg-tray sm:px-5"
+    >
+      <span
+        aria-hidden
+        className={classNames("text-xl font-bold max-sm:hidden", isHere ? "text-petrol" : "text-quiet")}
+      >
+        {number}
+      </span>
+      <span className="min-w-0 self-start sm:self-center">
+        <span
+          className={classNames(
+            "inline-block border-b-3 leading-6 font-bold",
+            isHere ? "border-petrol" : "border-transparent group-hover:border-hairline",
+          )}
+        >
+          {title}
+        </span>
+        <span className={classNames("figures block text-sm", LINE_TONES[line.tone])}>{line.text}</span>
+      </span>
+    </Link>
+  );
+}
+
+/** A dotted line between two punched half circles; each half hides the part outside the ticket. */
+function Perforation() {
+  const hole = "absolute -left-[7px] size-[13px] rounded-full border border-ink bg-paper";
+  return (
+    <span aria-hidden className="pointer-events-none">
+      <span className={classNames(hole, "-top-[7px] [clip-path:inset(6px_0_0_0)]")} />
+      <span className="absolute inset-y-2 left-[-1px] border-l-2 border-dotted border-line" />
+      <span className={classNames(hole, "-bottom-[7px] [clip-path:inset(0_0_6px_0)]")} />
+    </span>
+  );
+}

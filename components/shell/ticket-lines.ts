@@ -1,0 +1,50 @@
+/** What the job ticket needs to know of a project. Counts of files are those of `/progress`. */
+export interface TicketStatus {
+  readonly received: number;
+  readonly analysed: number;
+  readonly failed: number;
+  readonly total: number;
+  readonly sorted: boolean;
+  readonly tiles: number;
+  readonly openQuestions: number;
+}
+
+/** ochre: needs a decision; madder: failure; quiet: nothing to say yet. */
+export interface TicketLine {
+  readonly text: string;
+  readonly tone: "quiet" | "ink" | "ochre" | "madder";
+}
+
+/** "1 question", "3 questions": a number of things, said as things. */
+export function countOf(count: number, one: string, many = `${one}s`): string {
+  return `${count.toLocaleString("en")} ${count === 1 ? one : many}`.replace(/,/g, " ");
+}
+
+/** The one live line of each stub: how far that step is. */
+export function ticketLines(status: TicketStatus): Record<"intake" | "board" | "handover", TicketLine> {
+  return { intake: intakeLine(status), board: boardLine(status), handover: handoverLine(status) };
+}
+
+function intakeLine({ received, analysed, failed, total }: TicketStatus): TicketLine {
+  if (total === 0) return { text: "nothing yet", tone: "quiet" };
+  if (received < total) return { text: `${received} of ${countOf(total, "file")} in`, tone: "ink" };
+  if (analysed + failed < received)
+    return { text: `${analysed + failed} of ${countOf(received, "file")} measured`, tone: "ink" };
+  if (failed > 0) return { text: `${countOf(received, "file")}, ${failed} unreadable`, tone: "madder" };
+  return { text: countOf(received, "file"), tone: "ink" };
+}
+
+function boardLine({ received, sorted, tiles, openQuestions }: TicketStatus): TicketLine {
+  if (received === 0) return { text: "not yet", tone: "quiet" };
+  if (!sorted && tiles === 0) return { text: "sorting", tone: "ink" };
+  if (!sorted) return { text: `${countOf(tiles, "tile")}, sorting again`, tone: "ink" };
+  if (openQuestions > 0) return { text: countOf(openQuestions, "question"), tone: "ochre" };
+  if (tiles === 0) return { text: "no tiles found", tone: "madder" };
+  return { text: `${countOf(tiles, "tile")}, no questions`, tone: "ink" };
+}
+
+function handoverLine({ sorted, tiles, openQuestions }: TicketStatus): TicketLine {
+  if (!sorted || tiles === 0) return { text: "not yet", tone: "quiet" };
+  if (openQuestions > 0) return { text: `ready, ${openQuestions} open`, tone: "ochre" };
+  return { text: "ready", tone: "ink" };
+}

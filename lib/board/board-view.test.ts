@@ -1,0 +1,127 @@
+import { expect, test } from "vitest";
+import { indexBoard, lostShare } from "@/lib/board/board-index";
+import { combBars } from "@/lib/board/comb";
+import { cropAround, gridOrigin, layoutBoard, picturePart, tileSteps } from "@/lib/board/layout";
+import { railRuns } from "@/lib/board/rail";
+import { boardStatus, noiseOfMean, stackFacts } from "@/lib/board/summary";
+import { makeBoard, makeEventfulBoard } from "@/tests/support/make-board";
+
+const all = { left: true, right: true, above: true, below: true };
+
+test("a missing tile in mid-grid loses (1 - 2o) squared of its area", () => {
+  // check-values.md E43: 1/3 gives 11.1 %, 1/4 gives 25 %, 1/2 gives nothing.
+  for (const [overlap, lost] of [
+    [1 / 3, 0.111],
+    [0.25, 0.25],
+    [0.5, 0],
+    [0.7, 0],
+  ] as const) {
+    expect(lostShare({ across: overlap, down: overlap }, all)).toBeCloseTo(lost, 3);
+  }
+});
+
+test("a missing corner tile loses what its two neighbours do not cover", () => {
+  // By hand: (1 - 0.25) x (1 - 0.25).
+  expect(lostShare({ across: 0.25, down: 0.25 }, { ...all, left: false, above: false })).toBeCloseTo(0.5625, 12);
+});
+
+test("the index finds tiles, holes, takes, loose frames and the frames that are asked about", () => {
+  const index = indexBoard(makeEventfulBoard());
+  expect(index.tiles.size).toBe(17);
+  expect([...index.holes.keys()]).toEqual(["B5"]);
+  expect(index.tiles.get("C6")?.takes).toHaveLength(2);
+  expect(index.tileOfStack.get("stack-3-6-take-2")?.name).toBe("C6");
+  expect(index.loose).toHaveLength(4);
+  expect([...index.askedFrames]).toEqual(["frame-17"]);
+  expect(index.tiles.get("C1")?.isFew).toBe(true);
+});
+
+test("the status line says what the board holds", () => {
+  expect(boardStatus(indexBoard(makeEventfulBoard()))).toEqual([
+    "17 of 18 tiles",
+    "5 frames set aside",
+    "4 loose frames",
+    "overlap at least 18 %",
+    "3 to 6 frames a tile",
+  ]);
+});
+
+test("the bench's head gives settings, brightness and the noise of the mean", () => {
+  const index = indexBoard(makeEventfulBoard());
+  const tile = index.tiles.get("A1");
+  expect(tile && stackFacts(tile, tile.frames)).toEqual([
+    "6 of 6 in use",
+    "1/250 s f/8 ISO 100 105 mm",
+    expect.stringMatching(/^brightness varies 0\.0\d EV$/),
+    "noise 41 % of one frame",
+  ]);
+  // check-values.md, table 2.3: the mean of 7 frames has 1 / sqrt(7) = 0.378 of the noise of one.
+  expect(noiseOfMean(7)).toBeCloseTo(0.378, 3);
+});
+
+test("the comb runs from the soft limit to the best frame", () => {
+  const [template] = makeBoard({ rows: 1, columns: 1, framesPerTile: 1 }).frames;
+  if (!template) throw new Error("the recipe makes one frame");
+  const frames = [1, 0.9, 0.8, 0.3].map((relativeSharpness, at) => ({
+    ...template,
+    id: `f${at}`,
+    relativeSharpness,
+    setAside: at === 3 ? ("soft" as const) : null,
+  }));
+  const bars = combBars([...frames, { ...template, id: "f4", relativeSharpness: null }]);
+  // By hand: median of those in use 0.9, limit 0.9 exp(-0.2) = 0.7369; (0.8 - 0.7369) / (1 - 0.7369) = 0.240.
+  expect(bars.map((bar) => bar.height)).toEqual([1, expect.closeTo(0.62, 2), expect.closeTo(0.24, 2), 0.12, null]);
+  expect(bars.map((bar) => bar.isSetAside)).toEqual([false, false, false, true, false]);
+});
+
+test("the rail is cut where the stack changes and draws the pause there", () => {
+  const { frames } = makeBoard({ rows: 1, columns: 2, framesPerTile: 3, looseFrames: 1 });
+  const runs = railRuns(frames, 4);
+  expect(runs.map((run) => [run.stackId, run.frames.length])).toEqual([
+    ["stack-1-1", 3],
+    ["stack-1-2", 3],
+    [null, 1],
+  ]);
+  expect(runs[0]?.pause).toBeNull();
+  expect(runs[1]?.pause?.text).toMatch(/^\d+ s$/);
+  expect(runs[2]?.runHeightPx).toBeGreaterThanOrEqual(24);
+});
+
+test("a crop shows the same spot of a shifted frame, and says where it cannot", () => {
+  const frame = { widthPx: 1500, heightPx: 1000, shift: { xPx: 10, yPx: -20 } };
+  // By hand: a frame whose corner lies 10 px right and 20 px up shows the spot 10 px further left and 20 px lower.
+  expect(cropAround(frame, { x: 700, y: 500 }, { w: 200, h: 100 })).toEqual({
+    x: 590,
+    y: 470,
+    w: 200,
+    h: 100,
+    isSameSpot: true,
+  });
+  expect(cropAround(frame, { x: 0, y: 0 }, { w: 200, h: 100 }).isSameSpot).toBe(false);
+  const far = cropAround({ ...frame, shift: { xPx: 3790, yPx: 0 } }, { x: 700, y: 500 }, { w: 200, h: 100 });
+  expect(far).toEqual({ x: 650, y: 450, w: 200, h: 100, isSameSpot: false });
+  const small = cropAround({ widthPx: 80, heightPx: 60, shift: null }, { x: 5, y: 5 }, { w: 200, h: 100 });
+  expect(small).toEqual({ x: 0, y: 0, w: 80, h: 60, isSameSpot: true });
+});
+
+test("tiles show their own part, one step wide, so that neighbours' pictures meet", () => {
+  const index = indexBoard(makeBoard({ rows: 2, columns: 3, framesPerTile: 4 }));
+  const steps = tileSteps(index);
+  expect(steps.acrossPx).toBeCloseTo(1000, -1.3);
+  const origin = gridOrigin(index, steps);
+  const rightEdgeOf = (name: string) => {
+    const tile = index.tiles.get(name);
+    if (!tile) throw new Error(`no tile ${name}`);
+    const part = picturePart(tile, steps, origin);
+    return (tile.stack.position?.xPx ?? NaN) + (part.x + part.width) * 1500;
+  };
+  const b = index.tiles.get("A2");
+  const leftEdge = b ? (b.stack.position?.xPx ?? NaN) + picturePart(b, steps, origin).x * 1500 : NaN;
+  expect(rightEdgeOf("A1")).toBeCloseTo(leftEdge, 6);
+});
+
+test("tiles get smaller with more columns, never smaller than a pointer can hit", () => {
+  const sizes = [6, 12, 50, 200].map((columns) => layoutBoard({ columns, widthPx: 1160, aspect: 1.5 }));
+  expect(sizes.map(({ size }) => size)).toEqual(["full", "medium", "map", "map"]);
+  expect(Math.min(...sizes.map(({ tileWidthPx }) => tileWidthPx))).toBe(24);
+});

@@ -1,0 +1,37 @@
+import { median } from "@/lib/board/board-index";
+import type { BoardFrame } from "@/lib/board/model";
+
+/** Log ratio to the stack's median under which a frame is soft (analysis.md, method 7). */
+const SOFT_LIMIT_LOG = -0.2;
+/** A bar that can still be seen, share of the comb's height. */
+const STUB = 0.12;
+
+export interface CombBar {
+  readonly frameId: string;
+  /** Share of the comb's height, STUB to 1; null: the sharpness is not known. */
+  readonly height: number | null;
+  /** Drawn hollow. */
+  readonly isSetAside: boolean;
+}
+
+/**
+ * One bar per frame: from the soft limit of the tile (nothing) up to its best frame (full), so that differences show.
+ * @param frames - of one stack, in the order taken; relativeSharpness 0 to 1 against the best
+ */
+export function combBars(frames: readonly BoardFrame[]): CombBar[] {
+  const known = frames.flatMap(({ relativeSharpness, setAside }) =>
+    relativeSharpness !== null && setAside === null ? [relativeSharpness] : [],
+  );
+  const best = Math.max(0, ...known);
+  const limit = (median(known) ?? 0) * Math.exp(SOFT_LIMIT_LOG);
+  return frames.map(({ id, relativeSharpness, setAside }) => ({
+    frameId: id,
+    isSetAside: setAside !== null,
+    height: relativeSharpness === null ? null : barHeight(relativeSharpness, limit, best),
+  }));
+}
+
+function barHeight(value: number, limit: number, best: number): number {
+  if (best <= limit) return value > 0 ? 1 : STUB;
+  return Math.min(1, Math.max(STUB, (value - limit) / (best - limit)));
+}

@@ -1,0 +1,165 @@
+import { median, type BoardIndex, type BoardTile } from "@/lib/board/board-index";
+import type { BoardFrame } from "@/lib/board/model";
+
+/** full: caption with comb; medium: name and exceptions; map: a mosaic. */
+export type TileSize = "full" | "medium" | "map";
+
+export interface BoardLayout {
+  readonly size: TileSize;
+  /** Width of the picture of one tile, px. */
+  readonly tileWidthPx: number;
+  readonly pictureHeightPx: number;
+  readonly captionHeightPx: number;
+  readonly gapPx: number;
+  /** Width of the column of row letters. */
+  readonly lettersWidthPx: number;
+}
+
+/** Narrowest tile that holds name, eight bars and "8/8": measured with the shipped typeface. */
+const FULL_TILE_PX = 118;
+/** Narrowest tile that holds its name and a question mark. */
+const MEDIUM_TILE_PX = 58;
+/** Smallest tile that can be hit with a pointer (WCAG 2.2, 2.5.8: 24 px). */
+const MAP_TILE_PX = 24;
+/** A wider tile would show the preview larger than a person needs to find their way. */
+const LARGEST_TILE_PX = 420;
+
+/**
+ * Size of the tiles for a width.
+ * @param columns - 1 or more
+ * @param widthPx - what the well offers inside its padding
+ * @param aspect - width over height of the part of a picture that a tile shows
+ */
+export function layoutBoard(input: { columns: number; widthPx: number; aspect: number }): BoardLayout {
+  const columns = Math.max(1, input.columns);
+  const lettersWidthPx = 64;
+  const perTile = (gapPx: number) => Math.floor((input.widthPx - lettersWidthPx - gapPx * (columns - 1)) / columns);
+  const wide = perTile(3);
+  const size: TileSize = wide >= FULL_TILE_PX ? "full" : wide >= MEDIUM_TILE_PX ? "medium" : "map";
+  const gapPx = size === "full" ? 3 : size === "medium" ? 2 : 1;
+  const tileWidthPx = Math.min(LARGEST_TILE_PX, Math.max(MAP_TILE_PX, perTile(gapPx)));
+  return {
+    size,
+    tileWidthPx,
+    pictureHeightPx: Math.max(size === "map" ? MAP_TILE_PX : 1, Math.round(tileWidthPx / input.aspect)),
+    captionHeightPx: size === "full" ? 28 : size === "medium" ? 24 : 0,
+    gapPx,
+    lettersWidthPx,
+  };
+}
+
+/** The part of a picture that a tile shows, fractions of its sides. */
+export interface PicturePart {
+  readonly x: number;
+  readonly y: number;
+  readonly width: number;
+  readonly height: number;
+}
+
+const WHOLE: PicturePart = { x: 0, y: 0, width: 1, height: 1 };
+
+/** Steps between neighbouring tiles, full-size px, and the size of a frame. */
+export interface TileSteps {
+  readonly acrossPx: number;
+  readonly downPx: number;
+  readonly widthPx: number;
+  readonly heightPx: number;
+}
+
+/**
+ * Typical steps from tile to tile, so that every tile can show its own part and the neighbours' pictures meet.
+ * Without measured positions, or where pictures do not overlap, a step is the whole side.
+ */
+export function tileSteps(index: BoardIndex): TileSteps {
+  const references = [...index.tiles.values()].flatMap((tile) => (tile.reference ? [tile.reference] : []));
+  const widthPx = median(references.map((frame) => frame.widthPx)) ?? 3;
+  const heightPx = median(references.map((frame) => frame.heightPx)) ?? 2;
+  const step = (side: "right" | "below") =>
+    median(
+      index.board.seams.flatMap((seam) => {
+        const from = index.tileOfStack.get(seam.stackId)?.stack.position;
+        const to = index.tileOfStack.get(seam.neighbourId)?.stack.position;
+        if (seam.side !== side || !from || !to) return [];
+        return [side === "right" ? to.xPx - from.xPx : to.yPx - from.yPx];
+      }),
+    );
+  return { acrossPx: within(step("right"), widthPx), downPx: within(step("below"), heightPx), widthPx, heightPx };
+}
+
+/**
+ * The part that a tile shows: as large as one step, around the middle of the tile's place in a regular grid,
+ * so that a tile which lies a little off still continues its neighbours.
+ */
+export function picturePart(tile: BoardTile, steps: TileSteps, origin: { xPx: number; yPx: number }): PicturePart {
+  const width = steps.acrossPx / steps.widthPx;
+  const height = steps.downPx / steps.heightPx;
+  const { position } = tile.stack;
+  const offset =
+    position && tile.row !== null && tile.column !== null
+      ? {
+          x: (origin.xPx + (tile.column - 1) * steps.acrossPx - position.xPx) / steps.widthPx,
+          y: (origin.yPx + (tile.row - 1) * steps.downPx - position.yPx) / steps.heightPx,
+        }
+      : { x: 0, y: 0 };
+  if (width >= 1 && height >= 1) return WHOLE;
+  return {
+    x: clamp((1 - width) / 2 + offset.x, 0, 1 - width),
+    y: clamp((1 - height) / 2 + offset.y, 0, 1 - height),
+    width,
+    height,
+  };
+}
+
+/** Where A1 would lie for the regular grid to fit the measured positions best (median of what each tile says). */
+export function gridOrigin(index: BoardIndex, steps: TileSteps): { xPx: number; yPx: number } {
+  const placed = [...index.tiles.values()].flatMap(({ row, column, stack }) =>
+    row !== null && column !== null && stack.position ? [{ row, column, position: stack.position }] : [],
+  );
+  return {
+    xPx: median(placed.map(({ column, position }) => position.xPx - (column - 1) * steps.acrossPx)) ?? 0,
+    yPx: median(placed.map(({ row, position }) => position.yPx - (row - 1) * steps.downPx)) ?? 0,
+  };
+}
+
+export interface Crop {
+  /** Top left corner and size in the frame's own upright full-size px. */
+  readonly x: number;
+  readonly y: number;
+  readonly w: number;
+  readonly h: number;
+  /** False: the frame does not show that spot; its own middle is shown instead. */
+  readonly isSameSpot: boolean;
+}
+
+/**
+ * The crop of a frame that shows a spot of the reference at 100 %.
+ * @param spotPx - the spot, reference's full-size px
+ * @param size - wanted size, px; made smaller where the frame is
+ */
+export function cropAround(
+  frame: Pick<BoardFrame, "widthPx" | "heightPx" | "shift">,
+  spotPx: { readonly x: number; readonly y: number },
+  size: { readonly w: number; readonly h: number },
+): Crop {
+  const w = Math.min(Math.round(size.w), frame.widthPx);
+  const h = Math.min(Math.round(size.h), frame.heightPx);
+  const x = spotPx.x - (frame.shift?.xPx ?? 0);
+  const y = spotPx.y - (frame.shift?.yPx ?? 0);
+  const isSameSpot = x >= 0 && y >= 0 && x <= frame.widthPx && y <= frame.heightPx;
+  const middle = isSameSpot ? { x, y } : { x: frame.widthPx / 2, y: frame.heightPx / 2 };
+  return {
+    x: Math.round(clamp(middle.x - w / 2, 0, frame.widthPx - w)),
+    y: Math.round(clamp(middle.y - h / 2, 0, frame.heightPx - h)),
+    w,
+    h,
+    isSameSpot,
+  };
+}
+
+function within(step: number | null, sidePx: number): number {
+  return step === null || step <= 0 || step > sidePx ? sidePx : step;
+}
+
+function clamp(value: number, low: number, high: number): number {
+  return Math.min(Math.max(value, low), Math.max(low, high));
+}

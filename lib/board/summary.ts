@@ -1,0 +1,87 @@
+import type { BoardIndex, BoardTile } from "@/lib/board/board-index";
+import { countOf, exposureText, percent, trimmed } from "@/lib/board/words";
+import type { BoardFrame } from "@/lib/board/model";
+
+/** Exponent of display brightness: exposure values from a ratio of mean levels (analysis.md, method 8). */
+const BRIGHTNESS_TO_EV = 2.2;
+
+/** The status line under the board, most important first. */
+export function boardStatus(index: BoardIndex): string[] {
+  const { board, tiles, holes, loose, unplaced } = index;
+  const setAside = board.frames.filter((frame) => frame.setAside !== null).length;
+  const overlaps = board.seams.flatMap((seam) => (seam.overlap === null ? [] : [seam.overlap]));
+  const sizes = [...tiles.values()].map((tile) => tile.inUse);
+  return [
+    `${tiles.size} of ${countOf(tiles.size + holes.size, "tile")}`,
+    ...(unplaced.length > 0 ? [`${countOf(unplaced.length, "stack")} without a place`] : []),
+    `${countOf(setAside, "frame")} set aside`,
+    countOf(loose.length, "loose frame"),
+    ...(overlaps.length > 0 ? [`overlap at least ${percent(Math.min(...overlaps))}`] : []),
+    ...(sizes.length > 0 ? [`${rangeText(Math.min(...sizes), Math.max(...sizes))} a tile`] : []),
+  ];
+}
+
+/** What the bench's head says of a stack: settings, brightness, noise. */
+export function stackFacts(tile: BoardTile, frames: readonly BoardFrame[]): string[] {
+  const inUse = frames.filter((frame) => frame.setAside === null);
+  const spread = brightnessSpread(inUse);
+  return [
+    `${inUse.length} of ${frames.length} in use`,
+    ...settingsText(tile.reference ?? frames[0] ?? null),
+    ...(spread === null ? [] : [`brightness varies ${spread.toFixed(2)} EV`]),
+    ...(inUse.length === 0 ? [] : [`noise ${percent(noiseOfMean(inUse.length))} of one frame`]),
+  ];
+}
+
+/** "1/250 s f/8 ISO 100 105 mm", as far as it is written; one entry, or none. */
+export function settingsText(frame: BoardFrame | null): string[] {
+  if (!frame) return [];
+  const { exposureSeconds, aperture, iso, focalLengthMm } = frame.metadata;
+  const parts = [
+    exposureSeconds === null ? null : exposureText(exposureSeconds),
+    aperture === null ? null : `f/${trimmed(aperture)}`,
+    iso === null ? null : `ISO ${iso}`,
+    focalLengthMm === null ? null : `${trimmed(focalLengthMm)} mm`,
+  ].filter((part) => part !== null);
+  return parts.length === 0 ? [] : [parts.join(" ")];
+}
+
+/** Noise of the mean of n equal frames against one frame: 1 / sqrt(n) (check-values.md 2.3). @param count - 1 or more */
+export function noiseOfMean(count: number): number {
+  return 1 / Math.sqrt(count);
+}
+
+/** From the darkest to the brightest frame, exposure values; null for fewer than two or a black frame. */
+export function brightnessSpread(frames: readonly BoardFrame[]): number | null {
+  const levels = frames.map((frame) => frame.meanBrightness);
+  const darkest = Math.min(...levels);
+  return levels.length < 2 || darkest <= 0 ? null : BRIGHTNESS_TO_EV * Math.log2(Math.max(...levels) / darkest);
+}
+
+/** The least overlap of a tile's measured seams, either side; null: none measured. */
+export function leastOverlaps(index: BoardIndex): ReadonlyMap<string, number> {
+  const least = new Map<string, number>();
+  for (const { stackId, neighbourId, overlap } of index.board.seams) {
+    if (overlap === null) continue;
+    for (const id of [stackId, neighbourId]) {
+      const name = index.tileOfStack.get(id)?.name;
+      if (name !== undefined) least.set(name, Math.min(least.get(name) ?? 1, overlap));
+    }
+  }
+  return least;
+}
+
+/** Said aloud for a tile: "A3, 7 of 7 frames in use, 1 question". */
+export function tileLabel(tile: BoardTile): string {
+  return [
+    `Tile ${tile.name}`,
+    `${tile.inUse} of ${countOf(tile.frames.length, "frame")} in use`,
+    ...(tile.isFew ? ["few"] : []),
+    ...(tile.takes.length > 1 ? [`${tile.takes.length} takes`] : []),
+    ...(tile.questions.length > 0 ? [countOf(tile.questions.length, "question")] : []),
+  ].join(", ");
+}
+
+function rangeText(least: number, most: number): string {
+  return least === most ? countOf(least, "frame") : `${least} to ${countOf(most, "frame")}`;
+}

@@ -1,4 +1,4 @@
-import { areaAverage, fitLongSide } from "@/lib/analysis/area-average";
+import { areaAverage, fitLongSide, type FloatPlane } from "@/lib/analysis/area-average";
 import type { Plane, RegistrationImage } from "@/lib/analysis/types";
 
 /** Longest side of a registration image; twice that brought nothing (analysis.md step 3). */
@@ -16,9 +16,14 @@ export const REGISTRATION_LEVELS = 65535;
  */
 export function toRegistrationImage(plane: Plane, white: number): RegistrationImage {
   const target = fitLongSide(plane.widthPx, plane.heightPx, REGISTRATION_LONG_SIDE_PX);
-  const small = areaAverage(plane, target.widthPx, target.heightPx);
+  return toLevels(areaAverage(plane, target.widthPx, target.heightPx), white);
+}
+
+/** Rounds a small picture to the 16-bit levels of a registration image; `white` is its own level of white. */
+export function toLevels(small: FloatPlane, white: number): RegistrationImage {
+  const scale = REGISTRATION_LEVELS / white;
   const data = Uint16Array.from(small.data, (value) =>
-    Math.round(Math.max(0, Math.min(1, value / white)) * REGISTRATION_LEVELS),
+    Math.round(Math.max(0, Math.min(REGISTRATION_LEVELS, value * scale))),
   );
-  return { data, ...target };
+  return { data, widthPx: small.widthPx, heightPx: small.heightPx };
 }

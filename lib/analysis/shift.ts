@@ -128,7 +128,10 @@ export function measureShift(a: PreparedImage, b: PreparedImage): ImageShift {
   return {
     ...refine(a.fine, b.fine, x, y, correlation.ncc),
     ncc: correlation.ncc,
-    peakRatio: peakRatio(best.climbed, ranked.map(({ climbed }) => climbed)),
+    peakRatio: peakRatio(
+      best.climbed,
+      ranked.map(({ climbed }) => climbed),
+    ),
     contrast: Math.min(correlation.deviationA, correlation.deviationB) / TEXTURE_LEVEL,
   };
 }

@@ -50,7 +50,7 @@ export function parseEnvironment(source: Record<string, string | undefined>): En
     mode: values.NODE_ENV,
     port: values.PORT,
     host: values.HOST,
-    appUrl: (values.APP_URL ?? `http://${values.HOST}:${values.PORT}`).replace(/\/+$/, ""),
+    appUrl: (values.APP_URL ?? defaultAppUrl(values.HOST, values.PORT)).replace(/\/+$/, ""),
     storageDir,
     databaseUrl: values.DATABASE_URL ?? `file:${path.join(storageDir, "stackyard.db")}`,
     authSecret: values.AUTH_SECRET ?? null,
@@ -61,10 +61,21 @@ export function parseEnvironment(source: Record<string, string | undefined>): En
   };
 }
 
+/** An address that a browser on this machine can open: "every interface" is none, and IPv6 needs brackets. */
+function defaultAppUrl(host: string, port: number): string {
+  if (host === "0.0.0.0" || host === "::") return `http://localhost:${port}`;
+  return `http://${host.includes(":") ? `[${host}]` : host}:${port}`;
+}
+
 let cached: Environment | undefined;
 
 /** The environment of this process, read once. */
 export function environment(): Environment {
   cached ??= parseEnvironment(process.env);
   return cached;
+}
+
+/** next-auth reads its own address from the environment only; it is always APP_URL. */
+export function followAppUrl(): void {
+  process.env.NEXTAUTH_URL = environment().appUrl;
 }

@@ -1,5 +1,5 @@
 /**
- * The address a request came from, for counting failed sign-ins. `trustedForwarding` (called once, when the web process
+ * The address a request came from, for counting failed sign-ins. `trustForwarding` (called once, when the web process
  * starts) has replaced what the client may have written into `X-Forwarded-For`.
  */
 export function addressOf(headers: Readonly<Record<string, unknown>>): string {

@@ -45,17 +45,25 @@ export async function requireAdministrator(): Promise<SignedInUser> {
 
 /**
  * The one authorisation gate of projects. The role comes from the database, never from the cookie.
- * @throws AppError unauthenticated; not_found where the person is no member (the administrator too); forbidden
+ * A project in the archive can only be looked at, unless `evenArchived` (taking it out, deleting it).
+ * @throws AppError unauthenticated; not_found where the person is no member (the administrator too); forbidden; conflict
  */
-export async function requireProject(projectId: ProjectId, right: Right): Promise<ProjectAccess> {
+export async function requireProject(
+  projectId: ProjectId,
+  right: Right,
+  { evenArchived = false }: { readonly evenArchived?: boolean } = {},
+): Promise<ProjectAccess> {
   const user = await requireUser();
   const [member] = await database()
-    .select({ role: members.role })
+    .select({ role: members.role, archivedAtMs: projects.archivedAtMs })
     .from(members)
     .innerJoin(projects, eq(projects.id, members.projectId))
     .where(and(eq(members.projectId, projectId), eq(members.userId, user.id)));
   if (!member) throw new AppError("not_found", "There is no such project, or you are not in it.");
   if (!allows(member.role, right)) throw new AppError("forbidden", REFUSALS[right]);
+  if (member.archivedAtMs !== null && right !== "view" && !evenArchived) {
+    throw new AppError("conflict", "This project is in the archive. It must be taken out of the archive first.");
+  }
   return mint(projectId, user.id, member.role);
 }
 

@@ -1,0 +1,27 @@
+import { z } from "zod";
+import { requireProject } from "@/lib/auth/gate";
+import { readJson } from "@/lib/http/read-json";
+import { route } from "@/lib/http/route";
+import { projectIdSchema } from "@/lib/ids";
+import { getProject } from "@/lib/projects/reads";
+import { projectChangeSchema, projectRemovalSchema } from "@/lib/projects/schema";
+import { changeProject, deleteProject } from "@/lib/projects/writes";
+
+const paramsSchema = z.object({ projectId: projectIdSchema });
+
+export const GET = route(paramsSchema, async (_request, { projectId }) => {
+  const access = await requireProject(projectId, "view");
+  return Response.json(await getProject(access));
+});
+
+export const PATCH = route(paramsSchema, async (request, { projectId }) => {
+  const access = await requireProject(projectId, "manage", { evenArchived: true });
+  await changeProject(access, await readJson(request, projectChangeSchema));
+  return Response.json(await getProject(access));
+});
+
+export const DELETE = route(paramsSchema, async (request, { projectId }) => {
+  const access = await requireProject(projectId, "manage", { evenArchived: true });
+  const { confirmation } = await readJson(request, projectRemovalSchema);
+  return Response.json(await deleteProject(access, confirmation));
+});

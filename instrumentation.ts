@@ -1,0 +1,6 @@
+/** Runs once when the web process starts, before it answers. */
+export async function register(): Promise<void> {
+  if (process.env.NEXT_RUNTIME !== "nodejs") return;
+  const { trustForwarding } = await import("@/lib/auth/trust-forwarding");
+  trustForwarding();
+}

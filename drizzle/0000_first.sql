@@ -91,6 +91,7 @@ CREATE TABLE `files` (
 	`upload_id` text NOT NULL,
 	`name` text NOT NULL,
 	`folder` text,
+	`pairing_key` text NOT NULL,
 	`last_modified_ms` integer,
 	`bytes` integer NOT NULL,
 	`sha256` text,
@@ -108,6 +109,7 @@ CREATE TABLE `files` (
 CREATE UNIQUE INDEX `files_upload_id_unique` ON `files` (`upload_id`);--> statement-breakpoint
 CREATE INDEX `files_by_project` ON `files` (`project_id`,`state`);--> statement-breakpoint
 CREATE INDEX `files_by_frame` ON `files` (`frame_id`);--> statement-breakpoint
+CREATE INDEX `files_by_pairing_key` ON `files` (`project_id`,`pairing_key`);--> statement-breakpoint
 CREATE INDEX `files_by_sha256` ON `files` (`project_id`,`sha256`);--> statement-breakpoint
 CREATE TABLE `frames` (
 	`id` text PRIMARY KEY NOT NULL,

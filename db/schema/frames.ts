@@ -117,6 +117,8 @@ export const files = sqliteTable(
       .references(() => uploads.id, { onDelete: "cascade" }),
     name: text().notNull(),
     folder: text(),
+    /** Folder and stem: a raw file belongs to the picture of the same key. */
+    pairingKey: text("pairing_key").notNull(),
     lastModifiedMs: integer("last_modified_ms"),
     bytes: integer().notNull(),
     sha256: text(),
@@ -132,6 +134,7 @@ export const files = sqliteTable(
   (table) => [
     index("files_by_project").on(table.projectId, table.state),
     index("files_by_frame").on(table.frameId),
+    index("files_by_pairing_key").on(table.projectId, table.pairingKey),
     index("files_by_sha256").on(table.projectId, table.sha256),
   ],
 );

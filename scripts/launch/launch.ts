@@ -26,7 +26,7 @@ export async function launch(args: readonly string[]): Promise<number> {
   await prepareStorage(settings);
   if (option === "remove-demo") {
     await migrate();
-    return run(process.execPath, [...SERVER_TYPESCRIPT, "scripts/demo.ts", "remove"]);
+    return run(process.execPath, [...SERVER_TYPESCRIPT, "scripts/demo-intake.ts", "remove"]);
   }
   const port = await claimPort(settings.port, settings.host);
   await ensureBuild();
@@ -51,7 +51,7 @@ async function migrate(): Promise<void> {
 async function runUntilStopped(settings: Environment, port: number, withDemo: boolean): Promise<number> {
   const local = localAddress(settings.host, port);
   const appUrl = process.env.APP_URL ? settings.appUrl : local;
-  const env = {
+  const env: NodeJS.ProcessEnv = {
     ...process.env,
     NODE_ENV: "production",
     NEXT_TELEMETRY_DISABLED: "1",
@@ -83,7 +83,7 @@ interface Running {
   readonly local: string;
   readonly appUrl: string;
   readonly withDemo: boolean;
-  readonly env: Readonly<Record<string, string | undefined>>;
+  readonly env: NodeJS.ProcessEnv;
   /** Everything that has to be stopped in the end. */
   readonly running: Supervised[];
 }
@@ -93,7 +93,7 @@ async function announce({ local, appUrl, withDemo, env, running }: Running): Pro
   await waitForHealth(local);
   console.log(`Ready: ${appUrl}`);
   if (!withDemo) return;
-  const args = [...SERVER_TYPESCRIPT, "scripts/demo.ts", "make", local];
+  const args = [...SERVER_TYPESCRIPT, "scripts/demo-intake.ts", "make", local];
   running.push(startOnce({ name: "demo", args, env }));
 }
 

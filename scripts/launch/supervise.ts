@@ -13,7 +13,7 @@ interface ProgramOptions {
   readonly name: string;
   /** Arguments of Node.js. */
   readonly args: readonly string[];
-  readonly env: Readonly<Record<string, string | undefined>>;
+  readonly env: NodeJS.ProcessEnv;
 }
 
 interface SuperviseOptions extends ProgramOptions {
@@ -76,7 +76,7 @@ export function startOnce(options: ProgramOptions): Supervised {
 function startChild({ name, args, env }: ProgramOptions): ChildProcess {
   // Its own process group: Ctrl-C reaches it through `stop` alone, once.
   const child = spawn(process.execPath, ["--import", GUARD, ...args], {
-    env: { ...env },
+    env,
     stdio: ["ignore", "pipe", "pipe", "ipc"],
     detached: true,
   });

@@ -93,19 +93,32 @@ interface BringIn {
 async function bringIn({ session, projectId, folder, say }: BringIn): Promise<void> {
   const earlier = await listDemoUploads(projectId);
   for (const upload of earlier) if (!upload.isFinished) await terminateUpload(session, upload.id);
-  const isIn = new Set(earlier.filter((upload) => upload.isFinished).map(({ name }) => name));
-  const names = (await readdir(folder)).sort();
-  const waiting = names.filter((name) => !isIn.has(name));
-  let done = names.length - waiting.length;
-  const step = Math.max(1, Math.ceil(names.length / 4));
+  const isIn = new Set(earlier.filter((upload) => upload.isFinished).map((upload) => relativeName(upload)));
+  const all = await listFiles(folder);
+  const waiting = all.filter((name) => !isIn.has(name));
+  let done = all.length - waiting.length;
+  const step = Math.max(1, Math.ceil(all.length / 4));
   async function uploadNext(): Promise<void> {
     for (let name = waiting.shift(); name !== undefined; name = waiting.shift()) {
-      await uploadFile(session, projectId, path.join(folder, name));
+      await uploadFile(session, { projectId, root: folder, name });
       done++;
-      if (done % step === 0 || done === names.length) say(`${done} of ${names.length} frames brought in`);
+      if (done % step === 0 || done === all.length) say(`${done} of ${all.length} frames brought in`);
     }
   }
   await Promise.all(Array.from({ length: UPLOADS_AT_ONCE }, uploadNext));
+}
+
+/** Relative names, "/"-separated. */
+async function listFiles(folder: string): Promise<string[]> {
+  const entries = await readdir(folder, { recursive: true, withFileTypes: true });
+  return entries
+    .filter((entry) => entry.isFile())
+    .map((entry) => path.relative(folder, path.join(entry.parentPath, entry.name)).split(path.sep).join("/"))
+    .sort();
+}
+
+function relativeName({ folder, name }: { readonly folder: string | null; readonly name: string }): string {
+  return folder ? `${folder}/${name}` : name;
 }
 
 async function waitUntilSorted({ session, projectId, say }: Omit<BringIn, "folder">): Promise<void> {

@@ -22,13 +22,14 @@ export async function listDemoProjects(): Promise<DemoProject[]> {
 export interface DemoUpload {
   readonly id: UploadId;
   readonly name: string;
+  readonly folder: string | null;
   readonly isFinished: boolean;
 }
 
 /** What a making that was cut short has brought in so far. */
 export async function listDemoUploads(projectId: ProjectId): Promise<DemoUpload[]> {
   const rows = await database()
-    .select({ id: uploads.id, name: uploads.name, finishedAtMs: uploads.finishedAtMs })
+    .select({ id: uploads.id, name: uploads.name, folder: uploads.folder, finishedAtMs: uploads.finishedAtMs })
     .from(uploads)
     .where(and(eq(uploads.projectId, projectId), isNull(uploads.cancelledAtMs)));
   return rows.map(({ finishedAtMs, ...row }) => ({ ...row, isFinished: finishedAtMs !== null }));

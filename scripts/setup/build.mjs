@@ -11,7 +11,7 @@ const SOURCES = [
   "lib",
   "public",
   "instrumentation.ts",
-  "next.config.ts",
+  "next.config.mjs",
   "package-lock.json",
   "postcss.config.mjs",
   "proxy.ts",

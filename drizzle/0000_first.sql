@@ -164,6 +164,7 @@ CREATE TABLE `uploads` (
 	`folder` text,
 	`last_modified_ms` integer,
 	`length_bytes` integer NOT NULL,
+	`metadata_header` text NOT NULL,
 	`created_at_ms` integer NOT NULL,
 	`finished_at_ms` integer,
 	`cancelled_at_ms` integer,

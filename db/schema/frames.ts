@@ -22,6 +22,8 @@ export const uploads = sqliteTable(
     folder: text(),
     lastModifiedMs: integer("last_modified_ms"),
     lengthBytes: integer("length_bytes").notNull(),
+    /** The `Upload-Metadata` header as it was sent: HEAD gives it back. */
+    metadataHeader: text("metadata_header").notNull(),
     createdAtMs: integer("created_at_ms").notNull(),
     /** Last byte in and recorded. */
     finishedAtMs: integer("finished_at_ms"),

@@ -5,10 +5,13 @@ const STATUS = {
   cross_site: 403,
   not_found: 404,
   conflict: 409,
+  gone: 410,
+  precondition_failed: 412,
   too_large: 413,
   unsupported_media_type: 415,
   invalid: 400,
   too_many_attempts: 429,
+  not_supported: 501,
   storage_full: 507,
 } as const;
 

@@ -52,7 +52,8 @@ async function createFrame(tx: Transaction, projectId: ProjectId, nowMs: number)
 
 /** The picture of the same exposure that has no raw file yet. */
 async function findFrameWithoutRaw(tx: Transaction, projectId: ProjectId, key: string): Promise<FrameId | null> {
-  const hasRaw = sql`exists (select 1 from ${files} as other where other.frame_id = ${files.frameId} and other.is_raw)`;
+  // Table names by hand: in a select from one table drizzle leaves them out, and inside it they would mean the other.
+  const hasRaw = sql`exists (select 1 from files as other where other.frame_id = files.frame_id and other.is_raw)`;
   const [picture] = await tx
     .select({ frameId: files.frameId })
     .from(files)

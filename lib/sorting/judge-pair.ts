@@ -1,0 +1,38 @@
+import type { PairMeasure } from "@/lib/analysis/types";
+import type { SortFrame } from "./types";
+
+/** What the pictures alone say of two frames. */
+export type Verdict = "same" | "different" | "probably different" | "unknown";
+
+/** Source of these limits: analysis.md, step 4 (93 simulated shoots). Shifts as fractions of the longer side. */
+const LEAST_NCC = 0.35;
+const LARGEST_SHIFT_WITHIN = 0.07;
+const LEAST_SHIFT_BETWEEN = 0.13;
+const LEAST_TEXTURE = 0.06;
+/** Contrast of the overlap, in units of what counts as texture, under which a match may be vignetting. Our own. */
+const LEAST_CONTRAST = 1;
+/** A match between different tiles rests on a part of the picture only, so it must be clearer. analysis.md, step 5. */
+const LEAST_PEAK_RATIO = 1.15;
+
+/** Length of a pair's shift as a fraction of the frame's longer side. */
+export function shiftFraction(measure: PairMeasure, frame: SortFrame): number {
+  const { widthPx, heightPx } = frame.measurements;
+  return Math.hypot(measure.xPx, measure.yPx) / Math.max(widthPx, heightPx);
+}
+
+export function isTextured(frame: SortFrame): boolean {
+  return frame.measurements.texture >= LEAST_TEXTURE;
+}
+
+/** Judges two frames by their pictures: the same tile, another one, or no saying. */
+export function judgePair(a: SortFrame, b: SortFrame, measure: PairMeasure): Verdict {
+  const isPlain = !isTextured(a) || !isTextured(b);
+  const isMatched = measure.ncc >= LEAST_NCC && measure.contrast >= LEAST_CONTRAST;
+  const shift = shiftFraction(measure, a);
+  if (isMatched && shift < LARGEST_SHIFT_WITHIN) return isPlain ? "unknown" : "same";
+  if (isMatched && shift > LEAST_SHIFT_BETWEEN && measure.peakRatio >= LEAST_PEAK_RATIO) {
+    return isPlain ? "unknown" : "different";
+  }
+  if (isMatched && shift <= LEAST_SHIFT_BETWEEN) return "unknown";
+  return isPlain ? "unknown" : "probably different";
+}

@@ -1,0 +1,124 @@
+import type { Edge } from "./edges";
+import { LARGEST_SAME_PLACE, type Vector } from "./lattice";
+
+/** The two steps of the grid: from a tile to its right and to its lower neighbour, in long sides of a frame. */
+export interface Steps {
+  readonly right: Vector;
+  readonly down: Vector;
+}
+
+/** Misfit in steps at which an edge counts 1/e: tiles of a handheld or flown grid lie this far off. Our own. */
+const SEARCH_MISFIT = 0.22;
+const MOST_CANDIDATES = 60;
+/** Steps closer than this are one candidate. */
+const SAME_STEP = 0.015;
+const REFINEMENTS = 6;
+/** Edges further off the lattice than this do not shape it. */
+const LARGEST_REFINE_MISFIT = 0.35;
+/** Most grids overlap by about a third; assumed where no edge crosses lines. Source: common practice. */
+const USUAL_STEP = 2 / 3;
+
+/**
+ * Finds the grid's steps from the edges: the pair of lengths of which the edges are small whole multiples.
+ * Of two that explain the edges alike the longer wins, since every edge is also a multiple of half a step.
+ * @param aspect - height over width of a frame
+ */
+export function findSteps(edges: readonly Edge[], aspect: number): Steps {
+  const moving = edges.filter((edge) => Math.hypot(edge.x, edge.y) >= LARGEST_SAME_PLACE);
+  const usual = aspect <= 1 ? { x: USUAL_STEP, y: USUAL_STEP * aspect } : { x: USUAL_STEP / aspect, y: USUAL_STEP };
+  const across = candidates(moving, (edge) => edge.x);
+  const down = candidates(moving, (edge) => edge.y);
+  let best = { score: -1, x: usual.x, y: usual.y };
+  for (const x of [...across, null]) {
+    for (const y of [...down, null]) {
+      const steps = { x: x ?? (y === null ? usual.x : y / (usual.y / usual.x)), y: y ?? 0 };
+      if (y === null) steps.y = steps.x * (usual.y / usual.x);
+      const score = moving.reduce((sum, edge) => sum + fitOf(edge, steps), 0);
+      if (score > best.score + 1e-9) best = { score, ...steps };
+    }
+  }
+  return refine(moving, { right: { x: best.x, y: 0 }, down: { x: 0, y: best.y } });
+}
+
+function candidates(edges: readonly Edge[], lengthOf: (edge: Edge) => number): number[] {
+  const sorted = [...edges].sort((a, b) => b.weight - a.weight);
+  const found: number[] = [];
+  for (const edge of sorted) {
+    const length = Math.abs(lengthOf(edge));
+    if (length < LARGEST_SAME_PLACE || found.some((other) => Math.abs(other - length) < SAME_STEP)) continue;
+    found.push(length);
+    if (found.length >= MOST_CANDIDATES) break;
+  }
+  return found;
+}
+
+function fitOf(edge: Edge, steps: { x: number; y: number }): number {
+  const columns = edge.x / steps.x;
+  const rows = edge.y / steps.y;
+  const misfit = Math.hypot(columns - Math.round(columns), rows - Math.round(rows));
+  return edge.weight * commonness(Math.round(columns), Math.round(rows)) * Math.exp(-((misfit / SEARCH_MISFIT) ** 2));
+}
+
+/** How usual it is that two stacks so many steps apart overlap: nearly all matches are between neighbours. */
+function commonness(columns: number, rows: number): number {
+  const [far, near] = [Math.abs(columns), Math.abs(rows)].sort((a, b) => b - a);
+  if (far === undefined || near === undefined || far === 0) return 0;
+  if (far === 1) return near === 0 ? 1 : 0.9;
+  if (far === 2) return near === 0 ? 0.6 : 0.45;
+  return far === 3 ? 0.2 : 0.05;
+}
+
+function refine(edges: readonly Edge[], start: Steps): Steps {
+  let steps = start;
+  for (let round = 0; round < REFINEMENTS; round++) {
+    const sums = { cc: 0, cr: 0, rr: 0, cx: 0, cy: 0, rx: 0, ry: 0 };
+    for (const edge of edges) {
+      const { columns, rows, misfit } = inSteps(edge, steps);
+      if (misfit > LARGEST_REFINE_MISFIT) continue;
+      sums.cc += edge.weight * columns * columns;
+      sums.cr += edge.weight * columns * rows;
+      sums.rr += edge.weight * rows * rows;
+      sums.cx += edge.weight * columns * edge.x;
+      sums.cy += edge.weight * columns * edge.y;
+      sums.rx += edge.weight * rows * edge.x;
+      sums.ry += edge.weight * rows * edge.y;
+    }
+    steps = solveSteps(sums, steps);
+  }
+  return steps;
+}
+
+interface Sums {
+  readonly cc: number;
+  readonly cr: number;
+  readonly rr: number;
+  readonly cx: number;
+  readonly cy: number;
+  readonly rx: number;
+  readonly ry: number;
+}
+
+function solveSteps({ cc, cr, rr, cx, cy, rx, ry }: Sums, before: Steps): Steps {
+  const determinant = cc * rr - cr * cr;
+  if (determinant > 1e-9 * cc * rr) {
+    return {
+      right: { x: (rr * cx - cr * rx) / determinant, y: (rr * cy - cr * ry) / determinant },
+      down: { x: (cc * rx - cr * cx) / determinant, y: (cc * ry - cr * cy) / determinant },
+    };
+  }
+  // All edges run one way (a single line): the other step stays as assumed.
+  if (cc > 0 && rr === 0) return { right: { x: cx / cc, y: cy / cc }, down: before.down };
+  if (rr > 0 && cc === 0) return { right: before.right, down: { x: rx / rr, y: ry / rr } };
+  return before;
+}
+
+/** An edge as whole steps, with what is left over, in steps. */
+export function inSteps(edge: Vector, { right, down }: Steps): { columns: number; rows: number; misfit: number } {
+  const determinant = right.x * down.y - right.y * down.x;
+  const across = (edge.x * down.y - edge.y * down.x) / determinant;
+  const downward = (right.x * edge.y - right.y * edge.x) / determinant;
+  // Adding 0 turns -0 into 0.
+  const columns = Math.round(across) + 0;
+  const rows = Math.round(downward) + 0;
+  return { columns, rows, misfit: Math.hypot(across - columns, downward - rows) };
+}

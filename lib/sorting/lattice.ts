@@ -1,0 +1,184 @@
+import type { Edge } from "./edges";
+import { inSteps, type Steps } from "./lattice-steps";
+
+export interface Vector {
+  readonly x: number;
+  readonly y: number;
+}
+
+/** A place relative to an origin that has no meaning: differences within one component do. */
+export interface Label {
+  readonly column: number;
+  readonly row: number;
+}
+
+/** Stacks connected by edges, each with its label, in the order of the stacks' indices. */
+export type Component = ReadonlyMap<number, Label>;
+
+/** Shift in long sides under which two stacks show the same tile: as within a stack. Source: analysis.md, step 4. */
+export const LARGEST_SAME_PLACE = 0.07;
+/** Misfit in steps at which an edge's word counts 1/e. Our own. */
+const MISFIT_SCALE = 0.35;
+const MOST_SWEEPS = 12;
+/** Bounds the time on large grids. */
+const MOST_CUTS = 150;
+
+interface StepEdge {
+  readonly a: number;
+  readonly b: number;
+  readonly columns: number;
+  readonly rows: number;
+  readonly weight: number;
+}
+
+/**
+ * Whole rows and columns from edges: a maximum spanning tree first, then whatever the outvoted edges say better.
+ * Labels are carried from neighbour to neighbour and not read off global positions, so that the bend of a grid
+ * turned about a point cannot add up to a wrong column.
+ * @param count - number of stacks; edges name them by index
+ * @returns components, the largest first; stacks without edges are components of their own
+ */
+export function labelStacks(count: number, edges: readonly Edge[], steps: Steps): Component[] {
+  const stepEdges = edges.map((edge): StepEdge => {
+    if (Math.hypot(edge.x, edge.y) < LARGEST_SAME_PLACE) return { ...edge, columns: 0, rows: 0 };
+    const { columns, rows, misfit } = inSteps(edge, steps);
+    return { a: edge.a, b: edge.b, columns, rows, weight: edge.weight * Math.exp(-((misfit / MISFIT_SCALE) ** 2)) };
+  });
+  const tree = spanningTree(count, stepEdges);
+  const incident = listIncident(count, stepEdges);
+  const components = collect(count, tree);
+  const labels = components.map((component) => labelTree(component, listIncident(count, tree)));
+  const all = new Map(labels.flatMap((component) => [...component]));
+  moveBranches(all, tree, stepEdges, count);
+  moveSingles(all, incident);
+  return components
+    .map((members) => new Map(members.map((index) => [index, all.get(index) ?? { column: 0, row: 0 }])))
+    .sort((a, b) => b.size - a.size || Math.min(...a.keys()) - Math.min(...b.keys()));
+}
+
+function spanningTree(count: number, edges: readonly StepEdge[]): StepEdge[] {
+  const parent = Array.from({ length: count }, (_, index) => index);
+  const rootOf = (index: number): number => {
+    let root = index;
+    for (let up = parent[root] ?? root; up !== root; up = parent[root] ?? root) root = up;
+    parent[index] = root;
+    return root;
+  };
+  const sorted = [...edges].sort((p, q) => q.weight - p.weight || p.a - q.a || p.b - q.b);
+  return sorted.filter((edge) => {
+    const [a, b] = [rootOf(edge.a), rootOf(edge.b)];
+    if (a === b) return false;
+    parent[Math.max(a, b)] = Math.min(a, b);
+    return true;
+  });
+}
+
+function listIncident(count: number, edges: readonly StepEdge[]): StepEdge[][] {
+  const incident: StepEdge[][] = Array.from({ length: count }, () => []);
+  for (const edge of edges) {
+    incident[edge.a]?.push(edge);
+    incident[edge.b]?.push({ ...edge, a: edge.b, b: edge.a, columns: -edge.columns, rows: -edge.rows });
+  }
+  return incident;
+}
+
+function collect(count: number, tree: readonly StepEdge[]): number[][] {
+  const incident = listIncident(count, tree);
+  const seen = new Set<number>();
+  const components: number[][] = [];
+  for (let start = 0; start < count; start++) {
+    if (seen.has(start)) continue;
+    const members = [start];
+    seen.add(start);
+    for (const index of members) {
+      for (const edge of incident[index] ?? []) {
+        if (seen.has(edge.b)) continue;
+        seen.add(edge.b);
+        members.push(edge.b);
+      }
+    }
+    components.push(members);
+  }
+  return components;
+}
+
+/** @param members - breadth first: each but the first has a neighbour before it */
+function labelTree(members: readonly number[], incident: readonly (readonly StepEdge[])[]): Map<number, Label> {
+  const labels = new Map<number, Label>([[members[0] ?? 0, { column: 0, row: 0 }]]);
+  for (const index of members) {
+    const from = labels.get(index);
+    for (const edge of incident[index] ?? []) {
+      if (!from || labels.has(edge.b)) continue;
+      labels.set(edge.b, { column: from.column + edge.columns, row: from.row + edge.rows });
+    }
+  }
+  return labels;
+}
+
+/** Where the edges across a tree edge agree on another offset than the tree's, the whole branch moves there. */
+function moveBranches(
+  labels: Map<number, Label>,
+  tree: readonly StepEdge[],
+  edges: readonly StepEdge[],
+  count: number,
+): void {
+  const incident = listIncident(count, tree);
+  // The weakest tree edges are the likeliest to be wrong; the strongest need no second look.
+  for (const cut of [...tree].reverse().slice(0, MOST_CUTS)) {
+    const branch = branchOf(cut, incident);
+    const votes = new Map<string, { columns: number; rows: number; weight: number }>();
+    for (const edge of edges) {
+      const isOut = branch.has(edge.b) && !branch.has(edge.a);
+      const isIn = branch.has(edge.a) && !branch.has(edge.b);
+      const [from, to] = [labels.get(edge.a), labels.get(edge.b)];
+      if ((!isOut && !isIn) || !from || !to) continue;
+      const sign = isOut ? 1 : -1;
+      const columns = sign * (from.column + edge.columns - to.column);
+      const rows = sign * (from.row + edge.rows - to.row);
+      const key = `${columns} ${rows}`;
+      votes.set(key, { columns, rows, weight: (votes.get(key)?.weight ?? 0) + edge.weight });
+    }
+    const best = [...votes.values()].sort((p, q) => q.weight - p.weight)[0];
+    const stay = votes.get("0 0")?.weight ?? 0;
+    if (!best || best.weight <= stay * 1.01) continue;
+    for (const index of branch) {
+      const label = labels.get(index);
+      if (label) labels.set(index, { column: label.column + best.columns, row: label.row + best.rows });
+    }
+  }
+}
+
+function branchOf(cut: StepEdge, incident: readonly (readonly StepEdge[])[]): Set<number> {
+  const branch = new Set([cut.b]);
+  for (const index of branch) {
+    for (const edge of incident[index] ?? []) {
+      if (index === cut.b && edge.b === cut.a) continue;
+      branch.add(edge.b);
+    }
+  }
+  return branch;
+}
+
+/** Each stack follows the majority of its own edges, until none moves any more. */
+function moveSingles(labels: Map<number, Label>, incident: readonly (readonly StepEdge[])[]): void {
+  for (let sweep = 0; sweep < MOST_SWEEPS; sweep++) {
+    let moved = false;
+    incident.forEach((edges, index) => {
+      const now = labels.get(index);
+      const votes = new Map<string, { label: Label; weight: number }>();
+      for (const edge of edges) {
+        const other = labels.get(edge.b);
+        if (!other) continue;
+        const label = { column: other.column - edge.columns, row: other.row - edge.rows };
+        const key = `${label.column} ${label.row}`;
+        votes.set(key, { label, weight: (votes.get(key)?.weight ?? 0) + edge.weight });
+      }
+      const best = [...votes.values()].sort((p, q) => q.weight - p.weight)[0];
+      const stay = now ? (votes.get(`${now.column} ${now.row}`)?.weight ?? 0) : 0;
+      if (!best || best.weight <= stay * 1.01) return;
+      labels.set(index, best.label);
+      moved = true;
+    });
+    if (!moved) return;
+  }
+}

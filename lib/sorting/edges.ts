@@ -14,6 +14,8 @@ export interface Edge {
   readonly significance: number;
   /** Weight of the edge's word where edges contradict each other. */
   readonly weight: number;
+  /** Whole steps that are a fact already (both ends were placed before); null: to be read off x and y. */
+  readonly steps: { readonly columns: number; readonly rows: number } | null;
 }
 
 const REGISTRATION_LONG_SIDE_PX = 256;
@@ -63,5 +65,6 @@ export function makeEdge(
     ncc: measure.ncc,
     significance,
     weight: Math.min(significance, HIGHEST_WEIGHT) * clearness * (isPlain ? 0.3 : 1),
+    steps: null,
   };
 }

@@ -24,7 +24,7 @@ const USUAL_STEP = 2 / 3;
  * @param aspect - height over width of a frame
  */
 export function findSteps(edges: readonly Edge[], aspect: number): Steps {
-  const moving = edges.filter((edge) => Math.hypot(edge.x, edge.y) >= LARGEST_SAME_PLACE);
+  const moving = edges.filter((edge) => !edge.steps && Math.hypot(edge.x, edge.y) >= LARGEST_SAME_PLACE);
   const usual = aspect <= 1 ? { x: USUAL_STEP, y: USUAL_STEP * aspect } : { x: USUAL_STEP / aspect, y: USUAL_STEP };
   const across = candidates(moving, (edge) => edge.x);
   const down = candidates(moving, (edge) => edge.y);

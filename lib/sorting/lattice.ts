@@ -40,6 +40,7 @@ interface StepEdge {
  */
 export function labelStacks(count: number, edges: readonly Edge[], steps: Steps): Component[] {
   const stepEdges = edges.map((edge): StepEdge => {
+    if (edge.steps) return { a: edge.a, b: edge.b, ...edge.steps, weight: edge.weight };
     if (Math.hypot(edge.x, edge.y) < LARGEST_SAME_PLACE) return { ...edge, columns: 0, rows: 0 };
     const { columns, rows, misfit } = inSteps(edge, steps);
     return { a: edge.a, b: edge.b, columns, rows, weight: edge.weight * Math.exp(-((misfit / MISFIT_SCALE) ** 2)) };

@@ -130,7 +130,7 @@ function layRun(result: Try, run: readonly WalkStop[], gap: Gap): void {
   } else {
     const end = from === null ? (to ?? 0) - stops.length : from + stops.length + 1;
     const length = result.walk.along === "rows" ? gap.box.right - gap.box.left + 1 : gap.box.bottom - gap.box.top + 1;
-    if (stops.length > 0 && (((end % length) + length) % length) !== 0) result.cost += RAGGED_END_COST;
+    if (stops.length > 0 && ((end % length) + length) % length !== 0) result.cost += RAGGED_END_COST;
   }
   const start = from === null ? (to ?? 0) - stops.length : from + 1;
   stops.forEach((stop, offset) => {

@@ -116,12 +116,7 @@ async function findOdd(
   }
 }
 
-function isOddCandidate(
-  before: SortFrame,
-  within: readonly SortFrame[],
-  after: SortFrame,
-  store: PairStore,
-): boolean {
+function isOddCandidate(before: SortFrame, within: readonly SortFrame[], after: SortFrame, store: PairStore): boolean {
   const [first, last] = [within[0], within.at(-1)];
   if (!first || !last) return false;
   const entry = judgeLink(before, first, store);

@@ -1,0 +1,59 @@
+import type { FixedStack, SortFacts, SortFrame } from "./types";
+
+/** Which frames make a stack, before they are judged. */
+export interface StackSeed {
+  readonly id: string;
+  readonly fixed: FixedStack | null;
+  /** In the order taken. */
+  readonly frames: readonly SortFrame[];
+}
+
+/** What is decided already about two frames that follow each other; null: nothing. */
+export function joinFacts(facts: SortFacts): (before: SortFrame, after: SortFrame) => boolean | null {
+  const stackOf = fixedStackOf(facts);
+  return (before, after) => {
+    const [a, b] = [stackOf.get(before.id), stackOf.get(after.id)];
+    if (a && b) return a === b;
+    // What a person settled is complete: frames that come later do not slip in.
+    return a?.byPerson || b?.byPerson ? false : null;
+  };
+}
+
+function fixedStackOf(facts: SortFacts): Map<string, FixedStack> {
+  return new Map(facts.stacks.flatMap((stack) => stack.frameIds.map((id) => [id, stack] as const)));
+}
+
+/**
+ * Stacks from the runs of the splitting and from the facts: a fixed stack takes in the new frames of its run, and its
+ * frames stay together even where they do not follow each other.
+ * @param order - all frames in the order taken
+ * @returns stacks in the order of their first frame; ids of new ones derive from that frame's
+ */
+export function gatherStacks(
+  runs: readonly (readonly SortFrame[])[],
+  facts: SortFacts,
+  order: readonly SortFrame[],
+): StackSeed[] {
+  const stackOf = fixedStackOf(facts);
+  const members = new Map<string, { fixed: FixedStack | null; frames: SortFrame[] }>();
+  const usedIds = new Set(facts.stacks.map((stack) => stack.id));
+  for (const run of runs) {
+    const fixed = run.flatMap((frame) => stackOf.get(frame.id) ?? [])[0] ?? null;
+    const id = fixed?.id ?? freeId(run[0]?.id ?? "", usedIds);
+    usedIds.add(id);
+    const known = members.get(id);
+    if (known) known.frames.push(...run);
+    else members.set(id, { fixed, frames: [...run] });
+  }
+  const place = new Map(order.map((frame, at) => [frame.id, at]));
+  const at = (frame: SortFrame | undefined) => place.get(frame?.id ?? "") ?? 0;
+  return [...members.entries()]
+    .map(([id, { fixed, frames }]) => ({ id, fixed, frames: [...frames].sort((a, b) => at(a) - at(b)) }))
+    .sort((a, b) => at(a.frames[0]) - at(b.frames[0]));
+}
+
+function freeId(frameId: string, used: ReadonlySet<string>): string {
+  let id = `stack-${frameId}`;
+  for (let count = 2; used.has(id); count++) id = `stack-${frameId}-${count}`;
+  return id;
+}

@@ -1,0 +1,164 @@
+import { tileName } from "@/lib/board/tile-name";
+import { framesInUse, type StackDraft } from "./draft";
+import { isKept, nameOf, percent, tileOf, type SortedDraft } from "./sorted-draft";
+import type { ProposedQuestion, QuestionKind } from "./types";
+
+/** Severities, higher is worse: what can only be mended by shooting again comes first. */
+const SEVERITY = { hole: 95, order: 85, retake: 65, "thin-seam": 45, "few-frames": 35 } as const;
+/** More doubts of one kind than this are one question: the answer will be the same for all. Our own. */
+const MOST_SINGLE_QUESTIONS = 3;
+
+/** Doubts about places, seams and numbers of frames. */
+export function questionsOfGrid(draft: SortedDraft): ProposedQuestion[] {
+  return [
+    ...gather(holeQuestions(draft), "hole", (count) => `${count} places of the grid have no stack.`),
+    ...gather(thinQuestions(draft), "thin-seam", (count) => {
+      return `${count} seams overlap by less than the ${percent(draft.options.overlapWanted)} wanted.`;
+    }),
+    ...gather(fewQuestions(draft), "few-frames", (count) => {
+      return `${count} stacks have fewer than the ${draft.options.framesPerTile.least} frames wanted.`;
+    }),
+    ...retakeQuestions(draft),
+    ...orderQuestions(draft),
+  ];
+}
+
+function gather(
+  questions: readonly ProposedQuestion[],
+  kind: QuestionKind,
+  messageFor: (count: number) => string,
+): ProposedQuestion[] {
+  if (questions.length <= MOST_SINGLE_QUESTIONS) return [...questions];
+  const first = questions[0];
+  if (!first) return [];
+  const tiles = questions.map((question) => question.tile ?? question.message);
+  return [
+    {
+      ...first,
+      key: `${kind} several`,
+      message: messageFor(questions.length),
+      evidence: `${tiles.slice(0, 12).join(", ")}${tiles.length > 12 ? " and more" : ""}.`,
+      frameIds: questions.flatMap((question) => question.frameIds),
+      stackIds: [...new Set(questions.flatMap((question) => question.stackIds))],
+    },
+  ];
+}
+
+/** Names of the places within the grid that no stack has. */
+export function findHoles(draft: SortedDraft): string[] {
+  const rows = draft.places.reduce((most, place) => Math.max(most, place.row ?? 0), 0);
+  const columns = draft.places.reduce((most, place) => Math.max(most, place.column ?? 0), 0);
+  const taken = new Set(draft.places.map((place) => `${place.row} ${place.column}`));
+  const holes: string[] = [];
+  for (let row = 1; row <= rows; row++) {
+    for (let column = 1; column <= columns; column++) {
+      if (!taken.has(`${row} ${column}`)) holes.push(tileName(row, column));
+    }
+  }
+  return holes;
+}
+
+const ACCEPT = { type: "keep" } as const;
+
+function holeQuestions(draft: SortedDraft): ProposedQuestion[] {
+  return findHoles(draft).map((tile) => ({
+    key: `hole ${tile}`,
+    kind: "hole",
+    message: `Is a stack missing at ${tile}?`,
+    evidence: "No frame shows this part of the scene as a tile of its own.",
+    frameIds: [],
+    stackIds: [],
+    tile,
+    answers: [{ label: `Leave ${tile} empty`, action: ACCEPT }],
+    severity: SEVERITY.hole,
+  }));
+}
+
+function thinQuestions(draft: SortedDraft): ProposedQuestion[] {
+  const thin = draft.seams.filter((seam) => seam.overlap !== null && seam.overlap < draft.options.overlapWanted);
+  return thin.map((seam) => {
+    const [a, b] = [nameOf(draft, seam.a), nameOf(draft, seam.b)];
+    const ids = [draft.stacks[seam.a]?.id ?? "", draft.stacks[seam.b]?.id ?? ""];
+    return {
+      key: `thin-seam ${ids.join(" ")}`,
+      kind: "thin-seam",
+      message: `Is the overlap between ${a} and ${b} enough?`,
+      evidence: `It is ${percent(seam.overlap ?? 0)}; ${percent(draft.options.overlapWanted)} are wanted.`,
+      frameIds: [],
+      stackIds: ids,
+      tile: `${a}–${b}`,
+      answers: [{ label: "Accept the small overlap", action: ACCEPT }],
+      severity: SEVERITY["thin-seam"],
+    } satisfies ProposedQuestion;
+  });
+}
+
+function fewQuestions(draft: SortedDraft): ProposedQuestion[] {
+  const { least } = draft.options.framesPerTile;
+  const few = draft.stacks.filter((stack) => {
+    if (!isKept(draft, stack) || !draft.takes[stack.index]?.isChosenTake) return false;
+    return framesInUse(stack).length < least;
+  });
+  return few.map((stack) => ({
+    key: `few-frames ${stack.id}`,
+    kind: "few-frames",
+    message: `Are ${countOf(framesInUse(stack).length)} enough for ${nameOf(draft, stack.index)}?`,
+    evidence: `${countOf(stack.frames.length)}, ${framesInUse(stack).length} in use; ${least} or more are wanted.`,
+    frameIds: [],
+    stackIds: [stack.id],
+    tile: tileOf(draft, stack.index),
+    answers: [{ label: "Merge it as it is", action: ACCEPT }],
+    severity: SEVERITY["few-frames"],
+  }));
+}
+
+function countOf(frames: number): string {
+  return frames === 1 ? "1 frame" : `${frames} frames`;
+}
+
+function retakeQuestions(draft: SortedDraft): ProposedQuestion[] {
+  return draft.takeDoubts.map(({ chosen, other, evidence }) => {
+    const [a, b] = [draft.stacks[chosen], draft.stacks[other]];
+    const tile = tileOf(draft, chosen);
+    const choose = (stack: StackDraft | undefined) =>
+      ({
+        label: `Merge take ${draft.takes[stack?.index ?? 0]?.take ?? 1}`,
+        action: { type: "choose-take", stackId: stack?.id ?? "" },
+      }) as const;
+    return {
+      key: `retake ${a?.id ?? ""} ${b?.id ?? ""}`,
+      kind: "retake",
+      message: `Which take of ${tile ?? "this tile"} is to be merged?`,
+      evidence: `${evidence}.`,
+      frameIds: [],
+      stackIds: [a?.id ?? "", b?.id ?? ""],
+      tile,
+      answers: [choose(a), choose(b)],
+      severity: SEVERITY.retake,
+    };
+  });
+}
+
+function orderQuestions(draft: SortedDraft): ProposedQuestion[] {
+  const unsure = draft.stacks.filter((stack) => {
+    const spot = draft.layout.spots[stack.index];
+    const isNowhere = draft.places[stack.index]?.row === null;
+    return isKept(draft, stack) && !stack.fixed && ((spot?.basis === "order" && spot.isUnsure) || isNowhere);
+  });
+  if (unsure.length === 0) return [];
+  const names = unsure.map((stack) => nameOf(draft, stack.index));
+  const isOne = names.length === 1;
+  return [
+    {
+      key: `order ${unsure.map((stack) => stack.id).join(" ")}`,
+      kind: "order",
+      message: isOne ? `Is ${names[0]} in its place?` : `Are ${names.slice(0, 6).join(", ")} in their places?`,
+      evidence: `${isOne ? "It shows" : "They show"} too little detail to be matched; only the order shot speaks for the place.`,
+      frameIds: [],
+      stackIds: unsure.map((stack) => stack.id),
+      tile: tileOf(draft, unsure[0]?.index ?? 0),
+      answers: [{ label: isOne ? "Leave it there" : "Leave them there", action: ACCEPT }],
+      severity: SEVERITY.order,
+    },
+  ];
+}

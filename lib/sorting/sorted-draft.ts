@@ -1,0 +1,53 @@
+import { tileName } from "@/lib/board/tile-name";
+import type { GridGraph } from "./collect-edges";
+import type { Take, TakeDoubt } from "./choose-takes";
+import type { StackDraft } from "./draft";
+import type { Seam } from "./find-seams";
+import { stemOf } from "./file-number";
+import type { Place } from "./number-places";
+import type { Layout } from "./place-stacks";
+import type { SplitResult } from "./split-stacks";
+import type { SortFrame, SortOptions } from "./types";
+
+/** Everything that was found out, before it is put into words. Lists of stacks are by stack index. */
+export interface SortedDraft {
+  /** All frames in the order taken. */
+  readonly order: readonly SortFrame[];
+  readonly stacks: readonly StackDraft[];
+  /** Indices of the stacks of each camera in the order shot. */
+  readonly bodies: readonly (readonly number[])[];
+  readonly layout: Layout;
+  readonly places: readonly Place[];
+  readonly takes: readonly Take[];
+  readonly takeDoubts: readonly TakeDoubt[];
+  readonly seams: readonly Seam[];
+  readonly graph: GridGraph;
+  readonly split: SplitResult;
+  /** Frames that are certainly none of the picture: black ones. */
+  readonly black: ReadonlySet<string>;
+  readonly options: SortOptions;
+}
+
+/** True for stacks that are in the proposal; strays are dissolved into loose frames. */
+export function isKept({ layout }: SortedDraft, stack: StackDraft): boolean {
+  return stack.fixed !== null || layout.spots[stack.index]?.isStray !== true;
+}
+
+/** Tile name of a stack's place; null where it has none. */
+export function tileOf({ places }: SortedDraft, index: number): string | null {
+  const place = places[index];
+  return place?.row && place.column ? tileName(place.row, place.column) : null;
+}
+
+/** What a person would call a stack: its tile, or the frame it begins with. */
+export function nameOf(draft: SortedDraft, index: number): string {
+  const tile = tileOf(draft, index);
+  const first = draft.stacks[index]?.frames[0]?.frame.name ?? "";
+  if (tile === null) return `the stack from ${stemOf(first)}`;
+  const take = draft.takes[index]?.take ?? 1;
+  return take > 1 ? `${tile}, take ${take}` : tile;
+}
+
+export function percent(share: number): string {
+  return `${Math.round(share * 100)} %`;
+}

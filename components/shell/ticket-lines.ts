@@ -1,3 +1,5 @@
+import { countOf } from "@/components/ui/format";
+
 /** What the job ticket needs to know of a project. Counts of files are those of `/progress`. */
 export interface TicketStatus {
   readonly received: number;
@@ -13,11 +15,6 @@ export interface TicketStatus {
 export interface TicketLine {
   readonly text: string;
   readonly tone: "quiet" | "ink" | "ochre" | "madder";
-}
-
-/** "1 question", "3 questions": a number of things, said as things. */
-export function countOf(count: number, one: string, many = `${one}s`): string {
-  return `${count.toLocaleString("en")} ${count === 1 ? one : many}`.replace(/,/g, " ");
 }
 
 /** The one live line of each stub: how far that step is. */

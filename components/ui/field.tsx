@@ -1,7 +1,7 @@
 import { useId, type ComponentProps, type ReactNode } from "react";
 import { classNames } from "@/components/ui/class-names";
 
-type FieldProps = Omit<ComponentProps<"input">, "id" | "children"> & {
+type FieldProps = Omit<ComponentProps<"input">, "id" | "children" | "action"> & {
   readonly name: string;
   readonly label: ReactNode;
   /** What is expected, before anything is wrong. */
@@ -10,10 +10,12 @@ type FieldProps = Omit<ComponentProps<"input">, "id" | "children"> & {
   readonly error?: string | undefined;
   /** Written after the input, such as "%". */
   readonly unit?: string;
+  /** A button that belongs to the input, after it. */
+  readonly action?: ReactNode;
 };
 
 /** One labelled input; its hint and its error are tied to it for screen readers. */
-export function Field({ label, hint, error, unit, className, ...input }: FieldProps) {
+export function Field({ label, hint, error, unit, action, className, ...input }: FieldProps) {
   const id = useId();
   const hintId = hint === undefined ? undefined : `${id}-hint`;
   const errorId = error === undefined ? undefined : `${id}-error`;
@@ -40,6 +42,7 @@ export function Field({ label, hint, error, unit, className, ...input }: FieldPr
           )}
         />
         {unit !== undefined && <span className="text-quiet">{unit}</span>}
+        {action}
       </div>
       {error !== undefined && (
         <p id={errorId} className="mt-1 text-sm font-semibold text-madder">

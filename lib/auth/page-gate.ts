@@ -1,27 +1,29 @@
 import "server-only";
-import { headers } from "next/headers";
+import { cookies, headers } from "next/headers";
 import { forbidden, notFound, redirect } from "next/navigation";
+import { cache } from "react";
 import { requireProject, requireUser, type ProjectAccess, type SignedInUser } from "@/lib/auth/gate";
 import { PATH_HEADER } from "@/lib/auth/return-path";
 import type { Right } from "@/lib/auth/roles";
+import { sessionCookieName } from "@/lib/auth/session";
 import { AppError } from "@/lib/errors/app-error";
 import { projectIdSchema } from "@/lib/ids";
 
 /**
  * The gate as pages and layouts call it: no session leads to sign-in (and back here), an unknown project or a
  * foreign one to the 404 page, a missing right to the 403 page. Statuses hold only while no Suspense or loading.tsx
- * stands above the caller.
+ * stands above the caller. Asked once a request, however often layout and page call it.
  */
-export async function openProject(projectId: string, right: Right): Promise<ProjectAccess> {
-  const id = projectIdSchema.safeParse(projectId);
-  if (!id.success) notFound();
-  return answerPage(() => requireProject(id.data, right));
-}
+export const openProject = cache(
+  async (projectId: string, right: Right, evenArchived = false): Promise<ProjectAccess> => {
+    const id = projectIdSchema.safeParse(projectId);
+    if (!id.success) notFound();
+    return answerPage(() => requireProject(id.data, right, { evenArchived }));
+  },
+);
 
 /** Who is signed in; without a session leads to sign-in and back here. */
-export async function openSession(): Promise<SignedInUser> {
-  return answerPage(requireUser);
-}
+export const openSession = cache((): Promise<SignedInUser> => answerPage(requireUser));
 
 async function answerPage<Result>(check: () => Promise<Result>): Promise<Result> {
   try {
@@ -35,7 +37,11 @@ async function answerPage<Result>(check: () => Promise<Result>): Promise<Result>
   }
 }
 
-async function signInAddress(): Promise<string> {
+/** Sign-in, leading back to the page that was asked for; says that a session ended where there was one. */
+export async function signInAddress(): Promise<string> {
+  const query = new URLSearchParams();
+  if ((await cookies()).has(sessionCookieName())) query.set("ended", "1");
   const path = (await headers()).get(PATH_HEADER);
-  return path === null ? "/sign-in?ended=1" : `/sign-in?ended=1&to=${encodeURIComponent(path)}`;
+  if (path !== null) query.set("to", path);
+  return `/sign-in?${query}`;
 }

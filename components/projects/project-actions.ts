@@ -1,0 +1,14 @@
+import type { FormState } from "@/lib/http/form-state";
+
+/** A form's server action; each of these forms carries `projectId`. */
+export type FormAction = (before: FormState, form: FormData) => Promise<FormState>;
+
+/** What a lead can do to a project as a whole. */
+export interface ProjectActions {
+  /** Field `name`. */
+  readonly rename: FormAction;
+  /** Field `isArchived`: "true" or "false". */
+  readonly archive: FormAction;
+  /** Field `confirmation`: the project's name, typed. Leads to the project list. */
+  readonly remove: FormAction;
+}

@@ -6,13 +6,11 @@ import { signInAndLeave } from "@/components/account/sign-in";
 import { Button } from "@/components/ui/button";
 import { Field } from "@/components/ui/field";
 import { PasswordField } from "@/components/ui/password-field";
-import { UNTOUCHED_FORM, type FormState } from "@/lib/http/form-state";
+import { UNTOUCHED_FORM, type FormAction, type FormState } from "@/lib/http/form-state";
 import { PASSWORD_HINT } from "@/components/account/password-hint";
 
-type Action = (before: FormState, form: FormData) => Promise<FormState>;
-
 /** Makes the account and signs it in at once: the password is at hand only here. */
-export function FirstAccountForm({ action }: { readonly action: Action }) {
+export function FirstAccountForm({ action }: { readonly action: FormAction }) {
   const [state, submit, isBusy] = useActionState(async (before: FormState, form: FormData): Promise<FormState> => {
     const made = await action(before, form);
     if (made.status !== "done") return made;

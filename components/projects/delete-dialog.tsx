@@ -1,13 +1,12 @@
 "use client";
 
 import { useActionState } from "react";
-import type { FormAction } from "@/components/projects/project-actions";
 import { Button } from "@/components/ui/button";
 import { Dialog, DialogAnswers } from "@/components/ui/dialog";
 import { Field } from "@/components/ui/field";
-import { countOf, formatBytes } from "@/components/ui/format";
+import { countOf, bytesText } from "@/lib/board/words";
 import { FormMessage } from "@/components/ui/form-message";
-import { UNTOUCHED_FORM } from "@/lib/http/form-state";
+import { UNTOUCHED_FORM, type FormAction } from "@/lib/http/form-state";
 
 interface DeleteDialogProps {
   readonly project: {
@@ -32,7 +31,7 @@ export function DeleteDialog({ project, action, isOpen, onOpenChange }: DeleteDi
       description={
         <p>
           This deletes the {countOf(frames, "frame")} stored here with their previews, the board and everything decided
-          on it, for everyone in the project. It frees {formatBytes(bytes)} or a little more and cannot be taken back.
+          on it, for everyone in the project. It frees {bytesText(bytes)} or a little more and cannot be taken back.
         </p>
       }
     >

@@ -1,11 +1,10 @@
 "use client";
 
 import { useActionState, type ComponentProps } from "react";
-import type { FormAction } from "@/components/projects/project-actions";
 import { ProjectFields } from "@/components/projects/project-fields";
 import { Button, LinkButton } from "@/components/ui/button";
 import { FormMessage } from "@/components/ui/form-message";
-import { UNTOUCHED_FORM } from "@/lib/http/form-state";
+import { UNTOUCHED_FORM, type FormAction } from "@/lib/http/form-state";
 
 interface NewProjectFormProps {
   readonly action: FormAction;

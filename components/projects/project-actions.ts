@@ -1,7 +1,4 @@
-import type { FormState } from "@/lib/http/form-state";
-
-/** A form's server action; each of these forms carries `projectId`. */
-export type FormAction = (before: FormState, form: FormData) => Promise<FormState>;
+import type { FormAction } from "@/lib/http/form-state";
 
 /** What a lead can do to a project as a whole. */
 export interface ProjectActions {

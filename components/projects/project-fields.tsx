@@ -1,5 +1,5 @@
 import { Field } from "@/components/ui/field";
-import { asPerCent } from "@/components/ui/format";
+import { trimmed } from "@/lib/board/words";
 import type { FormState } from "@/lib/http/form-state";
 
 interface ProjectFieldsProps {
@@ -34,7 +34,7 @@ export function ProjectFields({ state, initial }: ProjectFieldsProps) {
         inputMode="decimal"
         required
         autoComplete="off"
-        defaultValue={values.overlapWanted ?? asPerCent(initial.overlapWanted)}
+        defaultValue={values.overlapWanted ?? trimmed(initial.overlapWanted * 100)}
         error={fields.overlapWanted}
       />
       <fieldset>

@@ -2,7 +2,7 @@ import Link from "next/link";
 import type { ProjectActions } from "@/components/projects/project-actions";
 import { ProjectMenu } from "@/components/projects/project-menu";
 import { Chip } from "@/components/ui/chip";
-import { countOf } from "@/components/ui/format";
+import { countOf } from "@/lib/board/words";
 import type { Role } from "@/lib/auth/roles";
 
 /** What the list shows of a project. */

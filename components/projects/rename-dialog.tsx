@@ -1,12 +1,11 @@
 "use client";
 
 import { useActionState } from "react";
-import type { FormAction } from "@/components/projects/project-actions";
 import { Button } from "@/components/ui/button";
 import { Dialog, DialogAnswers } from "@/components/ui/dialog";
 import { Field } from "@/components/ui/field";
 import { FormMessage } from "@/components/ui/form-message";
-import { UNTOUCHED_FORM, type FormState } from "@/lib/http/form-state";
+import { UNTOUCHED_FORM, type FormAction, type FormState } from "@/lib/http/form-state";
 
 interface RenameDialogProps {
   readonly project: { readonly id: string; readonly name: string };

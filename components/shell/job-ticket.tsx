@@ -1,9 +1,14 @@
 "use client";
 
+import { useQuery } from "@tanstack/react-query";
 import Link from "next/link";
 import { usePathname } from "next/navigation";
-import { ticketLines, type TicketLine, type TicketStatus } from "@/components/shell/ticket-lines";
+import { ticketLines, type TicketLine } from "@/components/shell/ticket-lines";
 import { classNames } from "@/components/ui/class-names";
+import { progressQuery } from "@/lib/frames/queries";
+import type { Progress } from "@/lib/frames/schema";
+import { projectStatusQuery } from "@/lib/projects/queries";
+import type { ProjectStatus } from "@/lib/projects/schema";
 
 // Only what is built: a view joins the ticket together with its page.
 const STUBS = [
@@ -14,13 +19,19 @@ const STUBS = [
 
 interface JobTicketProps {
   readonly projectId: string;
-  readonly status: TicketStatus;
+  /** Both as the server rendered them. */
+  readonly progress: Progress;
+  readonly status: ProjectStatus;
 }
 
+/** While frames come in or are sorted; otherwise a look now and then keeps an open page honest. */
+const BUSY_POLL_MS = 2_000;
+const IDLE_POLL_MS = 20_000;
+
 /** Navigation and status at once: one perforated stub a step, each with one line saying how far it is. */
-export function JobTicket({ projectId, status }: JobTicketProps) {
+export function JobTicket({ projectId, progress, status }: JobTicketProps) {
   const pathname = usePathname();
-  const lines = ticketLines(status);
+  const lines = useTicketLines({ projectId, progress, status });
   return (
     <nav aria-label="Job ticket" className="border-y border-ink">
       <ol className="grid grid-cols-3">
@@ -37,6 +48,24 @@ export function JobTicket({ projectId, status }: JobTicketProps) {
       </ol>
     </nav>
   );
+}
+
+function useTicketLines({ projectId, progress, status }: JobTicketProps) {
+  const intake = useQuery({
+    ...progressQuery(projectId),
+    initialData: progress,
+    refetchInterval: ({ state }) => (isBusy(state.data) ? BUSY_POLL_MS : IDLE_POLL_MS),
+  });
+  const project = useQuery({
+    ...projectStatusQuery(projectId),
+    initialData: status,
+    refetchInterval: isBusy(intake.data) ? BUSY_POLL_MS : IDLE_POLL_MS,
+  });
+  return ticketLines({ ...intake.data, ...project.data });
+}
+
+function isBusy(progress: Progress | undefined): boolean {
+  return progress !== undefined && progress.total > 0 && !(progress.sorted && progress.received === progress.total);
 }
 
 const LINE_TONES: Record<TicketLine["tone"], string> = {

@@ -1,4 +1,4 @@
-import { countOf } from "@/components/ui/format";
+import { countOf } from "@/lib/board/words";
 
 /** What the job ticket needs to know of a project. Counts of files are those of `/progress`. */
 export interface TicketStatus {

@@ -10,3 +10,6 @@ export interface FormState {
 }
 
 export const UNTOUCHED_FORM: FormState = { status: "idle", message: null, fields: {}, values: {} };
+
+/** A form's server action, as `useActionState` takes it. */
+export type FormAction = (before: FormState, form: FormData) => Promise<FormState>;

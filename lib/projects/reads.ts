@@ -34,6 +34,9 @@ export interface ProjectSummary {
 
 export interface Project extends ProjectSummary {
   readonly revision: number;
+  /** The grid as it is; 0: nothing sorted yet. */
+  readonly rows: number;
+  readonly columns: number;
   readonly overlapWanted: number;
   readonly framesPerTile: { readonly least: number; readonly most: number };
   readonly longestPauseSeconds: number | null;
@@ -77,6 +80,8 @@ export async function getProject(access: ProjectAccess): Promise<Project> {
     .select({
       ...summaryColumns,
       revision: projects.revision,
+      rows: projects.rows,
+      columns: projects.columns,
       overlapWanted: projects.overlapWanted,
       framesLeast: projects.framesLeast,
       framesMost: projects.framesMost,

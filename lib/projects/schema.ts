@@ -52,3 +52,12 @@ export const projectRemovalSchema = z.strictObject({ confirmation: z.string("typ
 export type NewProject = z.infer<typeof newProjectSchema>;
 export type ProjectChange = z.infer<typeof projectChangeSchema>;
 export type ProjectSettings = Omit<ProjectChange, "name" | "isArchived">;
+
+/** What the job ticket reads of `GET /api/projects/{id}`. */
+export const projectStatusSchema = z.object({
+  tiles: z.int(),
+  openQuestions: z.int(),
+  rows: z.int(),
+  columns: z.int(),
+});
+export type ProjectStatus = z.infer<typeof projectStatusSchema>;

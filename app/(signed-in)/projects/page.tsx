@@ -4,7 +4,7 @@ import { ProjectList } from "@/components/projects/project-list";
 import { PageFrame } from "@/components/shell/page-frame";
 import { LinkButton } from "@/components/ui/button";
 import { Notice } from "@/components/ui/notice";
-import { formatBytes } from "@/components/ui/format";
+import { bytesText } from "@/lib/board/words";
 import { openSession } from "@/lib/auth/page-gate";
 import { listProjects } from "@/lib/projects/reads";
 
@@ -28,7 +28,7 @@ export default async function ProjectsPage({ searchParams }: { readonly searchPa
       </div>
       {freedBytes !== null && (
         <div className="mt-5">
-          <Notice live="status" title={`The project is deleted; ${formatBytes(freedBytes)} are free again.`} />
+          <Notice live="status" title={`The project is deleted; ${bytesText(freedBytes)} are free again.`} />
         </div>
       )}
       {projects.length === 0 ? <NoProjects /> : <Shelves projects={projects} />}

@@ -1,0 +1,23 @@
+"use client";
+
+import { useQuery } from "@tanstack/react-query";
+import { countOf } from "@/lib/board/words";
+import { projectStatusQuery } from "@/lib/projects/queries";
+import type { ProjectStatus } from "@/lib/projects/schema";
+
+interface GridSizeProps {
+  readonly projectId: string;
+  /** As the server rendered it. */
+  readonly initial: ProjectStatus;
+}
+
+/** "3 rows × 6 columns"; nothing while there is no grid. */
+export function GridSize({ projectId, initial }: GridSizeProps) {
+  const { data } = useQuery({ ...projectStatusQuery(projectId), initialData: initial });
+  if (data.rows === 0 || data.columns === 0) return null;
+  return (
+    <p className="figures text-sm text-quiet">
+      {countOf(data.rows, "row")} × {countOf(data.columns, "column")}
+    </p>
+  );
+}

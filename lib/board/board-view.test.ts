@@ -1,7 +1,7 @@
 import { expect, test } from "vitest";
 import { indexBoard, lostShare } from "@/lib/board/board-index";
 import { combBars } from "@/lib/board/comb";
-import { cropAround, gridOrigin, layoutBoard, picturePart, tileSteps } from "@/lib/board/layout";
+import { benchCrops, gridOrigin, layoutBoard, picturePart, spotInFrame, tileSteps } from "@/lib/board/layout";
 import { railRuns } from "@/lib/board/rail";
 import { boardStatus, noiseOfMean, stackFacts } from "@/lib/board/summary";
 import { makeBoard, makeEventfulBoard } from "@/tests/support/make-board";
@@ -90,18 +90,16 @@ test("the rail is cut where the stack changes and draws the pause there", () => 
 test("a crop shows the same spot of a shifted frame, and says where it cannot", () => {
   const frame = { widthPx: 1500, heightPx: 1000, shift: { xPx: 10, yPx: -20 } };
   // By hand: a frame whose corner lies 10 px right and 20 px up shows the spot 10 px further left and 20 px lower.
-  expect(cropAround(frame, { x: 700, y: 500 }, { w: 200, h: 100 })).toEqual({
-    x: 590,
-    y: 470,
-    w: 200,
-    h: 100,
-    isSameSpot: true,
-  });
-  expect(cropAround(frame, { x: 0, y: 0 }, { w: 200, h: 100 }).isSameSpot).toBe(false);
-  const far = cropAround({ ...frame, shift: { xPx: 3790, yPx: 0 } }, { x: 700, y: 500 }, { w: 200, h: 100 });
-  expect(far).toEqual({ x: 650, y: 450, w: 200, h: 100, isSameSpot: false });
-  const small = cropAround({ widthPx: 80, heightPx: 60, shift: null }, { x: 5, y: 5 }, { w: 200, h: 100 });
-  expect(small).toEqual({ x: 0, y: 0, w: 80, h: 60, isSameSpot: true });
+  expect(spotInFrame(frame, { x: 700, y: 500 })).toEqual({ centreXPx: 690, centreYPx: 520, isSameSpot: true });
+  const far = spotInFrame({ ...frame, shift: { xPx: 3790, yPx: 0 } }, { x: 700, y: 500 });
+  expect(far).toEqual({ centreXPx: 750, centreYPx: 500, isSameSpot: false });
+});
+
+test("the bench wraps evenly: 12 frames are two rows of 6, 7 are one", () => {
+  expect(benchCrops(12, 1120).perRow).toBe(6);
+  expect(benchCrops(7, 1120)).toEqual({ perRow: 7, widthPx: 149, heightPx: 99 });
+  expect(benchCrops(5, 330).perRow).toBe(2);
+  expect(benchCrops(3, 120).widthPx).toBe(120);
 });
 
 test("tiles show their own part, one step wide, so that neighbours' pictures meet", () => {

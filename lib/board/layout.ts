@@ -121,39 +121,42 @@ export function gridOrigin(index: BoardIndex, steps: TileSteps): { xPx: number; 
   };
 }
 
-export interface Crop {
-  /** Top left corner and size in the frame's own upright full-size px. */
-  readonly x: number;
-  readonly y: number;
-  readonly w: number;
-  readonly h: number;
+export interface CropCentre {
+  readonly centreXPx: number;
+  readonly centreYPx: number;
   /** False: the frame does not show that spot; its own middle is shown instead. */
   readonly isSameSpot: boolean;
 }
 
 /**
- * The crop of a frame that shows a spot of the reference at 100 %.
+ * Where a frame shows a spot of its reference, so that crops of a stack can be laid side by side.
  * @param spotPx - the spot, reference's full-size px
- * @param size - wanted size, px; made smaller where the frame is
+ * @returns the spot in the frame's own upright full-size px
  */
-export function cropAround(
+export function spotInFrame(
   frame: Pick<BoardFrame, "widthPx" | "heightPx" | "shift">,
   spotPx: { readonly x: number; readonly y: number },
-  size: { readonly w: number; readonly h: number },
-): Crop {
-  const w = Math.min(Math.round(size.w), frame.widthPx);
-  const h = Math.min(Math.round(size.h), frame.heightPx);
+): CropCentre {
   const x = spotPx.x - (frame.shift?.xPx ?? 0);
   const y = spotPx.y - (frame.shift?.yPx ?? 0);
   const isSameSpot = x >= 0 && y >= 0 && x <= frame.widthPx && y <= frame.heightPx;
-  const middle = isSameSpot ? { x, y } : { x: frame.widthPx / 2, y: frame.heightPx / 2 };
-  return {
-    x: Math.round(clamp(middle.x - w / 2, 0, frame.widthPx - w)),
-    y: Math.round(clamp(middle.y - h / 2, 0, frame.heightPx - h)),
-    w,
-    h,
-    isSameSpot,
-  };
+  if (isSameSpot) return { centreXPx: x, centreYPx: y, isSameSpot };
+  return { centreXPx: frame.widthPx / 2, centreYPx: frame.heightPx / 2, isSameSpot };
+}
+
+const BENCH_GAP_PX = 12;
+/** Narrowest and widest crop on the bench. */
+const CROP_LEAST_PX = 148;
+const CROP_MOST_PX = 232;
+
+/** How the frames of a bench wrap: as few rows as fit, filled evenly (12 frames are two rows of 6), never sideways. */
+export function benchCrops(count: number, widthPx: number): { perRow: number; widthPx: number; heightPx: number } {
+  const most = Math.max(1, Math.floor((widthPx + BENCH_GAP_PX) / (CROP_LEAST_PX + BENCH_GAP_PX)));
+  const rows = Math.max(1, Math.ceil(count / most));
+  const perRow = Math.max(1, Math.ceil(count / rows));
+  const width = Math.floor((widthPx - BENCH_GAP_PX * (perRow - 1)) / perRow);
+  const cropWidthPx = Math.max(Math.min(CROP_LEAST_PX, widthPx), Math.min(CROP_MOST_PX, width));
+  return { perRow, widthPx: cropWidthPx, heightPx: Math.round((cropWidthPx * 2) / 3) };
 }
 
 function within(step: number | null, sidePx: number): number {

@@ -1,0 +1,99 @@
+import { Picture } from "@/components/board/picture";
+import { classNames } from "@/components/ui/class-names";
+import type { CropCentre } from "@/lib/board/layout";
+import type { BoardFrame } from "@/lib/board/model";
+import { distanceText, percent } from "@/lib/board/words";
+import { cropUrl } from "@/lib/frames/picture-urls";
+
+interface BenchFrameProps {
+  readonly projectId: string;
+  readonly frame: BoardFrame;
+  readonly centre: CropCentre;
+  readonly size: { readonly widthPx: number; readonly heightPx: number };
+  readonly isReference: boolean;
+  readonly isAsked: boolean;
+  readonly isWhy: boolean;
+  /** Null: nothing to compare it with. */
+  readonly onCompare: (() => void) | null;
+}
+
+/** One frame on the bench: its crop at 100 % and what was measured. */
+export function BenchFrame(props: BenchFrameProps) {
+  const { projectId, frame, centre, size, isReference, isAsked, isWhy, onCompare } = props;
+  const src = cropUrl(projectId, frame.id, {
+    widthPx: frame.widthPx,
+    heightPx: frame.heightPx,
+    centreXPx: centre.centreXPx,
+    centreYPx: centre.centreYPx,
+    cropWidthPx: size.widthPx,
+    cropHeightPx: size.heightPx,
+  });
+  const crop = (
+    <span
+      style={{ width: size.widthPx, height: size.heightPx }}
+      className={classNames(
+        "relative block overflow-hidden bg-well",
+        isAsked && "outline-3 -outline-offset-2 outline-dashed outline-ochre",
+        frame.setAside !== null && !isAsked && "outline-2 -outline-offset-2 outline-dashed outline-paper",
+      )}
+    >
+      <Picture src={src} alt="" widthPx={size.widthPx} heightPx={size.heightPx} className="object-none" />
+      {isReference && <Label className="bg-ink text-paper">reference</Label>}
+      {frame.setAside !== null && <Label className="bg-paper text-ink">set aside: {frame.setAside}</Label>}
+      {!centre.isSameSpot && (
+        <span className="absolute right-0 bottom-0 bg-paper px-1 text-[0.8125rem] leading-5">another spot</span>
+      )}
+    </span>
+  );
+  return (
+    <li style={{ width: size.widthPx }} className="text-sm">
+      {onCompare ? (
+        <button
+          type="button"
+          aria-label={`Compare ${frame.name} with the reference at 100 %`}
+          onClick={onCompare}
+          className="block"
+        >
+          {crop}
+        </button>
+      ) : (
+        crop
+      )}
+      <p className="figures mt-1 flex items-baseline gap-2">
+        <span className="min-w-0 truncate font-bold" title={fileNames(frame)}>
+          {frame.name}
+        </span>
+        <span className="ml-auto whitespace-nowrap">
+          <span className="sr-only">sharpness </span>
+          {frame.relativeSharpness === null ? "–" : percent(frame.relativeSharpness)}
+        </span>
+      </p>
+      <p className={classNames("figures", isAsked ? "text-ochre" : "text-quiet")}>{placeText(props)}</p>
+      {isWhy && (
+        <p className="mt-1 text-quiet">
+          {frame.reason} {frame.placedBy === "person" ? "A person put it here." : `${percent(frame.confidence)} sure.`}
+        </p>
+      )}
+    </li>
+  );
+}
+
+function placeText({ frame, isReference, isAsked }: BenchFrameProps): string {
+  if (frame.stackId === null) return isAsked ? "under question" : "loose";
+  if (isReference) return "measured against";
+  if (frame.shift === null) return "shift not measured";
+  return isAsked ? `${distanceText(frame.shift)} away, asked` : `${distanceText(frame.shift)} away`;
+}
+
+/** Paper in the crop's corner, so that no text lies on the picture. */
+function Label({ className, children }: { readonly className: string; readonly children: React.ReactNode }) {
+  return (
+    <span className={classNames("absolute top-0 left-0 px-1.5 text-[0.8125rem] leading-5 font-semibold", className)}>
+      {children}
+    </span>
+  );
+}
+
+function fileNames(frame: BoardFrame): string {
+  return frame.files.map((file) => (file.folder ? `${file.folder}/${file.name}` : file.name)).join(", ");
+}

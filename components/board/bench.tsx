@@ -1,0 +1,189 @@
+"use client";
+
+import { useState, type ReactNode } from "react";
+import { BenchFrame } from "@/components/board/bench-frame";
+import { CompareDialog } from "@/components/board/compare-dialog";
+import { TakeChoice } from "@/components/board/take-choice";
+import { Button } from "@/components/ui/button";
+import { classNames } from "@/components/ui/class-names";
+import type { BoardIndex, BoardTile } from "@/lib/board/board-index";
+import { benchCrops, spotInFrame } from "@/lib/board/layout";
+import type { BoardFrame, BoardStack } from "@/lib/board/model";
+import { stackFacts } from "@/lib/board/summary";
+import { countOf, percent } from "@/lib/board/words";
+
+/** The opening towards the tile that the bench belongs to. */
+export interface Mouth {
+  /** Left edge of the tile; null: no opening. */
+  readonly leftPx: number | null;
+  readonly widthPx: number;
+  readonly gapPx: number;
+  readonly opens: "up" | "down";
+}
+
+interface BenchProps {
+  readonly index: BoardIndex;
+  readonly tile: BoardTile;
+  readonly widthPx: number;
+  readonly mouth: Mouth | null;
+  /** Null: the bench is the whole page, as on a phone. */
+  readonly onClose: (() => void) | null;
+}
+
+/** Border and padding of the sheet on both sides, px. */
+const SHEET_PX = 34;
+
+/** The frames of one tile at 100 %, at the same spot, with what was measured of each. */
+export function Bench({ index, tile, widthPx, mouth, onClose }: BenchProps) {
+  const [takeId, setTakeId] = useState(tile.stack.id);
+  const [isWhy, setIsWhy] = useState(false);
+  const [compared, setCompared] = useState<string | null>(null);
+  const stack = tile.takes.find((take) => take.id === takeId) ?? tile.stack;
+  const frames = index.framesOfStack.get(stack.id) ?? [];
+  const reference = index.framesById.get(stack.referenceId ?? "") ?? frames[0] ?? null;
+  const crops = benchCrops(frames.length, widthPx - SHEET_PX);
+  return (
+    <Sheet label={`Frames of ${tile.name}`} mouth={mouth}>
+      <div className="flex flex-wrap items-center gap-x-5 gap-y-1">
+        <h2 className="figures text-lg font-bold">{tile.name}</h2>
+        <TakeChoice tile={tile} chosenId={stack.id} onChoose={setTakeId} />
+        {stackFacts({ ...tile, stack, reference }, frames).map((fact) => (
+          <span key={fact} className="figures text-sm text-quiet">
+            {fact}
+          </span>
+        ))}
+        <span className="ml-auto flex flex-wrap gap-2">
+          <Button size="slim" aria-expanded={isWhy} onClick={() => setIsWhy(!isWhy)}>
+            Why here?
+          </Button>
+          {frames.length > 1 && (
+            <Button size="slim" onClick={() => setCompared(firstToCompare(frames, reference))}>
+              Compare at 100 %
+            </Button>
+          )}
+          {onClose && (
+            <Button size="slim" tone="bare" onClick={onClose}>
+              Close
+            </Button>
+          )}
+        </span>
+      </div>
+      {isWhy && <WhyHere tile={tile} stack={stack} />}
+      <ul className="mt-3 flex flex-wrap gap-3">
+        {frames.map((frame) => (
+          <BenchFrame
+            key={frame.id}
+            projectId={index.board.projectId}
+            frame={frame}
+            centre={spotInFrame(frame, spotPx(stack, reference ?? frame))}
+            size={crops}
+            isReference={frame.id === reference?.id}
+            isAsked={index.askedFrames.has(frame.id)}
+            isWhy={isWhy}
+            onCompare={frame.id === reference?.id ? null : () => setCompared(frame.id)}
+          />
+        ))}
+      </ul>
+      {compared !== null && reference && (
+        <CompareDialog
+          index={index}
+          name={tile.name}
+          stack={stack}
+          frames={frames}
+          reference={reference}
+          frameId={compared}
+          onChange={setCompared}
+        />
+      )}
+    </Sheet>
+  );
+}
+
+interface LooseBenchProps {
+  readonly index: BoardIndex;
+  readonly widthPx: number;
+  readonly onClose: (() => void) | null;
+}
+
+/** The frames that are in no stack, at 100 % in their middle. */
+export function LooseBench({ index, widthPx, onClose }: LooseBenchProps) {
+  const crops = benchCrops(index.loose.length, widthPx - SHEET_PX);
+  return (
+    <div className="pb-2">
+      <Sheet label="Loose frames" mouth={null}>
+        <div className="flex flex-wrap items-center gap-x-5 gap-y-1">
+          <h2 className="text-lg font-bold">{countOf(index.loose.length, "loose frame")}</h2>
+          <span className="text-sm text-quiet">in no stack, so in no tile and in no merge</span>
+          {onClose && (
+            <Button size="slim" tone="bare" className="ml-auto" onClick={onClose}>
+              Close
+            </Button>
+          )}
+        </div>
+        <ul className="mt-3 flex flex-wrap gap-3">
+          {index.loose.map((frame) => (
+            <BenchFrame
+              key={frame.id}
+              projectId={index.board.projectId}
+              frame={frame}
+              centre={{ centreXPx: frame.widthPx / 2, centreYPx: frame.heightPx / 2, isSameSpot: true }}
+              size={crops}
+              isReference={false}
+              isAsked={index.askedFrames.has(frame.id)}
+              isWhy
+              onCompare={null}
+            />
+          ))}
+        </ul>
+      </Sheet>
+    </div>
+  );
+}
+
+/** The paper of a bench, its edge open towards the tile. */
+function Sheet({ label, mouth, children }: { label: string; mouth: Mouth | null; children: ReactNode }) {
+  return (
+    <section
+      data-bench
+      aria-label={label}
+      className={classNames(
+        "relative border-3 border-petrol bg-paper p-3.5 ring-2 ring-paper ring-inset",
+        mouth && "my-1",
+      )}
+    >
+      {mouth && mouth.leftPx !== null && (
+        <span
+          aria-hidden
+          style={{ left: mouth.leftPx - 6, width: mouth.widthPx + 6, height: mouth.gapPx + 8 }}
+          className={classNames(
+            "absolute border-x-3 border-petrol bg-paper",
+            mouth.opens === "up" ? "bottom-full -mb-[3px]" : "top-full -mt-[3px]",
+          )}
+        />
+      )}
+      {children}
+    </section>
+  );
+}
+
+function WhyHere({ tile, stack }: { readonly tile: BoardTile; readonly stack: BoardStack }) {
+  return (
+    <p className="mt-2 max-w-[75ch] text-sm">
+      <span className="font-semibold">Why {tile.name}: </span>
+      {stack.reason}{" "}
+      <span className="text-quiet">
+        {stack.placedBy === "person" ? "A person placed it." : `Its place is ${percent(stack.confidence)} sure.`}
+      </span>
+    </p>
+  );
+}
+
+function spotPx(stack: BoardStack, reference: BoardFrame): { x: number; y: number } {
+  return { x: stack.spot.x * reference.widthPx, y: stack.spot.y * reference.heightPx };
+}
+
+/** The doubtful frame first: the comparison is for it. */
+function firstToCompare(frames: readonly BoardFrame[], reference: BoardFrame | null): string | null {
+  const others = frames.filter((frame) => frame.id !== reference?.id);
+  return [...others].sort((a, b) => a.confidence - b.confidence)[0]?.id ?? null;
+}

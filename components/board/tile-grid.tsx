@@ -1,0 +1,181 @@
+"use client";
+
+import { useVirtualizer } from "@tanstack/react-virtual";
+import { useEffect, useMemo, useRef, useState, type KeyboardEvent } from "react";
+import { Bench, LooseBench } from "@/components/board/bench";
+import { ColumnNumbers } from "@/components/board/column-numbers";
+import { gridLines, neighbourTile, type GridLine } from "@/components/board/grid-rows";
+import { TileRow } from "@/components/board/tile-row";
+import { useElementSize } from "@/components/board/use-element-size";
+import type { BoardIndex, BoardTile } from "@/lib/board/board-index";
+import { gridOrigin, layoutBoard, picturePart, tileSteps, type BoardLayout } from "@/lib/board/layout";
+import { seamMarksByRow } from "@/lib/board/seam-marks";
+
+interface TileGridProps {
+  readonly index: BoardIndex;
+  readonly chosen: string | null;
+  readonly onChoose: (name: string | null) => void;
+  readonly isAllSeams: boolean;
+  /** Tiles that the docket's question names. */
+  readonly asked: ReadonlySet<string>;
+}
+
+/** The padding of the well, both sides, px. */
+const WELL_PADDING_PX = 32;
+
+/** The sheet: tiles in their rows on the well, the bench unfolded between them. Only rows in view are drawn. */
+export function TileGrid({ index, chosen, onChoose, isAllSeams, asked }: TileGridProps) {
+  const [sizeRef, size] = useElementSize();
+  const scroller = useRef<HTMLDivElement | null>(null);
+  const [scrollerElement, setScrollerElement] = useState<HTMLDivElement | null>(null);
+  const geometry = useMemo(() => {
+    const steps = tileSteps(index);
+    return { steps, origin: gridOrigin(index, steps) };
+  }, [index]);
+  const { projectId, grid } = index.board;
+  const widthPx = (size?.width ?? 0) - WELL_PADDING_PX;
+  const layout = layoutBoard({
+    columns: grid.columns,
+    widthPx,
+    aspect: geometry.steps.acrossPx / geometry.steps.downPx,
+  });
+  const lines = useMemo(() => gridLines(index, chosen), [index, chosen]);
+  const seams = useMemo(() => seamMarksByRow(index, isAllSeams), [index, isAllSeams]);
+  const rowHeightPx = layout.pictureHeightPx + layout.captionHeightPx + layout.gapPx;
+  const virtualizer = useVirtualizer({
+    count: size === null ? 0 : lines.length,
+    getScrollElement: () => scrollerElement,
+    estimateSize: (at) => estimateLine(lines[at], rowHeightPx),
+    getItemKey: (at) => lines[at]?.key ?? at,
+    overscan: 2,
+  });
+  useEffect(() => virtualizer.measure(), [virtualizer, rowHeightPx]);
+  useShowChosen({ lines, chosen, scroller, scrollTo: (at) => virtualizer.scrollToIndex(at, { align: "auto" }) });
+
+  const tabStop = chosen !== null && index.tiles.has(chosen) ? chosen : (index.tiles.keys().next().value ?? null);
+  const focusTile = (tile: BoardTile) => {
+    virtualizer.scrollToIndex(
+      lines.findIndex((line) => line.kind === "row" && line.row === tile.row),
+      { align: "auto" },
+    );
+    requestAnimationFrame(() => scroller.current?.querySelector<HTMLElement>(`[data-tile="${tile.name}"]`)?.focus());
+  };
+  const onKeyDown = (event: KeyboardEvent) => {
+    const name = event.target instanceof HTMLElement ? event.target.dataset.tile : undefined;
+    const from = name === undefined ? undefined : index.tiles.get(name);
+    const next = from ? neighbourTile(index, from, event.key) : null;
+    if (event.key === "Escape" && chosen !== null) onChoose(null);
+    if (!next) return;
+    event.preventDefault();
+    focusTile(next);
+  };
+
+  return (
+    <div
+      ref={(element) => {
+        scroller.current = element;
+        setScrollerElement(element);
+        return sizeRef(element);
+      }}
+      role="group"
+      aria-label="Board: arrow keys move from tile to tile, Enter opens a tile"
+      onKeyDown={onKeyDown}
+      className="relative min-h-0 flex-1 overflow-auto bg-well px-4 pb-4"
+    >
+      <ColumnNumbers
+        columns={grid.columns}
+        layout={layout}
+        looseCount={index.loose.length}
+        chosen={chosen}
+        onChoose={onChoose}
+      />
+      <div className="relative" style={{ height: virtualizer.getTotalSize() }}>
+        {virtualizer.getVirtualItems().map((item) => {
+          const line = lines[item.index];
+          return line ? (
+            <div
+              key={item.key}
+              data-index={item.index}
+              ref={virtualizer.measureElement}
+              className={line.kind === "row" ? "absolute top-0 left-0" : "absolute top-0 left-0 z-20 w-full"}
+              style={{ transform: `translateY(${item.start}px)` }}
+            >
+              <Line
+                {...{ line, index, layout, chosen, onChoose, asked, tabStop, widthPx }}
+                marks={line.kind === "row" ? (seams.get(line.row) ?? []) : []}
+                partOf={(tile) => picturePart(tile, geometry.steps, geometry.origin)}
+                projectId={projectId}
+              />
+            </div>
+          ) : null;
+        })}
+      </div>
+    </div>
+  );
+}
+
+interface LineProps extends Omit<TileGridProps, "isAllSeams"> {
+  readonly line: GridLine;
+  readonly layout: BoardLayout;
+  readonly projectId: string;
+  readonly tabStop: string | null;
+  readonly widthPx: number;
+  readonly marks: Parameters<typeof TileRow>[0]["marks"];
+  readonly partOf: Parameters<typeof TileRow>[0]["partOf"];
+}
+
+function Line({ line, widthPx, ...rest }: LineProps) {
+  const { index, layout, onChoose } = rest;
+  if (line.kind === "loose") return <LooseBench index={index} widthPx={widthPx} onClose={() => onChoose(null)} />;
+  if (line.kind === "bench") {
+    const left = ((line.tile.column ?? 1) - 1) * (layout.tileWidthPx + layout.gapPx) + layout.lettersWidthPx;
+    return (
+      <Bench
+        key={line.tile.name}
+        index={index}
+        tile={line.tile}
+        widthPx={widthPx}
+        mouth={{
+          leftPx: line.tile.row === null ? null : left,
+          widthPx: layout.tileWidthPx,
+          gapPx: layout.gapPx,
+          opens: line.opens,
+        }}
+        onClose={() => onChoose(null)}
+      />
+    );
+  }
+  if (line.kind === "row") return <TileRow row={line.row} {...rest} />;
+  return <TileRow tiles={line.tiles} isFirst={line.isFirst} {...rest} />;
+}
+
+function estimateLine(line: GridLine | undefined, rowHeightPx: number): number {
+  if (!line || line.kind === "row") return rowHeightPx;
+  return line.kind === "unplaced" ? rowHeightPx + 40 : 220;
+}
+
+/** Brings a newly chosen tile's row and bench into view, without moving anything that is in view already. */
+function useShowChosen(input: {
+  readonly lines: readonly GridLine[];
+  readonly chosen: string | null;
+  readonly scroller: { readonly current: HTMLElement | null };
+  readonly scrollTo: (at: number) => void;
+}) {
+  const latest = useRef(input);
+  useEffect(() => {
+    latest.current = input;
+  });
+  const isReady = input.lines.length > 0;
+  useEffect(() => {
+    const { lines, chosen, scroller, scrollTo } = latest.current;
+    if (chosen === null || !isReady) return;
+    const bench = lines.findIndex((line) => line.kind === "bench" || line.kind === "loose");
+    if (bench < 0) return;
+    scrollTo(bench);
+    const timer = setTimeout(() => {
+      scroller.current?.querySelector("[data-bench]")?.scrollIntoView({ block: "nearest" });
+      scroller.current?.querySelector(`[data-tile="${CSS.escape(chosen)}"]`)?.scrollIntoView({ block: "nearest" });
+    }, 60);
+    return () => clearTimeout(timer);
+  }, [input.chosen, isReady]);
+}

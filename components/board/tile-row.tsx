@@ -1,0 +1,79 @@
+import { Hole } from "@/components/board/hole";
+import { SeamChips } from "@/components/board/seam-chips";
+import { Tile } from "@/components/board/tile";
+import { Chip } from "@/components/ui/chip";
+import type { BoardIndex, BoardTile } from "@/lib/board/board-index";
+import type { BoardLayout, PicturePart } from "@/lib/board/layout";
+import type { SeamMark } from "@/lib/board/seam-marks";
+import { rowLetters, tileName } from "@/lib/board/tile-name";
+import { countOf } from "@/lib/board/words";
+
+interface TileRowProps {
+  readonly index: BoardIndex;
+  readonly projectId: string;
+  readonly layout: BoardLayout;
+  readonly chosen: string | null;
+  readonly onChoose: (name: string | null) => void;
+  readonly asked: ReadonlySet<string>;
+  readonly tabStop: string | null;
+  readonly marks: readonly SeamMark[];
+  readonly partOf: (tile: BoardTile) => PicturePart;
+  /** A row of the grid, 1 is the top; or, without it, `tiles` that have no place. */
+  readonly row?: number;
+  readonly tiles?: readonly BoardTile[];
+  readonly isFirst?: boolean;
+}
+
+/** One row of places: its letter, its tiles and holes, the overlaps on its seams. */
+export function TileRow({ row, tiles = [], isFirst = false, ...rest }: TileRowProps) {
+  const { index, layout, projectId } = rest;
+  const names =
+    row === undefined
+      ? tiles.map((tile) => tile.name)
+      : Array.from({ length: index.board.grid.columns }, (_, at) => tileName(row, at + 1));
+  const byName = new Map(tiles.map((tile) => [tile.name, tile]));
+  return (
+    <>
+      {isFirst && (
+        <p className="flex h-10 items-end pb-1">
+          <Chip>{countOf(index.unplaced.length, "stack")} without a place</Chip>
+        </p>
+      )}
+      <div
+        role="group"
+        aria-label={row === undefined ? "Stacks without a place" : `Row ${rowLetters(row)}`}
+        className="relative flex items-start"
+        style={{ gap: layout.gapPx, paddingBottom: layout.gapPx }}
+      >
+        <span
+          aria-hidden
+          className="sticky left-0 z-10 flex shrink-0 items-center justify-end pr-2"
+          style={{ width: layout.lettersWidthPx - layout.gapPx, height: layout.pictureHeightPx }}
+        >
+          {row !== undefined && (
+            <span className="figures bg-paper px-1.5 text-sm leading-5 font-bold">{rowLetters(row)}</span>
+          )}
+        </span>
+        {names.map((name) => {
+          const hole = index.holes.get(name);
+          if (hole) return <Hole key={name} projectId={projectId} hole={hole} layout={layout} />;
+          const tile = index.tiles.get(name) ?? byName.get(name);
+          return tile ? (
+            <Tile
+              key={name}
+              projectId={projectId}
+              tile={tile}
+              part={rest.partOf(tile)}
+              layout={layout}
+              isChosen={name === rest.chosen}
+              isTabStop={name === rest.tabStop || row === undefined}
+              isAsked={rest.asked.has(name)}
+              onChoose={() => rest.onChoose(name === rest.chosen ? null : name)}
+            />
+          ) : null;
+        })}
+        <SeamChips marks={rest.marks} layout={layout} />
+      </div>
+    </>
+  );
+}

@@ -1,0 +1,82 @@
+"use client";
+
+import { useEffect, useMemo, useState } from "react";
+import {
+  BoardFailure,
+  BoardNews,
+  EmptyBoard,
+  UnreadableBoard,
+  UnsortedBoard,
+  WorkingBoard,
+} from "@/components/board/board-states";
+import { Sheet } from "@/components/board/sheet";
+import { useBoardPlace } from "@/components/board/use-board-place";
+import { useLiveBoard } from "@/components/board/use-live-board";
+import { indexBoard } from "@/lib/board/board-index";
+
+interface BoardProps {
+  readonly projectId: string;
+  readonly canEdit: boolean;
+}
+
+/** From here on there is room for the rail and the grid (look.md). */
+const WIDE = "(min-width: 1024px)";
+
+/** The one container of the board page: asks for the data, decides what stands there. */
+export function Board({ projectId, canEdit }: BoardProps) {
+  const { board, progress, sortError, retry, error } = useLiveBoard(projectId);
+  const index = useMemo(() => (board ? indexBoard(board) : null), [board]);
+  const place = useBoardPlace();
+  const isWide = useMedia(WIDE);
+  const [topPx, setTopPx] = useState(0);
+
+  if (!index || !progress) {
+    return error ? (
+      <BoardFailure message={error} onRetry={retry} />
+    ) : (
+      <p className="p-8 text-quiet">Fetching the board…</p>
+    );
+  }
+  if (index.board.frames.length === 0) {
+    if (progress.total === 0) return <EmptyBoard projectId={projectId} canEdit={canEdit} />;
+    if (sortError !== null) return <UnsortedBoard projectId={projectId} sortError={sortError} />;
+    if (progress.sorted) return <UnreadableBoard projectId={projectId} failed={progress.failed} />;
+    return <WorkingBoard progress={progress} />;
+  }
+  return (
+    <div
+      ref={(element) => setTopPx(element ? element.getBoundingClientRect().top + window.scrollY : 0)}
+      // The sheet fills the window below header and ticket, so that rail and grid scroll on their own.
+      style={isWide ? { height: `max(34rem, calc(100dvh - ${topPx}px))` } : undefined}
+      className="flex flex-col"
+    >
+      <BoardNews
+        projectId={projectId}
+        progress={progress}
+        sortError={sortError}
+        isStale={error !== null}
+        onRetry={retry}
+      />
+      <Sheet
+        index={index}
+        chosen={place.chosen}
+        onChoose={place.choose}
+        view={place.view}
+        onShow={place.show}
+        isWide={isWide}
+      />
+    </div>
+  );
+}
+
+function useMedia(query: string): boolean {
+  const [matches, setMatches] = useState(true);
+  useEffect(() => {
+    const list = window.matchMedia(query);
+    const update = () => setMatches(list.matches);
+    update();
+    list.addEventListener("change", update);
+    return () => list.removeEventListener("change", update);
+  }, [query]);
+  return matches;
+}

@@ -1,0 +1,106 @@
+"use client";
+
+import type { ReactNode } from "react";
+import { Bench, LooseBench } from "@/components/board/bench";
+import { Picture } from "@/components/board/picture";
+import { StatusLine } from "@/components/board/status-line";
+import { TileTable } from "@/components/board/tile-table";
+import { LOOSE } from "@/components/board/use-board-place";
+import { useElementSize } from "@/components/board/use-element-size";
+import { Button } from "@/components/ui/button";
+import type { BoardIndex, BoardTile } from "@/lib/board/board-index";
+import { countOf } from "@/lib/board/words";
+import { previewUrl } from "@/lib/frames/picture-urls";
+
+interface SmallBoardProps {
+  readonly index: BoardIndex;
+  readonly chosen: string | null;
+  readonly onChoose: (name: string | null) => void;
+  readonly docket: ReactNode;
+}
+
+/** The board where there is no room for it: the table, or one tile at a time. */
+export function SmallBoard({ index, chosen, onChoose, docket }: SmallBoardProps) {
+  const tile = chosen === null ? undefined : findTile(index, chosen);
+  if (tile || chosen === LOOSE) return <OneTile index={index} tile={tile ?? null} onChoose={onChoose} />;
+  return (
+    <>
+      {docket}
+      {index.loose.length > 0 && (
+        <p className="border-b border-hairline px-3 py-2">
+          <Button size="slim" onClick={() => onChoose(LOOSE)}>
+            {countOf(index.loose.length, "loose frame")}
+          </Button>
+        </p>
+      )}
+      <div className="flex-1">
+        <TileTable index={index} chosen={chosen} onChoose={onChoose} />
+      </div>
+      <StatusLine index={index} />
+    </>
+  );
+}
+
+interface OneTileProps {
+  readonly index: BoardIndex;
+  /** Null: the loose frames. */
+  readonly tile: BoardTile | null;
+  readonly onChoose: (name: string | null) => void;
+}
+
+function OneTile({ index, tile, onChoose }: OneTileProps) {
+  const [ref, size] = useElementSize();
+  const names = [...index.tiles.keys(), ...index.unplaced.map((unplaced) => unplaced.name)];
+  const at = tile ? names.indexOf(tile.name) : -1;
+  const before = names[at - 1];
+  const after = names[at + 1];
+  return (
+    <div ref={ref} className="flex flex-1 flex-col bg-well">
+      <div className="flex flex-wrap gap-2 bg-paper px-3 py-2">
+        <Button size="slim" onClick={() => onChoose(null)}>
+          All tiles
+        </Button>
+        {tile && (
+          <span className="ml-auto flex gap-2">
+            <Button size="slim" disabled={before === undefined} onClick={() => before && onChoose(before)}>
+              {before ?? "Tile before"}
+            </Button>
+            <Button size="slim" disabled={after === undefined} onClick={() => after && onChoose(after)}>
+              {after ?? "Tile after"}
+            </Button>
+          </span>
+        )}
+      </div>
+      {tile?.reference && (
+        <Picture
+          src={previewUrl(index.board.projectId, tile.reference.id)}
+          alt={`Tile ${tile.name}, its reference ${tile.reference.name}`}
+          className="max-h-[50dvh] w-full object-contain"
+        />
+      )}
+      {tile && tile.questions.length > 0 && <TileQuestions tile={tile} />}
+      {size &&
+        (tile ? (
+          <Bench key={tile.name} index={index} tile={tile} widthPx={size.width} mouth={null} onClose={null} />
+        ) : (
+          <LooseBench index={index} widthPx={size.width} onClose={null} />
+        ))}
+    </div>
+  );
+}
+
+function TileQuestions({ tile }: { readonly tile: BoardTile }) {
+  return (
+    <ul className="bg-ochre-wash px-4 py-2 text-sm text-ochre-on">
+      {tile.questions.map((question) => (
+        <li key={question.id}>
+          <span className="font-semibold">{question.message}</span> {question.evidence}
+        </li>
+      ))}
+    </ul>
+  );
+}
+
+function findTile(index: BoardIndex, name: string): BoardTile | undefined {
+  return index.tiles.get(name) ?? index.unplaced.find((tile) => tile.name === name);
+}

@@ -1,0 +1,38 @@
+import "server-only";
+import { constants } from "node:fs";
+import { copyFile, mkdir, readdir } from "node:fs/promises";
+import path from "node:path";
+import { environment } from "@/lib/env";
+
+/** The database's own files are copied by the database. */
+const DATABASE_FILE = /\.db(-wal|-shm|-journal)?$/;
+
+/**
+ * Copies everything in the storage but the database, byte for byte. Originals are never rewritten, so copying them while
+ * the product runs is safe; what goes while it is being copied was deleted by somebody and is left out.
+ * @returns how many files were copied
+ */
+export async function copyStorage(target: string): Promise<number> {
+  const { storageDir } = environment();
+  const entries = await readdir(storageDir, { recursive: true, withFileTypes: true });
+  let copied = 0;
+  for (const entry of entries) {
+    if (!entry.isFile() || DATABASE_FILE.test(entry.name)) continue;
+    const file = path.join(entry.parentPath, entry.name);
+    const copy = path.join(target, path.relative(storageDir, file));
+    await mkdir(path.dirname(copy), { recursive: true });
+    if (await copyUnlessGone(file, copy)) copied++;
+  }
+  return copied;
+}
+
+async function copyUnlessGone(file: string, copy: string): Promise<boolean> {
+  try {
+    // Shares the blocks where the file system can; keeps the mode (the secret's is 600).
+    await copyFile(file, copy, constants.COPYFILE_EXCL | constants.COPYFILE_FICLONE);
+    return true;
+  } catch (error) {
+    if (error instanceof Error && "code" in error && error.code === "ENOENT") return false;
+    throw error;
+  }
+}

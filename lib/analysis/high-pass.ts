@@ -16,7 +16,7 @@ import type { Plane } from "@/lib/analysis/types";
 export function highPass(plane: Plane, radiusPx: number): FloatPlane {
   assertPlane(plane);
   const { widthPx, heightPx } = plane;
-  const across = blurRows(Float64Array.from(plane.data), widthPx, heightPx, radiusPx);
+  const across = blurRows(new Float64Array(plane.data), widthPx, heightPx, radiusPx);
   const down = transpose(
     blurRows(transpose(across, widthPx, heightPx), heightPx, widthPx, radiusPx),
     heightPx,

@@ -57,7 +57,9 @@ export interface ImageShift {
  * Edges: a constant image gives zeros, which match nothing.
  */
 export function prepareRegistration(image: RegistrationImage): PreparedImage {
-  const levels = Float32Array.from(image.data, (value) => (value * 255) / REGISTRATION_LEVELS);
+  // Plain loops here and below: a mapping function for every pixel takes several times as long.
+  const levels = new Float32Array(image.data);
+  for (let i = 0; i < levels.length; i += 1) levels[i] = ((levels[i] ?? 0) * 255) / REGISTRATION_LEVELS;
   const plane: FloatPlane = { data: levels, widthPx: image.widthPx, heightPx: image.heightPx };
   const small = fitLongSide(image.widthPx, image.heightPx, COARSE_LONG_SIDE_PX);
   const coarse = detailOf(areaAverage(plane, small.widthPx, small.heightPx));
@@ -66,20 +68,28 @@ export function prepareRegistration(image: RegistrationImage): PreparedImage {
 
 function detailOf(plane: FloatPlane): FloatPlane {
   const radiusPx = Math.max(1, Math.round(BLUR_SHARE_OF_SIDE * Math.max(plane.widthPx, plane.heightPx)));
-  const { data } = highPass(plane, radiusPx);
-  let sum = 0;
-  for (const value of data) sum += value * value;
+  const detail = highPass(plane, radiusPx);
+  const { data } = detail;
+  let squared = 0;
+  for (const value of data) squared += value * value;
   // A few bright lamps or a horizon would otherwise decide alone.
-  const limit = CLIP_DEVIATIONS * Math.sqrt(sum / data.length);
-  const clipped = data.map((value) => Math.max(-limit, Math.min(limit, value)));
-  return { data: clipped, widthPx: plane.widthPx, heightPx: plane.heightPx };
+  const limit = CLIP_DEVIATIONS * Math.sqrt(squared / data.length);
+  for (let i = 0; i < data.length; i += 1) data[i] = Math.max(-limit, Math.min(limit, data[i] ?? 0));
+  return detail;
 }
 
 function taper(plane: FloatPlane): FloatPlane {
   const { widthPx, heightPx } = plane;
   const across = taperWeights(widthPx);
   const down = taperWeights(heightPx);
-  const data = plane.data.map((value, i) => value * (across[i % widthPx] ?? 0) * (down[Math.floor(i / widthPx)] ?? 0));
+  const data = new Float32Array(plane.data);
+  for (let y = 0; y < heightPx; y += 1) {
+    const row = down[y] ?? 0;
+    for (let x = 0; x < widthPx; x += 1) {
+      const i = y * widthPx + x;
+      data[i] = (data[i] ?? 0) * row * (across[x] ?? 0);
+    }
+  }
   return { data, widthPx, heightPx };
 }
 
@@ -114,24 +124,23 @@ export function measureShift(a: PreparedImage, b: PreparedImage): ImageShift {
     leastOverlap: LEAST_OVERLAP,
     count: PEAKS_LOOKED_AT,
   });
+  const correlate = rememberCorrelations(a.fine, b.fine);
+  const scale = a.fine.widthPx / a.coarse.widthPx;
   const ranked = peaks
     .map((peak): Candidate => ({ peak, score: matchScore(correlateOverlap(a.coarse, b.coarse, peak.x, peak.y)) }))
     .sort((first, second) => second.score - first.score)
     .slice(0, PEAKS_VERIFIED)
-    .map(({ peak }) => ({ peak, climbed: climb(a.fine, b.fine, peak, a.fine.widthPx / a.coarse.widthPx) }));
-  const best = ranked.reduce<(typeof ranked)[number] | null>(
-    (found, next) => (found === null || next.climbed.score > found.climbed.score ? next : found),
+    .map(({ peak }) => climb(correlate, Math.round(peak.x * scale), Math.round(peak.y * scale)));
+  const best = ranked.reduce<Climbed | null>(
+    (found, next) => (found === null || next.score > found.score ? next : found),
     null,
   );
   if (best === null) return { x: 0, y: 0, ncc: 0, peakRatio: 1, contrast: 0 };
-  const { x, y, correlation } = best.climbed;
+  const { x, y, correlation } = best;
   return {
-    ...refine(a.fine, b.fine, x, y, correlation.ncc),
+    ...refine(correlate, x, y),
     ncc: correlation.ncc,
-    peakRatio: peakRatio(
-      best.climbed,
-      ranked.map(({ climbed }) => climbed),
-    ),
+    peakRatio: peakRatio(best, ranked),
     contrast: Math.min(correlation.deviationA, correlation.deviationB) / TEXTURE_LEVEL,
   };
 }
@@ -147,13 +156,26 @@ interface Climbed {
   readonly correlation: OverlapCorrelation;
 }
 
+type Correlate = (x: number, y: number) => OverlapCorrelation;
+
+/** Climbing looks at most places more than once; each is worth 0.1 ms. */
+function rememberCorrelations(a: FloatPlane, b: FloatPlane): Correlate {
+  const known = new Map<string, OverlapCorrelation>();
+  return (x, y) => {
+    const key = `${x},${y}`;
+    const correlation = known.get(key) ?? correlateOverlap(a, b, x, y);
+    known.set(key, correlation);
+    return correlation;
+  };
+}
+
 /** From a coarse peak to the nearest maximum of the NCC at full registration size. */
-function climb(a: FloatPlane, b: FloatPlane, peak: SurfacePeak, scale: number): Climbed {
+function climb(correlate: Correlate, fromX: number, fromY: number): Climbed {
   const at = (x: number, y: number): Climbed => {
-    const correlation = correlateOverlap(a, b, x, y);
+    const correlation = correlate(x, y);
     return { x, y, correlation, score: matchScore(correlation) };
   };
-  let best = at(Math.round(peak.x * scale), Math.round(peak.y * scale));
+  let best = at(fromX, fromY);
   for (let step = 0; step < LONGEST_CLIMB_PX; step += 1) {
     const before = best;
     for (const [dx, dy] of NEIGHBOURS) {
@@ -170,15 +192,11 @@ const NEIGHBOURS = [
   [1, 0],
   [0, -1],
   [0, 1],
-  [-1, -1],
-  [1, -1],
-  [-1, 1],
-  [1, 1],
 ] as const;
 
-function refine(a: FloatPlane, b: FloatPlane, x: number, y: number, ncc: number): { x: number; y: number } {
-  const at = (dx: number, dy: number) => correlateOverlap(a, b, x + dx, y + dy).ncc;
-  return { x: x + parabolaOffset(at(-1, 0), ncc, at(1, 0)), y: y + parabolaOffset(at(0, -1), ncc, at(0, 1)) };
+function refine(correlate: Correlate, x: number, y: number): { x: number; y: number } {
+  const at = (dx: number, dy: number) => correlate(x + dx, y + dy).ncc;
+  return { x: x + parabolaOffset(at(-1, 0), at(0, 0), at(1, 0)), y: y + parabolaOffset(at(0, -1), at(0, 0), at(0, 1)) };
 }
 
 /** Best score over the second best of those that lie elsewhere. */

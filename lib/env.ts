@@ -75,6 +75,11 @@ export function environment(): Environment {
   return cached;
 }
 
+/** Where the command was given: npm runs scripts in the project's folder and says in INIT_CWD where it was called. */
+export function callerFolder(): string {
+  return path.resolve(process.env.INIT_CWD ?? process.cwd());
+}
+
 /** next-auth reads its own address from the environment only; it is always APP_URL. */
 export function followAppUrl(): void {
   process.env.NEXTAUTH_URL = environment().appUrl;

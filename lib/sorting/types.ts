@@ -71,6 +71,9 @@ export interface SortOptions {
   readonly softLimit: number;
 }
 
+/** Log ratio of the Laplacian variance to the stack's under which a frame is soft. Source: analysis.md, step 7. */
+export const SOFT_LIMIT = -0.2;
+
 export interface SortInput {
   readonly frames: readonly SortFrame[];
   readonly facts: SortFacts;

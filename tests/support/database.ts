@@ -1,0 +1,35 @@
+import { copyFileSync, mkdirSync, mkdtempSync, readdirSync, rmSync } from "node:fs";
+import { tmpdir } from "node:os";
+import path from "node:path";
+import { afterAll, beforeAll, beforeEach } from "vitest";
+import { closeDatabase } from "@/db/client";
+import { migrateDatabase } from "@/db/migrate";
+
+/**
+ * Gives every test of the calling file a storage directory of its own with a freshly migrated database: migrated once
+ * for the file, copied for each test. Call it at the top of the file, before anything reads the environment.
+ * @returns the storage directory's absolute path
+ */
+export function useDatabase(): string {
+  const root = mkdtempSync(path.join(tmpdir(), "stackyard-test-"));
+  const storageDir = path.join(root, "storage");
+  const base = path.join(root, "base.db");
+  process.env.STORAGE_DIR = storageDir;
+
+  beforeAll(async () => {
+    await migrateDatabase();
+    await closeDatabase();
+    copyFileSync(path.join(storageDir, "stackyard.db"), base);
+  });
+  beforeEach(async () => {
+    await closeDatabase();
+    mkdirSync(storageDir, { recursive: true });
+    for (const name of readdirSync(storageDir)) rmSync(path.join(storageDir, name), { recursive: true });
+    copyFileSync(base, path.join(storageDir, "stackyard.db"));
+  });
+  afterAll(async () => {
+    await closeDatabase();
+    rmSync(root, { recursive: true });
+  });
+  return storageDir;
+}

@@ -1,8 +1,9 @@
 import { copyFileSync, mkdirSync, mkdtempSync, readdirSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import path from "node:path";
+import { sql } from "drizzle-orm";
 import { afterAll, beforeAll, beforeEach } from "vitest";
-import { closeDatabase } from "@/db/client";
+import { closeDatabase, database } from "@/db/client";
 import { migrateDatabase } from "@/db/migrate";
 
 /**
@@ -18,6 +19,8 @@ export function useDatabase(): string {
 
   beforeAll(async () => {
     await migrateDatabase();
+    // Closing does not empty the write-ahead log into the file at once.
+    await database().run(sql`PRAGMA wal_checkpoint(TRUNCATE)`);
     await closeDatabase();
     copyFileSync(path.join(storageDir, "stackyard.db"), base);
   });

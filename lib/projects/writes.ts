@@ -1,10 +1,15 @@
 import "server-only";
-import { eq } from "drizzle-orm";
-import { writeTransaction } from "@/db/client";
+import { eq, lte, sql } from "drizzle-orm";
+import { database, writeTransaction } from "@/db/client";
+import { files, uploads } from "@/db/schema/frames";
 import { members, projects } from "@/db/schema/projects";
+import { removals } from "@/db/schema/removals";
 import type { ProjectAccess, SignedInUser } from "@/lib/auth/gate";
 import { AppError } from "@/lib/errors/app-error";
 import { newId, projectIdSchema, type ProjectId } from "@/lib/ids";
+import { requestJob } from "@/lib/jobs/queue";
+import { sortJobRequest } from "@/lib/jobs/requests";
+import { removeStored } from "@/lib/storage/disk";
 import type { NewProject, ProjectChange, ProjectSettings } from "@/lib/projects/schema";
 
 /** Makes a project; whoever makes it is its lead. */
@@ -30,19 +35,24 @@ export async function createProject(
   return id;
 }
 
-/** Name, archive and settings at once, as PATCH sends them. */
+/** Name, archive and settings at once, as PATCH sends them. What the proposal rests on asks for a new sorting. */
 export async function changeProject(access: ProjectAccess, change: ProjectChange): Promise<void> {
-  const { framesPerTile, isArchived, ...columns } = change;
-  await writeTransaction((tx) =>
-    tx
+  const { framesPerTile, isArchived, name, ...settings } = change;
+  const asksForSorting = framesPerTile !== undefined || Object.keys(settings).length > 0;
+  const nowMs = Date.now();
+  await writeTransaction(async (tx) => {
+    await tx
       .update(projects)
       .set({
-        ...columns,
+        ...settings,
+        ...(name !== undefined && { name }),
         ...(framesPerTile && { framesLeast: framesPerTile.least, framesMost: framesPerTile.most }),
-        ...(isArchived !== undefined && { archivedAtMs: isArchived ? Date.now() : null }),
+        ...(isArchived !== undefined && { archivedAtMs: isArchived ? nowMs : null }),
+        ...(asksForSorting && { contentVersion: sql`${projects.contentVersion} + 1` }),
       })
-      .where(eq(projects.id, access.projectId)),
-  );
+      .where(eq(projects.id, access.projectId));
+    if (asksForSorting) await requestJob(tx, sortJobRequest(access.projectId, 0), nowMs);
+  });
 }
 
 export function renameProject(access: ProjectAccess, name: string): Promise<void> {
@@ -58,20 +68,50 @@ export function updateSettings(access: ProjectAccess, settings: ProjectSettings)
 }
 
 /**
- * Deletes a project with its originals and previews.
+ * Deletes a project with its originals and previews: first the rows, with a note of what lies on the disk, then the
+ * files. Killed in between, `sweepRemovals` goes on from the note.
  * @param confirmation the project's name, typed by the person
  * @returns bytes freed on disk
- * @throws AppError invalid where the confirmation is not the name
+ * @throws AppError invalid where the confirmation is not the name; not_found where it went meanwhile
  */
 export async function deleteProject(access: ProjectAccess, confirmation: string): Promise<{ freedBytes: number }> {
-  return writeTransaction(async (tx) => {
-    const [project] = await tx.select({ name: projects.name }).from(projects).where(eq(projects.id, access.projectId));
-    if (!project) return { freedBytes: 0 };
-    if (confirmation.normalize("NFC").trim() !== project.name) {
-      const message = "Type the project's name exactly as it is written.";
-      throw new AppError("invalid", message, { fields: [{ field: "confirmation", message }] });
-    }
-    await tx.delete(projects).where(eq(projects.id, access.projectId));
-    return { freedBytes: 0 };
+  const { projectId } = access;
+  const stored = await writeTransaction(async (tx) => {
+    const [project] = await tx.select({ name: projects.name }).from(projects).where(eq(projects.id, projectId));
+    if (!project) throw new AppError("not_found", "This project is deleted already.");
+    if (confirmation.normalize("NFC").trim() !== project.name) throw notTheName();
+    const uploadRows = await tx.select({ id: uploads.id }).from(uploads).where(eq(uploads.projectId, projectId));
+    const fileRows = await tx.select({ id: files.id }).from(files).where(eq(files.projectId, projectId));
+    const note = { uploadIds: uploadRows.map(({ id }) => id), fileIds: fileRows.map(({ id }) => id) };
+    await tx.insert(removals).values({ ...note, createdAtMs: Date.now() });
+    await tx.delete(projects).where(eq(projects.id, projectId));
+    return note;
   });
+  return { freedBytes: await removeStored(stored) };
+}
+
+function notTheName(): AppError {
+  const message = "Type the project's name exactly as it is written.";
+  return new AppError("invalid", message, { fields: [{ field: "confirmation", message }] });
+}
+
+/** By then no request or worker that began before the deletion still writes a file of it, ms. */
+const REMOVAL_SETTLES_MS = 2 * 60 * 1000;
+
+/**
+ * Takes away what deleted projects left on the disk: after a kill in the middle, or written by somebody who had begun
+ * before. For the worker, at its start and every minute; may run twice at once.
+ * @returns bytes freed
+ */
+export async function sweepRemovals(nowMs: number): Promise<number> {
+  const due = await database()
+    .select({ id: removals.id, uploadIds: removals.uploadIds, fileIds: removals.fileIds })
+    .from(removals)
+    .where(lte(removals.createdAtMs, nowMs - REMOVAL_SETTLES_MS));
+  let freedBytes = 0;
+  for (const { id, ...stored } of due) {
+    freedBytes += await removeStored(stored);
+    await writeTransaction((tx) => tx.delete(removals).where(eq(removals.id, id)));
+  }
+  return freedBytes;
 }

@@ -25,10 +25,21 @@ export async function syncOriginal(uploadId: UploadId): Promise<void> {
   await sync(originalsFolder());
 }
 
-/** Deletes an unfinished upload's bytes, or everything of a file whose project is deleted. Missing ones are no error. */
-export async function removeStored(stored: { uploadIds: readonly UploadId[]; fileIds: readonly FileId[] }) {
+/**
+ * Deletes an unfinished upload's bytes, or everything of a file whose project is deleted. Missing ones are no error.
+ * @returns bytes freed
+ */
+export async function removeStored(stored: {
+  readonly uploadIds: readonly UploadId[];
+  readonly fileIds: readonly FileId[];
+}): Promise<number> {
   const derived = stored.fileIds.flatMap((id) => [previewPath(id), thumbnailPath(id), registrationPath(id)]);
-  for (const target of [...stored.uploadIds.map(originalPath), ...derived]) await rm(target, { force: true });
+  let freedBytes = 0;
+  for (const target of [...stored.uploadIds.map(originalPath), ...derived]) {
+    freedBytes += (await statOrNull(target))?.size ?? 0;
+    await rm(target, { force: true });
+  }
+  return freedBytes;
 }
 
 /**

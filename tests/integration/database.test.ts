@@ -69,7 +69,9 @@ test("a write acknowledged under contention from a second process is really ther
   let acknowledged = 0;
   let refused = 0;
   while (other.exitCode === null) {
-    const outcome = await writeTransaction((tx) => tx.run(sql`insert into probe values ('this', ${acknowledged})`)).then(
+    const outcome = await writeTransaction((tx) =>
+      tx.run(sql`insert into probe values ('this', ${acknowledged})`),
+    ).then(
       () => "written",
       () => "refused",
     );

@@ -15,8 +15,11 @@ export const GET = route(paramsSchema, async (_request, { projectId }) => {
 });
 
 export const PATCH = route(paramsSchema, async (request, { projectId }) => {
-  const access = await requireProject(projectId, "manage", { evenArchived: true });
-  await changeProject(access, await readJson(request, projectChangeSchema));
+  await requireProject(projectId, "manage", { evenArchived: true });
+  const change = await readJson(request, projectChangeSchema);
+  // In the archive nothing changes but that it is in the archive.
+  const access = await requireProject(projectId, "manage", { evenArchived: change.isArchived !== undefined });
+  await changeProject(access, change);
   return Response.json(await getProject(access));
 });
 

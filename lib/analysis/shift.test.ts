@@ -3,17 +3,7 @@ import { describe, expect, test } from "vitest";
 import { measureShift, prepareRegistration } from "@/lib/analysis/shift";
 import { toRegistrationImage } from "@/lib/analysis/registration-image";
 import type { RegistrationImage } from "@/lib/analysis/types";
-
-/** Mulberry32: a small seeded generator, so that every run sees the same noise. */
-function makeRandom(seed: number): () => number {
-  let state = seed;
-  return () => {
-    state = (state + 0x6d2b79f5) | 0;
-    let t = Math.imul(state ^ (state >>> 15), 1 | state);
-    t = (t + Math.imul(t ^ (t >>> 7), 61 | t)) ^ t;
-    return ((t ^ (t >>> 14)) >>> 0) / 4294967296;
-  };
-}
+import { makeRandom } from "@/tests/support/random";
 
 const SCENE_PX = 900;
 /** A scene of overlapping random boxes: edges of every size, as real ones have. */

@@ -6,7 +6,7 @@ import { projects } from "@/db/schema/projects";
 import type { FrameMeasurements } from "@/lib/analysis/types";
 import type { ProjectAccess } from "@/lib/auth/gate";
 import { publish } from "@/lib/events/publish";
-import { isRawName, pairingKey } from "@/lib/frames/pairing-key";
+import { frameKey } from "@/lib/frames/pairing";
 import {
   type FileId,
   fileIdSchema,
@@ -16,6 +16,7 @@ import {
   type ProjectId,
   type UploadId,
 } from "@/lib/ids";
+import { hasRawExtension } from "@/lib/intake/picture-files";
 import { requestJob } from "@/lib/jobs/queue";
 import { analyseJobRequest, SORT_DELAY_MS, sortJobRequest } from "@/lib/jobs/requests";
 import type { CaptureMetadata } from "@/lib/metadata/types";
@@ -33,8 +34,8 @@ export interface ReceivedFile {
 export async function recordFile(tx: Transaction, received: ReceivedFile, nowMs: number): Promise<void> {
   const { projectId, name, folder } = received;
   const id = fileIdSchema.parse(newId());
-  const key = pairingKey(folder, name);
-  const isRaw = isRawName(name);
+  const key = frameKey({ folder, name });
+  const isRaw = hasRawExtension(name);
   const frameId = isRaw ? await findFrameWithoutRaw(tx, projectId, key) : await createFrame(tx, projectId, nowMs);
   await tx
     .insert(files)
@@ -107,6 +108,7 @@ interface FileRow {
   readonly id: FileId;
   readonly frameId: FrameId | null;
   readonly pairingKey: string;
+  readonly isRaw: boolean;
   readonly receivedAtMs: number;
 }
 
@@ -127,13 +129,15 @@ export async function recordAnalysis(
         id: files.id,
         frameId: files.frameId,
         pairingKey: files.pairingKey,
+        isRaw: files.isRaw,
         receivedAtMs: files.receivedAtMs,
       })
       .from(files)
       .where(and(eq(files.id, fileId), eq(files.projectId, projectId), eq(files.state, "received")));
     if (!file) return;
-    await (result.type === "unreadable" ? refuse(tx, file, result) : accept(tx, projectId, file, result));
-    if (result.type !== "raw") await adoptRaw(tx, projectId, file.pairingKey);
+    if (result.type === "unreadable") await refuse(tx, file, result);
+    else await accept(tx, projectId, await asFound(tx, projectId, file, result.type, nowMs), result);
+    await adoptRaw(tx, projectId, file.pairingKey);
     await markContentChanged(tx, projectId, nowMs);
     await publish(tx, projectId, { type: "file.analysed", fileId }, nowMs);
   });
@@ -143,6 +147,16 @@ async function refuse(tx: Transaction, file: FileRow, result: AnalysisResult & {
   const { sha256, reason } = result;
   await tx.update(files).set({ state: "failed", sha256, reason, frameId: null }).where(eq(files.id, file.id));
   await dropFrame(tx, file.frameId);
+}
+
+/** The name said raw or picture when the file came in; its content has the last word. */
+async function asFound(tx: Transaction, projectId: ProjectId, file: FileRow, type: "picture" | "raw", nowMs: number) {
+  const isRaw = type === "raw";
+  if (isRaw === file.isRaw) return file;
+  const frameId = isRaw ? null : await createFrame(tx, projectId, nowMs);
+  await tx.update(files).set({ isRaw, frameId }).where(eq(files.id, file.id));
+  if (isRaw) await dropFrame(tx, file.frameId);
+  return { ...file, isRaw, frameId };
 }
 
 async function accept(
@@ -172,6 +186,7 @@ async function findTwin(tx: Transaction, projectId: ProjectId, sha256: string) {
       id: files.id,
       frameId: files.frameId,
       pairingKey: files.pairingKey,
+      isRaw: files.isRaw,
       receivedAtMs: files.receivedAtMs,
       orderTaken: frames.orderTaken,
     })

@@ -1,0 +1,203 @@
+import "server-only";
+import { and, eq, inArray, isNull, notInArray, sql } from "drizzle-orm";
+import { type Transaction, writeTransaction } from "@/db/client";
+import { changes, questions, seams } from "@/db/schema/board";
+import { frames, stacks } from "@/db/schema/frames";
+import { projects } from "@/db/schema/projects";
+import type { ProjectAccess } from "@/lib/auth/gate";
+import type { SortBasis } from "@/lib/board/sorting-reads";
+import { publish } from "@/lib/events/publish";
+import { frameIdSchema, newId, type ProjectId, stackIdSchema } from "@/lib/ids";
+import type { Proposal, ProposedFrame, ProposedQuestion, ProposedStack } from "@/lib/sorting/types";
+
+/** Rows of one insert: SQLite takes 32 766 values a statement, and a stack has 16. */
+const ROWS_A_STATEMENT = 500;
+
+/**
+ * Makes a proposal the project's board: one revision, one change by the computation, all or nothing.
+ * @returns false where files or board have changed since `basis` was read: sort again
+ */
+export async function storeProposal(
+  access: ProjectAccess,
+  basis: SortBasis,
+  proposal: Proposal,
+  nowMs: number,
+): Promise<boolean> {
+  const { projectId } = access;
+  return writeTransaction(async (tx) => {
+    const revision = basis.revision + 1;
+    const [project] = await tx
+      .update(projects)
+      .set({
+        revision,
+        rows: proposal.rows,
+        columns: proposal.columns,
+        shotOrder: proposal.shotOrder,
+        usedPauseSeconds: proposal.longestPauseSeconds,
+        sortedVersion: basis.contentVersion,
+        sortedAtMs: nowMs,
+        sortError: null,
+      })
+      .where(
+        and(
+          eq(projects.id, projectId),
+          eq(projects.revision, basis.revision),
+          eq(projects.contentVersion, basis.contentVersion),
+        ),
+      )
+      .returning({ id: projects.id });
+    if (!project) return false;
+    await storeStacks(tx, projectId, proposal.stacks);
+    await storeFrames(tx, projectId, proposal.frames);
+    await storeSeams(tx, projectId, proposal);
+    await storeQuestions(tx, projectId, proposal.questions);
+    await recordChange(tx, projectId, { revision, payload: summaryOf(proposal), atMs: nowMs });
+    await publish(tx, projectId, { type: "board.changed", revision }, nowMs);
+    return true;
+  });
+}
+
+/** Says in plain words why the board could not be worked out. */
+export async function recordSortFailure(access: ProjectAccess, sortError: string, nowMs: number): Promise<void> {
+  await writeTransaction(async (tx) => {
+    await tx.update(projects).set({ sortError }).where(eq(projects.id, access.projectId));
+    await publish(tx, access.projectId, { type: "sort.failed" }, nowMs);
+  });
+}
+
+/** Keeps a known stack's mark, share and who placed it: the computation knows nothing of them. */
+async function storeStacks(tx: Transaction, projectId: ProjectId, proposed: readonly ProposedStack[]): Promise<void> {
+  const ids = proposed.map(({ id }) => stackIdSchema.parse(id));
+  await tx.delete(stacks).where(and(eq(stacks.projectId, projectId), notInArray(stacks.id, ids)));
+  // Places are unique at every moment: all are freed before the new ones are taken.
+  await tx.update(stacks).set({ row: null, column: null }).where(eq(stacks.projectId, projectId));
+  const rows = proposed.map((stack) => toStackRow(projectId, stack));
+  for (const part of parts(rows)) {
+    await tx
+      .insert(stacks)
+      .values(part)
+      .onConflictDoUpdate({
+        target: stacks.id,
+        set: {
+          row: sql`excluded."row"`,
+          column: sql`excluded."column"`,
+          take: sql`excluded.take`,
+          isChosenTake: sql`excluded.is_chosen_take`,
+          referenceId: sql`excluded.reference_id`,
+          confidence: sql`excluded.confidence`,
+          reason: sql`excluded.reason`,
+          positionXPx: sql`excluded.position_x_px`,
+          positionYPx: sql`excluded.position_y_px`,
+          spotX: sql`excluded.spot_x`,
+          spotY: sql`excluded.spot_y`,
+        },
+        setWhere: eq(stacks.projectId, projectId),
+      });
+  }
+}
+
+function toStackRow(projectId: ProjectId, stack: ProposedStack): typeof stacks.$inferInsert {
+  return {
+    id: stackIdSchema.parse(stack.id),
+    projectId,
+    row: stack.row,
+    column: stack.column,
+    take: stack.take,
+    isChosenTake: stack.isChosenTake,
+    referenceId: stack.referenceId === null ? null : frameIdSchema.parse(stack.referenceId),
+    placedBy: "computation",
+    confidence: stack.confidence,
+    reason: stack.reason,
+    positionXPx: stack.position?.xPx ?? null,
+    positionYPx: stack.position?.yPx ?? null,
+    spotX: stack.spot.x,
+    spotY: stack.spot.y,
+  };
+}
+
+async function storeFrames(tx: Transaction, projectId: ProjectId, proposed: readonly ProposedFrame[]): Promise<void> {
+  for (const frame of proposed) {
+    await tx
+      .update(frames)
+      .set({
+        orderTaken: frame.orderTaken,
+        stackId: frame.stackId === null ? null : stackIdSchema.parse(frame.stackId),
+        setAside: frame.setAside,
+        relativeSharpness: frame.relativeSharpness,
+        shiftXPx: frame.shift?.xPx ?? null,
+        shiftYPx: frame.shift?.yPx ?? null,
+        pauseBeforeSeconds: frame.pauseBeforeSeconds,
+        confidence: frame.confidence,
+        reason: frame.reason,
+      })
+      .where(and(eq(frames.id, frameIdSchema.parse(frame.id)), eq(frames.projectId, projectId)));
+  }
+}
+
+async function storeSeams(tx: Transaction, projectId: ProjectId, proposal: Proposal): Promise<void> {
+  await tx.delete(seams).where(eq(seams.projectId, projectId));
+  const rows = proposal.seams.map(({ stackId, neighbourId, side, overlap }) => ({
+    projectId,
+    stackId: stackIdSchema.parse(stackId),
+    neighbourId: stackIdSchema.parse(neighbourId),
+    side,
+    overlap,
+  }));
+  for (const part of parts(rows)) await tx.insert(seams).values(part);
+}
+
+/** Open questions are those of this proposal; one asked before keeps its id, and what is settled stays settled. */
+async function storeQuestions(
+  tx: Transaction,
+  projectId: ProjectId,
+  proposed: readonly ProposedQuestion[],
+): Promise<void> {
+  const open = and(eq(questions.projectId, projectId), isNull(questions.settledAtMs));
+  const known = await tx.select({ id: questions.id, key: questions.key }).from(questions).where(open);
+  const keys = new Set(proposed.map(({ key }) => key));
+  const gone = known.filter(({ key }) => !keys.has(key)).map(({ id }) => id);
+  for (const part of parts(gone)) await tx.delete(questions).where(and(open, inArray(questions.id, [...part])));
+  const rows = proposed.map((question) => ({ id: newId(), projectId, ...question }));
+  for (const part of parts(rows)) {
+    await tx
+      .insert(questions)
+      .values(part)
+      .onConflictDoUpdate({
+        target: [questions.projectId, questions.key],
+        set: {
+          kind: sql`excluded.kind`,
+          message: sql`excluded.message`,
+          evidence: sql`excluded.evidence`,
+          frameIds: sql`excluded.frame_ids`,
+          stackIds: sql`excluded.stack_ids`,
+          tile: sql`excluded.tile`,
+          answers: sql`excluded.answers`,
+          severity: sql`excluded.severity`,
+        },
+        setWhere: isNull(questions.settledAtMs),
+      });
+  }
+}
+
+async function recordChange(
+  tx: Transaction,
+  projectId: ProjectId,
+  change: { revision: number; payload: Readonly<Record<string, unknown>>; atMs: number },
+): Promise<void> {
+  await tx.insert(changes).values({ id: newId(), projectId, userId: null, type: "sort", ...change });
+}
+
+function summaryOf(proposal: Proposal) {
+  return {
+    engineVersion: proposal.engineVersion,
+    frames: proposal.frames.length,
+    stacks: proposal.stacks.length,
+    questions: proposal.questions.length,
+  };
+}
+
+function parts<Row>(rows: readonly Row[]): Row[][] {
+  const count = Math.ceil(rows.length / ROWS_A_STATEMENT);
+  return Array.from({ length: count }, (_, i) => rows.slice(i * ROWS_A_STATEMENT, (i + 1) * ROWS_A_STATEMENT));
+}
+

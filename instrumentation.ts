@@ -3,4 +3,6 @@ export async function register(): Promise<void> {
   if (process.env.NEXT_RUNTIME !== "nodejs") return;
   const { trustForwarding } = await import("@/lib/auth/trust-forwarding");
   trustForwarding();
+  const { prepareStorage } = await import("@/lib/storage/paths");
+  await prepareStorage();
 }

@@ -1,7 +1,7 @@
 import "server-only";
-import { and, eq } from "drizzle-orm";
+import { and, eq, gt, isNull } from "drizzle-orm";
 import { database } from "@/db/client";
-import { users } from "@/db/schema/accounts";
+import { sessions, users } from "@/db/schema/accounts";
 import { members, projects } from "@/db/schema/projects";
 import { allows, type Right, type Role } from "@/lib/auth/roles";
 import { findSession } from "@/lib/auth/session";
@@ -67,7 +67,18 @@ export async function requireProject(
   return mint(projectId, user.id, member.role);
 }
 
-/** The same for the worker: a job has been asked for by somebody who had the right. */
+/** Whether a session that was let in to look would be let in now: for answers that stay open long after the gate. */
+export async function mayStillView(user: SignedInUser, projectId: ProjectId, nowMs: number): Promise<boolean> {
+  const [row] = await database()
+    .select({ role: members.role })
+    .from(sessions)
+    .innerJoin(users, eq(users.id, sessions.userId))
+    .innerJoin(members, and(eq(members.userId, users.id), eq(members.projectId, projectId)))
+    .where(and(eq(sessions.id, user.sessionId), gt(sessions.expiresAtMs, nowMs), isNull(users.disabledAtMs)));
+  return row !== undefined && allows(row.role, "view");
+}
+
+/** The gate for the worker: a job has been asked for by somebody who had the right. */
 export function accessForJob(job: { readonly projectId: ProjectId }): ProjectAccess {
   return mint(job.projectId, null, "editor");
 }

@@ -200,4 +200,3 @@ function parts<Row>(rows: readonly Row[]): Row[][] {
   const count = Math.ceil(rows.length / ROWS_A_STATEMENT);
   return Array.from({ length: count }, (_, i) => rows.slice(i * ROWS_A_STATEMENT, (i + 1) * ROWS_A_STATEMENT));
 }
-

@@ -4,7 +4,7 @@ import { JobTicket } from "@/components/shell/job-ticket";
 import { ProjectHeader } from "@/components/shell/project-header";
 import { SkipLink } from "@/components/shell/skip-link";
 import { openProject, openSession } from "@/lib/auth/page-gate";
-import { getProgress } from "@/lib/frames/progress";
+import { getProgress } from "@/lib/frames/reads";
 import { getProject } from "@/lib/projects/reads";
 
 type Params = Promise<{ projectId: string }>;

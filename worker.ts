@@ -1,0 +1,46 @@
+// The second process: analyses files, sorts projects, and mends what a killed process left behind.
+import { setTimeout as delay } from "node:timers/promises";
+import { environment } from "@/lib/env";
+import { pruneEvents } from "@/lib/events/publish";
+import { newId } from "@/lib/ids";
+import { createAnalysisPool } from "@/lib/imaging/analysis-pool";
+import { finishCompleteUploads } from "@/lib/intake/finish";
+import { createAnalyseFileHandler } from "@/lib/jobs/handlers/analyse-file";
+import { createSortProjectHandler } from "@/lib/jobs/handlers/sort-project";
+import { forgetWorkers } from "@/lib/jobs/queue";
+import { runJobs } from "@/lib/jobs/runner";
+import { sortFrames } from "@/lib/sorting/sort-frames";
+import { prepareStorage } from "@/lib/storage/paths";
+
+const UPKEEP_MS = 60_000;
+/** A worker that was not heard of for so long is dead. */
+const WORKER_DEAD_MS = 60 * 60 * 1000;
+
+const stopping = new AbortController();
+for (const name of ["SIGTERM", "SIGINT"] as const) process.on(name, () => stopping.abort());
+
+/** Finishes uploads that are complete but not recorded, and clears old rows, now and every minute. */
+async function keepUp(signal: AbortSignal): Promise<void> {
+  while (!signal.aborted) {
+    try {
+      const finished = await finishCompleteUploads();
+      if (finished > 0) console.log(`recorded ${finished} complete uploads that a stopped process had left`);
+      await pruneEvents(Date.now());
+      await forgetWorkers(Date.now() - WORKER_DEAD_MS);
+    } catch (error) {
+      console.error("upkeep failed; it is tried again in a minute", error);
+    }
+    await delay(UPKEEP_MS, undefined, { signal }).catch(() => undefined);
+  }
+}
+
+await prepareStorage();
+const concurrency = environment().workerConcurrency;
+const pool = createAnalysisPool({ size: concurrency });
+const upkeep = keepUp(stopping.signal);
+const handlers = [createAnalyseFileHandler(pool, concurrency), createSortProjectHandler(sortFrames)];
+await runJobs({ workerId: newId(), handlers, signal: stopping.signal });
+await pool.close();
+await upkeep;
+// Whatever still holds the process (a sorting that was given back) must not keep it.
+process.exit(0);

@@ -1,7 +1,7 @@
 import type { StackDraft } from "./draft";
 import { makeEdge, type Edge } from "./edges";
-import { labelStacks, type Component, type Label } from "./lattice";
-import { findSteps, type Steps } from "./lattice-steps";
+import { labelStacks, LARGEST_SAME_PLACE, type Component, type Label } from "./lattice";
+import { inSteps, proposeSteps, type Steps } from "./lattice-steps";
 import type { PairStore } from "./pair-store";
 
 /** Up to this many stacks all pairs are registered; beyond, neighbours in time and neighbours foretold. */
@@ -63,9 +63,52 @@ function readGraph(stacks: readonly StackDraft[], pairs: readonly IndexPair[], s
     return edge ? [edge] : [];
   });
   const all = [...edges, ...fixedEdges(stacks)].sort((p, q) => p.a - q.a || p.b - q.b);
-  const steps = findSteps(all, usualAspect(stacks));
-  return { edges: all, steps, components: labelStacks(stacks.length, all, steps) };
+  const graphs = proposeSteps(all, usualAspect(stacks)).map((steps): GridGraph => {
+    return { edges: all, steps, components: labelStacks(stacks.length, all, steps) };
+  });
+  const rated = graphs.map((graph) => ({ graph, rating: rateGraph(graph) }));
+  const best = rated.reduce((a, b) => (b.rating > a.rating + 1e-9 ? b : a));
+  return best.graph;
 }
+
+/** Two stacks on one place that do not show the same weigh against a lattice as much as a clear edge. Our own. */
+const CLASH_WEIGHT = 8;
+/** Most stacks follow each other by one step; each that does speaks for a lattice like a weak edge. Our own. */
+const SINGLE_STEP_WEIGHT = 4;
+
+/** How well a lattice explains edges, order and places: higher is better. */
+function rateGraph({ edges, steps, components }: GridGraph): number {
+  let rating = 0;
+  const labels = new Map(
+    components.flatMap((component, piece) =>
+      [...component].map(([index, label]) => [index, { ...label, piece }] as const),
+    ),
+  );
+  const samePlace = new Set<string>();
+  for (const edge of edges) {
+    const [a, b] = [labels.get(edge.a), labels.get(edge.b)];
+    if (edge.steps || !a || !b) continue;
+    const isSame = Math.hypot(edge.x, edge.y) < LARGEST_SAME_PLACE;
+    const { columns, rows, misfit } = isSame ? { columns: 0, rows: 0, misfit: 0 } : inSteps(edge, steps);
+    if (isSame) samePlace.add(`${edge.a} ${edge.b}`);
+    if (b.column - a.column !== columns || b.row - a.row !== rows) continue;
+    rating += edge.weight * Math.exp(-((misfit / RATED_MISFIT) ** 2));
+  }
+  const at = new Map<string, number>();
+  for (const [index, { column, row, piece }] of [...labels].sort(([a], [b]) => a - b)) {
+    const key = `${piece} ${column} ${row}`;
+    const other = at.get(key);
+    if (other !== undefined && !samePlace.has(`${other} ${index}`)) rating -= CLASH_WEIGHT;
+    at.set(key, index);
+    const before = labels.get(index - 1);
+    if (!before || before.piece !== piece) continue;
+    if (Math.abs(column - before.column) + Math.abs(row - before.row) === 1) rating += SINGLE_STEP_WEIGHT;
+  }
+  return rating;
+}
+
+/** Misfit in steps at which an edge speaks 1/e for a lattice. Our own. */
+const RATED_MISFIT = 0.3;
 
 function usualAspect(stacks: readonly StackDraft[]): number {
   const aspects = stacks.map(({ hub }) => hub.measurements.heightPx / hub.measurements.widthPx).sort((a, b) => a - b);

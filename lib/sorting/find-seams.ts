@@ -7,7 +7,7 @@ import type { Place } from "./number-places";
 import { solvePositions, type PositionEdge } from "./solve-positions";
 
 /** Edges further off whole steps than this do not shape the positions. Our own. */
-const LARGEST_MISFIT = 0.4;
+const LARGEST_MISFIT = 0.6;
 
 /** Edges that agree with the places, as wanted differences of positions in long sides. */
 export function agreeingEdges(graph: GridGraph, places: readonly Place[]): PositionEdge[] {

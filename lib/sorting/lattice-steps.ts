@@ -18,35 +18,51 @@ const LARGEST_REFINE_MISFIT = 0.35;
 /** Most grids overlap by about a third; assumed where no edge crosses lines. Source: common practice. */
 const USUAL_STEP = 2 / 3;
 
+/** Pairs of steps that are labelled and compared in full. */
+const MOST_PROPOSED = 6;
+/** Steps closer than this share of each other are one proposal. */
+const SAME_PROPOSAL = 0.1;
+
 /**
- * Finds the grid's steps from the edges: the pair of lengths of which the edges are small whole multiples.
- * Of two that explain the edges alike the longer wins, since every edge is also a multiple of half a step.
+ * Finds what the grid's steps may be from the edges: pairs of lengths of which the edges are small whole multiples.
  * @param aspect - height over width of a frame
+ * @returns one or more, the likeliest first: every edge is also a multiple of half a step, and where tiles overlap by
+ *   more than half the clearest edges may span two, so that only the whole grid can tell
  */
-export function findSteps(edges: readonly Edge[], aspect: number): Steps {
+export function proposeSteps(edges: readonly Edge[], aspect: number): Steps[] {
   const moving = edges.filter((edge) => !edge.steps && Math.hypot(edge.x, edge.y) >= LARGEST_SAME_PLACE);
   const usual = aspect <= 1 ? { x: USUAL_STEP, y: USUAL_STEP * aspect } : { x: USUAL_STEP / aspect, y: USUAL_STEP };
   const across = candidates(moving, (edge) => edge.x);
   const down = candidates(moving, (edge) => edge.y);
-  let best = { score: -1, x: usual.x, y: usual.y };
+  const tried: { x: number; y: number; score: number }[] = [];
   for (const x of [...across, null]) {
     for (const y of [...down, null]) {
-      const steps = { x: x ?? (y === null ? usual.x : y / (usual.y / usual.x)), y: y ?? 0 };
-      if (y === null) steps.y = steps.x * (usual.y / usual.x);
-      const score = moving.reduce((sum, edge) => sum + fitOf(edge, steps), 0);
-      if (score > best.score + 1e-9) best = { score, ...steps };
+      const steps = { x: x ?? (y ?? usual.y) * (usual.x / usual.y), y: y ?? (x ?? usual.x) * (usual.y / usual.x) };
+      tried.push({ ...steps, score: moving.reduce((sum, edge) => sum + fitOf(edge, steps), 0) });
     }
   }
-  return refine(moving, { right: { x: best.x, y: 0 }, down: { x: 0, y: best.y } });
+  tried.sort((p, q) => q.score - p.score);
+  const distinct: { x: number; y: number }[] = [];
+  for (const steps of tried) {
+    if (distinct.length >= MOST_PROPOSED) break;
+    if (!distinct.some((other) => isNear(other.x, steps.x) && isNear(other.y, steps.y))) distinct.push(steps);
+  }
+  return distinct.map(({ x, y }) => refine(moving, { right: { x, y: 0 }, down: { x: 0, y } }));
+}
+
+function isNear(a: number, b: number): boolean {
+  return Math.abs(Math.log(a / b)) < SAME_PROPOSAL;
 }
 
 function candidates(edges: readonly Edge[], lengthOf: (edge: Edge) => number): number[] {
   const sorted = [...edges].sort((a, b) => b.weight - a.weight);
   const found: number[] = [];
   for (const edge of sorted) {
-    const length = Math.abs(lengthOf(edge));
-    if (length < LARGEST_SAME_PLACE || found.some((other) => Math.abs(other - length) < SAME_STEP)) continue;
-    found.push(length);
+    // Where tiles overlap by more than half, the clearest edges may span two steps.
+    for (const length of [Math.abs(lengthOf(edge)), Math.abs(lengthOf(edge)) / 2]) {
+      if (length < LARGEST_SAME_PLACE || found.some((other) => Math.abs(other - length) < SAME_STEP)) continue;
+      found.push(length);
+    }
     if (found.length >= MOST_CANDIDATES) break;
   }
   return found;
@@ -112,11 +128,33 @@ function solveSteps({ cc, cr, rr, cx, cy, rx, ry }: Sums, before: Steps): Steps 
   return before;
 }
 
-/** An edge as whole steps, with what is left over, in steps. */
-export function inSteps(edge: Vector, { right, down }: Steps): { columns: number; rows: number; misfit: number } {
+export interface WholeSteps {
+  readonly columns: number;
+  readonly rows: number;
+  /** What is left over, in steps. */
+  readonly misfit: number;
+}
+
+/** Stacks that follow each other are usually neighbours: they are taken so if that fits only this much worse. Our own. */
+const NEIGHBOUR_ALLOWANCE = 0.3;
+const LARGEST_NEIGHBOUR_MISFIT = 0.6;
+
+/** An edge as whole steps. Edges between stacks shot one after the other lean towards a single step. */
+export function inSteps(edge: Pick<Edge, "a" | "b" | "x" | "y">, { right, down }: Steps): WholeSteps {
   const determinant = right.x * down.y - right.y * down.x;
   const across = (edge.x * down.y - edge.y * down.x) / determinant;
   const downward = (right.x * edge.y - right.y * edge.x) / determinant;
+  const nearest = wholeSteps(across, downward);
+  if (Math.abs(edge.b - edge.a) !== 1 || Math.abs(nearest.columns) + Math.abs(nearest.rows) === 1) return nearest;
+  const isAcross = Math.abs(across) >= Math.abs(downward);
+  const single = isAcross
+    ? { columns: Math.sign(across), rows: 0, misfit: Math.hypot(Math.abs(across) - 1, downward) }
+    : { columns: 0, rows: Math.sign(downward), misfit: Math.hypot(across, Math.abs(downward) - 1) };
+  const isNear = single.misfit <= Math.min(LARGEST_NEIGHBOUR_MISFIT, nearest.misfit + NEIGHBOUR_ALLOWANCE);
+  return isNear ? single : nearest;
+}
+
+function wholeSteps(across: number, downward: number): WholeSteps {
   // Adding 0 turns -0 into 0.
   const columns = Math.round(across) + 0;
   const rows = Math.round(downward) + 0;

@@ -80,9 +80,8 @@ export function BenchFrame(props: BenchFrameProps) {
 
 function placeText({ frame, isReference, isAsked }: BenchFrameProps): string {
   if (frame.stackId === null) return isAsked ? "under question" : "loose";
-  if (isReference) return "measured against";
-  if (frame.shift === null) return "shift not measured";
-  return isAsked ? `${distanceText(frame.shift)} away, asked` : `${distanceText(frame.shift)} away`;
+  if (isReference) return "\u00a0";
+  return frame.shift === null ? "distance unknown" : `${distanceText(frame.shift)} away`;
 }
 
 /** Paper in the crop's corner, so that no text lies on the picture. */

@@ -1,5 +1,6 @@
 "use client";
 
+import { X } from "lucide-react";
 import { useState, type ReactNode } from "react";
 import { BenchFrame } from "@/components/board/bench-frame";
 import { CompareDialog } from "@/components/board/compare-dialog";
@@ -44,7 +45,7 @@ export function Bench({ index, tile, widthPx, mouth, onClose }: BenchProps) {
   const crops = benchCrops(frames.length, widthPx - SHEET_PX);
   return (
     <Sheet label={`Frames of ${tile.name}`} mouth={mouth}>
-      <div className="flex flex-wrap items-center gap-x-5 gap-y-1">
+      <div className="flex flex-wrap items-center gap-x-4 gap-y-1">
         <h2 className="figures text-lg font-bold">{tile.name}</h2>
         <TakeChoice tile={tile} chosenId={stack.id} onChoose={setTakeId} />
         {stackFacts({ ...tile, stack, reference }, frames).map((fact) => (
@@ -62,8 +63,8 @@ export function Bench({ index, tile, widthPx, mouth, onClose }: BenchProps) {
             </Button>
           )}
           {onClose && (
-            <Button size="slim" tone="bare" onClick={onClose}>
-              Close
+            <Button size="slim" tone="bare" aria-label={`Close ${tile.name}`} onClick={onClose}>
+              <X aria-hidden size={18} />
             </Button>
           )}
         </span>
@@ -115,8 +116,8 @@ export function LooseBench({ index, widthPx, onClose }: LooseBenchProps) {
           <h2 className="text-lg font-bold">{countOf(index.loose.length, "loose frame")}</h2>
           <span className="text-sm text-quiet">in no stack, so in no tile and in no merge</span>
           {onClose && (
-            <Button size="slim" tone="bare" className="ml-auto" onClick={onClose}>
-              Close
+            <Button size="slim" tone="bare" className="ml-auto" aria-label="Close the loose frames" onClick={onClose}>
+              <X aria-hidden size={18} />
             </Button>
           )}
         </div>
@@ -154,7 +155,7 @@ function Sheet({ label, mouth, children }: { label: string; mouth: Mouth | null;
       {mouth && mouth.leftPx !== null && (
         <span
           aria-hidden
-          style={{ left: mouth.leftPx - 6, width: mouth.widthPx + 6, height: mouth.gapPx + 8 }}
+          style={{ left: mouth.leftPx - 6, width: mouth.widthPx + 6, height: mouth.gapPx + 10 }}
           className={classNames(
             "absolute border-x-3 border-petrol bg-paper",
             mouth.opens === "up" ? "bottom-full -mb-[3px]" : "top-full -mt-[3px]",

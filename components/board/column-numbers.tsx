@@ -1,6 +1,6 @@
 import { LOOSE } from "@/components/board/use-board-place";
 import { classNames } from "@/components/ui/class-names";
-import type { BoardLayout } from "@/lib/board/layout";
+import { isLabelled, type BoardLayout } from "@/lib/board/layout";
 import { countOf } from "@/lib/board/words";
 
 interface ColumnNumbersProps {
@@ -40,16 +40,23 @@ export function ColumnNumbers({ columns, layout, looseCount, chosen, onChoose }:
       </div>
       {Array.from({ length: columns }, (_, at) => (
         <span key={at} aria-hidden className="flex shrink-0 justify-center" style={{ width: layout.tileWidthPx }}>
-          <span
-            className={classNames(
-              "figures bg-paper text-sm leading-5 font-bold",
-              layout.size === "map" ? "px-0.5" : "px-1.5",
-            )}
-          >
-            {at + 1}
-          </span>
+          {isLabelled(at + 1, labelPx(columns), layout.tileWidthPx + layout.gapPx) && (
+            <span
+              className={classNames(
+                "figures bg-paper font-bold",
+                layout.size === "map" ? "px-0.5 text-[0.75rem] leading-4" : "px-1.5 text-sm leading-5",
+              )}
+            >
+              {at + 1}
+            </span>
+          )}
         </span>
       ))}
     </div>
   );
+}
+
+/** Room for the widest number and its padding, px. */
+function labelPx(columns: number): number {
+  return String(columns).length * 8 + 5;
 }

@@ -41,10 +41,10 @@ export function Docket({ index, question, at, onTurn, onShowTile }: DocketProps)
         )}
         {count > 1 && (
           <>
-            <Button size="slim" tone="bare" disabled={at === 0} onClick={() => onTurn(at - 1)}>
+            <Button size="slim" tone="bare" onClick={() => onTurn((at + count - 1) % count)}>
               Question before
             </Button>
-            <Button size="slim" tone="bare" disabled={at === count - 1} onClick={() => onTurn(at + 1)}>
+            <Button size="slim" tone="bare" onClick={() => onTurn((at + 1) % count)}>
               Question after
             </Button>
           </>

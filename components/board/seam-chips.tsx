@@ -37,7 +37,8 @@ function SeamChip({ mark, layout }: { readonly mark: SeamMark; readonly layout: 
     <span
       style={{ left, top }}
       className={classNames(
-        "figures pointer-events-none absolute z-20 -translate-x-1/2 -translate-y-1/2 border px-1 text-sm leading-5 font-semibold whitespace-nowrap",
+        "figures pointer-events-none absolute z-20 -translate-x-1/2 border px-1 text-sm leading-5 font-semibold whitespace-nowrap",
+        isSideways && "-translate-y-1/2",
         mark.isSmall ? "border-ochre bg-ochre-wash text-ochre-on" : "border-line bg-paper text-ink",
       )}
     >

@@ -36,7 +36,7 @@ export function Sheet({ index, chosen, onChoose, view, onShow, isWide }: SheetPr
   if (!isWide) return <SmallBoard index={index} chosen={chosen} onChoose={onChoose} docket={docketLine} />;
   return (
     <>
-      <div className="grid min-h-0 flex-1 grid-cols-[244px_minmax(0,1fr)] grid-rows-[minmax(0,1fr)]">
+      <div className="grid min-h-0 flex-1 grid-cols-[248px_minmax(0,1fr)] grid-rows-[minmax(0,1fr)]">
         <TimeRail index={index} chosen={chosen} onChoose={onChoose} />
         <div className="flex min-h-0 flex-col">
           {docketLine}

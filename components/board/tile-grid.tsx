@@ -48,11 +48,14 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked }: TileGri
     estimateSize: (at) => estimateLine(lines[at], rowHeightPx),
     getItemKey: (at) => lines[at]?.key ?? at,
     overscan: 2,
+    // The outline of a chosen tile in the first row needs room below the numbers.
+    paddingStart: 6,
   });
   useEffect(() => virtualizer.measure(), [virtualizer, rowHeightPx]);
   useShowChosen({ lines, chosen, scroller, scrollTo: (at) => virtualizer.scrollToIndex(at, { align: "auto" }) });
 
-  const tabStop = chosen !== null && index.tiles.has(chosen) ? chosen : (index.tiles.keys().next().value ?? null);
+  const items = virtualizer.getVirtualItems();
+  const tabStop = findTabStop({ index, chosen, lines: items.flatMap((item) => lines[item.index] ?? []) });
   const focusTile = (tile: BoardTile) => {
     virtualizer.scrollToIndex(
       lines.findIndex((line) => line.kind === "row" && line.row === tile.row),
@@ -90,7 +93,7 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked }: TileGri
         onChoose={onChoose}
       />
       <div className="relative" style={{ height: virtualizer.getTotalSize() }}>
-        {virtualizer.getVirtualItems().map((item) => {
+        {items.map((item) => {
           const line = lines[item.index];
           return line ? (
             <div
@@ -147,6 +150,17 @@ function Line({ line, widthPx, ...rest }: LineProps) {
   }
   if (line.kind === "row") return <TileRow row={line.row} {...rest} />;
   return <TileRow tiles={line.tiles} isFirst={line.isFirst} {...rest} />;
+}
+
+/** The chosen tile where it is drawn, else the first tile that is: one of the grid is always in the tab order. */
+function findTabStop(input: { index: BoardIndex; chosen: string | null; lines: readonly GridLine[] }): string | null {
+  const rows = new Set(input.lines.flatMap((line) => (line.kind === "row" ? [line.row] : [])));
+  const chosen = input.chosen === null ? undefined : input.index.tiles.get(input.chosen);
+  if (chosen && chosen.row !== null && rows.has(chosen.row)) return chosen.name;
+  for (const tile of input.index.tiles.values()) {
+    if (tile.row !== null && rows.has(tile.row)) return tile.name;
+  }
+  return null;
 }
 
 function estimateLine(line: GridLine | undefined, rowHeightPx: number): number {

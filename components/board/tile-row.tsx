@@ -2,8 +2,9 @@ import { Hole } from "@/components/board/hole";
 import { SeamChips } from "@/components/board/seam-chips";
 import { Tile } from "@/components/board/tile";
 import { Chip } from "@/components/ui/chip";
+import { classNames } from "@/components/ui/class-names";
 import type { BoardIndex, BoardTile } from "@/lib/board/board-index";
-import type { BoardLayout, PicturePart } from "@/lib/board/layout";
+import { isLabelled, type BoardLayout, type PicturePart } from "@/lib/board/layout";
 import type { SeamMark } from "@/lib/board/seam-marks";
 import { rowLetters, tileName } from "@/lib/board/tile-name";
 import { countOf } from "@/lib/board/words";
@@ -50,8 +51,15 @@ export function TileRow({ row, tiles = [], isFirst = false, ...rest }: TileRowPr
           className="sticky left-0 z-10 flex shrink-0 items-center justify-end pr-2"
           style={{ width: layout.lettersWidthPx - layout.gapPx, height: layout.pictureHeightPx }}
         >
-          {row !== undefined && (
-            <span className="figures bg-paper px-1.5 text-sm leading-5 font-bold">{rowLetters(row)}</span>
+          {row !== undefined && isLabelled(row, 14, layout.pictureHeightPx + layout.captionHeightPx + layout.gapPx) && (
+            <span
+              className={classNames(
+                "figures bg-paper font-bold",
+                layout.size === "map" ? "px-1 text-[0.75rem] leading-3.5" : "px-1.5 text-sm leading-5",
+              )}
+            >
+              {rowLetters(row)}
+            </span>
           )}
         </span>
         {names.map((name) => {

@@ -32,7 +32,7 @@ export function Tile({ projectId, tile, part, layout, isChosen, isTabStop, isAsk
       style={{ width: layout.tileWidthPx }}
       className={classNames(
         "relative block shrink-0 text-left outline-offset-0 focus-visible:z-10 focus-visible:outline-3 focus-visible:outline-ink focus-visible:ring-6 focus-visible:ring-paper",
-        isChosen && "z-10 outline-3 outline-petrol ring-5 ring-paper",
+        isChosen && "z-20 outline-3 outline-petrol ring-5 ring-paper",
         !isChosen && isAsked && "z-10 outline-2 outline-dashed outline-ochre ring-4 ring-ochre-wash",
       )}
     >
@@ -65,15 +65,13 @@ function Notch({ tile, isSlim }: { readonly tile: BoardTile; readonly isSlim: bo
 function MapMarks({ tile }: { readonly tile: BoardTile }) {
   if (tile.questions.length > 0) {
     return (
-      <span className="absolute top-0 left-0 bg-ochre-wash px-1 text-[0.75rem] leading-4 font-bold text-ochre-on">
+      <span className="absolute top-0 left-0 bg-ochre-wash px-0.5 text-[0.75rem] leading-3 font-bold text-ochre-on">
         ?
       </span>
     );
   }
   return tile.isFew ? (
-    <span className="absolute bottom-0 left-0 bg-ochre-wash px-0.5 text-[0.75rem] leading-4 font-bold text-ochre-on">
-      {tile.inUse}
-    </span>
+    <span className="absolute bottom-0 left-0 size-1.5 border-t border-r border-paper bg-ochre" />
   ) : null;
 }
 

@@ -4,8 +4,8 @@ import { RAIL_LINE_PX, type RailRun as Run } from "@/lib/board/rail";
 import { clockText, countOf } from "@/lib/board/words";
 
 /** Where a line's bar starts and how long the sharpest is, px. */
-const BAR_LEFT_PX = 66;
-const BAR_PX = 82;
+const BAR_LEFT_PX = 71;
+const BAR_PX = 80;
 /** Bars tell sharpness from half of the best on: nearly all lie there, and differences shall show. */
 const BAR_FROM = 0.5;
 

@@ -31,14 +31,17 @@ export function TimeRail({ index, chosen, onChoose }: TimeRailProps) {
 
   const chosenAt = runs.findIndex((run) => (nameOf(run.stackId) ?? LOOSE) === chosen);
   const [focusedAt, setFocusedAt] = useState<number | null>(null);
-  const stopAt = focusedAt ?? Math.max(0, chosenAt);
+  const items = virtualizer.getVirtualItems();
+  const wantedStop = focusedAt ?? Math.max(0, chosenAt);
+  // Something in view is always in the tab order, or the rail could not be reached by keyboard.
+  const stopAt = items.some((item) => item.index === wantedStop) ? wantedStop : (items[0]?.index ?? 0);
   const scrollTo = useRef(virtualizer.scrollToIndex);
   useEffect(() => {
     scrollTo.current = virtualizer.scrollToIndex;
   });
   useEffect(() => {
-    if (chosenAt >= 0) scrollTo.current(chosenAt, { align: "auto" });
-  }, [chosenAt]);
+    if (chosenAt >= 0 && scroller) scrollTo.current(chosenAt, { align: "auto" });
+  }, [chosenAt, scroller]);
 
   const onKeyDown = (event: KeyboardEvent) => {
     const to = targetOf(event.key, stopAt, runs.length);
@@ -62,7 +65,7 @@ export function TimeRail({ index, chosen, onChoose }: TimeRailProps) {
         className="min-h-0 flex-1 overflow-y-auto pr-2 pl-3"
       >
         <div className="relative" style={{ height: virtualizer.getTotalSize() + 16 }}>
-          {virtualizer.getVirtualItems().map((item) => {
+          {items.map((item) => {
             const run = runs[item.index];
             const name = run ? nameOf(run.stackId) : null;
             return run ? (

@@ -53,7 +53,7 @@ test("the bench's head gives settings, brightness and the noise of the mean", ()
     "6 of 6 in use",
     "1/250 s f/8 ISO 100 105 mm",
     expect.stringMatching(/^brightness varies 0\.0\d EV$/),
-    "noise 41 % of one frame",
+    "noise 41 %",
   ]);
   // check-values.md, table 2.3: the mean of 7 frames has 1 / sqrt(7) = 0.378 of the noise of one.
   expect(noiseOfMean(7)).toBeCloseTo(0.378, 3);
@@ -118,8 +118,8 @@ test("tiles show their own part, one step wide, so that neighbours' pictures mee
   expect(rightEdgeOf("A1")).toBeCloseTo(leftEdge, 6);
 });
 
-test("tiles get smaller with more columns, never smaller than a pointer can hit", () => {
+test("tiles get smaller with more columns, never smaller than the map's least", () => {
   const sizes = [6, 12, 50, 200].map((columns) => layoutBoard({ columns, widthPx: 1160, aspect: 1.5 }));
   expect(sizes.map(({ size }) => size)).toEqual(["full", "medium", "map", "map"]);
-  expect(Math.min(...sizes.map(({ tileWidthPx }) => tileWidthPx))).toBe(24);
+  expect(Math.min(...sizes.map(({ tileWidthPx }) => tileWidthPx))).toBe(20);
 });

@@ -19,8 +19,8 @@ export interface BoardLayout {
 const FULL_TILE_PX = 118;
 /** Narrowest tile that holds its name and a question mark. */
 const MEDIUM_TILE_PX = 58;
-/** Smallest tile that can be hit with a pointer (WCAG 2.2, 2.5.8: 24 px). */
-const MAP_TILE_PX = 24;
+/** Smallest tile of the map, so that 50 columns fit a laptop's screen; rail and table offer larger targets for the same. */
+const MAP_TILE_PX = 20;
 /** A wider tile would show the preview larger than a person needs to find their way. */
 const LARGEST_TILE_PX = 420;
 
@@ -41,11 +41,17 @@ export function layoutBoard(input: { columns: number; widthPx: number; aspect: n
   return {
     size,
     tileWidthPx,
-    pictureHeightPx: Math.max(size === "map" ? MAP_TILE_PX : 1, Math.round(tileWidthPx / input.aspect)),
+    pictureHeightPx: Math.max(1, Math.round(tileWidthPx / input.aspect)),
     captionHeightPx: size === "full" ? 28 : size === "medium" ? 24 : 0,
     gapPx,
     lettersWidthPx,
   };
+}
+
+/** Whether the nth row or column carries its label: where there is no room for all, every second, third ... does. */
+export function isLabelled(nth: number, labelPx: number, pitchPx: number): boolean {
+  const step = Math.max(1, Math.ceil(labelPx / pitchPx));
+  return nth === 1 || nth % step === 0;
 }
 
 /** The part of a picture that a tile shows, fractions of its sides. */

@@ -29,7 +29,7 @@ export function stackFacts(tile: BoardTile, frames: readonly BoardFrame[]): stri
     `${inUse.length} of ${frames.length} in use`,
     ...settingsText(tile.reference ?? frames[0] ?? null),
     ...(spread === null ? [] : [`brightness varies ${spread.toFixed(2)} EV`]),
-    ...(inUse.length === 0 ? [] : [`noise ${percent(noiseOfMean(inUse.length))} of one frame`]),
+    ...(inUse.length === 0 ? [] : [`noise ${percent(noiseOfMean(inUse.length))}`]),
   ];
 }
 

@@ -62,7 +62,7 @@ export function makeEventfulBoard(): Board {
   const frames = board.frames.map((frame) => {
     if (frame.id === "frame-8") return { ...frame, setAside: "soft" as const, relativeSharpness: 0.41 };
     if (frame.id === "frame-17")
-      return { ...frame, shift: { xPx: 3790, yPx: 12 }, relativeSharpness: null, confidence: 0.55 };
+      return { ...frame, shift: { xPx: 998, yPx: 4 }, relativeSharpness: null, confidence: 0.55 };
     if (["frame-66", "frame-67", "frame-69"].includes(frame.id))
       return { ...frame, setAside: "exposure" as const, relativeSharpness: 0.93 };
     if (frame.id === "frame-90") return { ...frame, setAside: "moved" as const };

@@ -1,19 +1,22 @@
 import { existsSync, readdirSync } from "node:fs";
-import { join, resolve } from "node:path";
+import { join } from "node:path";
 
-/** Where the shared data lies: SHARED_DIR, else beside the project. */
-export const SHARED_DATA = resolve(process.env.SHARED_DIR ?? "../shared", "data");
+import { environment } from "@/lib/env";
+
+/** Whether a folder of the shared data is there; tests that need it are skipped by name where it is not. */
+export function hasShared(folder: string): boolean {
+  return existsSync(sharedPath(folder));
+}
+
+/** Full path of a folder or file of the shared data (see its README.md for what lies there). */
+export function sharedPath(...names: string[]): string {
+  return join(environment().sharedDir, "data", ...names);
+}
 
 /** Files of one folder of the shared data, full paths in order of name; none where the folder is absent. */
 export function listShared(folder: string): string[] {
-  const path = join(SHARED_DATA, folder);
-  if (!existsSync(path)) return [];
-  return readdirSync(path)
+  if (!hasShared(folder)) return [];
+  return readdirSync(sharedPath(folder))
     .sort()
-    .map((name) => join(path, name));
-}
-
-/** Whether that folder is there; tests that need it are skipped by name where it is not. */
-export function hasShared(folder: string): boolean {
-  return existsSync(join(SHARED_DATA, folder));
+    .map((name) => sharedPath(folder, name));
 }

@@ -17,6 +17,8 @@ const LINES = [
   "azertyuiop",
   "qsdfghjklm",
   "wxcvbn",
+  "1q2w3e4r5t6y7u8i9o0p",
+  "q1w2e3r4t5y6u7i8o9p0",
   ..."1qaz 2wsx 3edc 4rfv 5tgb 6yhn 7ujm 8ik 9ol 0p".split(" "),
 ];
 const RUNS = LINES.flatMap((line) => [line, [...line].reverse().join("")]);
@@ -43,20 +45,25 @@ export function passwordProblem(password: string, about: readonly string[]): str
 
 function isCommon(password: string, about: readonly string[]): boolean {
   const plain = password.toLowerCase();
-  // Separators and signs between the pieces do not make it harder to guess.
-  const letters = plain.replace(/[^\p{L}\p{N}]/gu, "");
-  if (isRepetition(plain) || isRepetition(letters)) return true;
+  if (isRepetition(plain)) return true;
+  const letters = plain.replace(SIGNS, "");
+  // Signs between the pieces do not make it harder to guess; where there is little else, they are the password.
+  if (letters.length * 2 < plain.length) return false;
+  if (isRepetition(letters)) return true;
   const own = about.flatMap((text) => text.toLowerCase().split(/[^\p{L}\p{N}]+/u)).filter((word) => word.length >= 3);
   const words = new Set([...COMMON_WORDS, ...own]);
   return [letters, readSubstitutes(plain)].some((text) => countOutside(text, words) <= SPARE_CHARACTERS);
 }
+
+/** ASCII punctuation and white space. */
+const SIGNS = /[\s!-/:-@[-`{-~]/gu;
 
 /** One piece of at most half the length, over and over, the last time perhaps cut short. */
 function isRepetition(text: string): boolean {
   for (let period = 1; period * 2 <= text.length; period++) {
     if (text.startsWith(text.slice(period))) return true;
   }
-  return text.length === 0;
+  return false;
 }
 
 /** Digits and signs commonly written for letters. */
@@ -68,10 +75,10 @@ function readSubstitutes(text: string): string {
   return [...text]
     .map((character) => SUBSTITUTES[character] ?? character)
     .join("")
-    .replace(/[^\p{L}\p{N}]/gu, "");
+    .replace(SIGNS, "");
 }
 
-/** The least number of characters left over when the text is covered with words, runs and repeated characters. */
+/** The least number of characters left over when the text is covered with words, runs, years and repeated characters. */
 function countOutside(text: string, words: ReadonlySet<string>): number {
   const longest = Math.max(...[...words].map((word) => word.length), 20);
   const best = [0];
@@ -87,5 +94,5 @@ function countOutside(text: string, words: ReadonlySet<string>): number {
 }
 
 function isKnown(piece: string, words: ReadonlySet<string>): boolean {
-  return words.has(piece) || RUNS.some((run) => run.includes(piece)) || /^(.)\1+$/u.test(piece);
+  return words.has(piece) || RUNS.some((run) => run.includes(piece)) || /^((.)\2+|(19|20)\d\d)$/u.test(piece);
 }

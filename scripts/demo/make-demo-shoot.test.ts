@@ -1,0 +1,81 @@
+import { createHash } from "node:crypto";
+import { mkdtemp, readFile, rm } from "node:fs/promises";
+import { tmpdir } from "node:os";
+import path from "node:path";
+import exifr from "exifr";
+import { afterAll, beforeAll, expect, test } from "vitest";
+import { type DemoTruth, planDemo } from "./demo-plan";
+import { makeDemoShoot } from "./make-demo-shoot";
+
+let directory = "";
+let truth: DemoTruth;
+const steps: string[] = [];
+
+beforeAll(async () => {
+  directory = await mkdtemp(path.join(tmpdir(), "demo-"));
+  truth = await makeDemoShoot(directory, ({ step, done, total }) => steps.push(`${step} ${done}/${total}`));
+}, 300_000);
+afterAll(() => rm(directory, { recursive: true, force: true }));
+
+test("the demo has 108 frames over 17 of 18 tiles, 4 to 8 each, and one stray", () => {
+  expect(truth.frames).toHaveLength(108);
+  const counts = new Map<string, number>();
+  for (const { place } of truth.frames) {
+    if (place) counts.set(`${place.row}/${place.column}`, (counts.get(`${place.row}/${place.column}`) ?? 0) + 1);
+  }
+  expect(counts.size).toBe(17);
+  expect(counts.has(`${truth.hole.row}/${truth.hole.column}`)).toBe(false);
+  expect(Math.min(...counts.values())).toBe(4);
+  expect(Math.max(...counts.values())).toBe(8);
+  expect(truth.frames.filter(({ place }) => place === null)).toHaveLength(1);
+  expect(truth.frames.filter(({ softSigmaPx }) => softSigmaPx > 0).length).toBeGreaterThan(2);
+});
+
+test("its counter rolls over into the next folder", () => {
+  const names = truth.frames.map(({ file }) => file);
+  // DCF (CIPA DC-009): 0001 to 9999, then the next folder.
+  expect(names[names.indexOf("100HARB/HARB9999.JPG") + 1]).toBe("101HARB/HARB0001.JPG");
+  expect(new Set(names).size).toBe(108);
+});
+
+test("its frames are 1 to 2 s apart, its tiles 8 s and more", () => {
+  for (const [index, frame] of truth.frames.entries()) {
+    const before = truth.frames[index - 1];
+    if (!before) continue;
+    const pauseSeconds = (frame.localMs - before.localMs) / 1000;
+    const isSameTile =
+      before.place !== null &&
+      frame.place !== null &&
+      before.place.row === frame.place.row &&
+      before.place.column === frame.place.column;
+    if (isSameTile) expect(pauseSeconds).toBeLessThanOrEqual(2);
+    else expect(pauseSeconds).toBeGreaterThanOrEqual(8);
+  }
+});
+
+test("every file carries the time that the truth says", async () => {
+  for (const { file, localMs } of truth.frames.filter((_, index) => index % 20 === 0)) {
+    const tags = await exifr.parse(path.join(directory, file), { reviveValues: false });
+    const time = `${String(tags.DateTimeOriginal).replace(":", "-").replace(":", "-").replace(" ", "T")}.${tags.SubSecTimeOriginal}Z`;
+    expect(Math.abs(Date.parse(time) - localMs)).toBeLessThan(10);
+    expect(tags.OffsetTimeOriginal).toBe("+02:00");
+    expect([tags.ExifImageWidth, tags.ExifImageHeight]).toEqual([1500, 1000]);
+  }
+});
+
+test("no two files are the same, and progress ends with the last frame", async () => {
+  const hashes = await Promise.all(
+    truth.frames.map(async ({ file }) =>
+      createHash("sha256")
+        .update(await readFile(path.join(directory, file)))
+        .digest("hex"),
+    ),
+  );
+  expect(new Set(hashes).size).toBe(108);
+  expect(steps[steps.length - 1]).toBe("frames 108/108");
+});
+
+test("the same seed plans the same demo", () => {
+  expect(planDemo(1)).toEqual(truth);
+  expect(planDemo(2)).not.toEqual(truth);
+});

@@ -1,0 +1,79 @@
+import type { IntakeList } from "@/lib/frames/schema";
+import { HEAD_BYTES, hasPictureExtension, isHiddenName, isPictureFile } from "@/lib/intake/picture-files";
+import type { OutgoingFile } from "@/lib/intake/upload-queue";
+
+/** A file that was chosen or dropped and is not sent, and why. */
+export interface NotTaken {
+  readonly name: string;
+  readonly folder: string;
+  readonly reason: string;
+}
+
+export interface ChosenFiles {
+  readonly outgoing: readonly OutgoingFile[];
+  readonly notTaken: readonly NotTaken[];
+  /** In already, by name, folder and size: not sent twice. */
+  readonly alreadyIn: number;
+}
+
+/**
+ * Sorts what was dropped into what is sent, what is no picture, and what is in already; an upload of the same file
+ * that broke off goes on where it stood.
+ */
+export async function sortChosenFiles(files: readonly File[], known: IntakeList): Promise<ChosenFiles> {
+  const inAlready = new Set(known.files.map(({ name, folder, bytes }) => keyOf(name, folder ?? "", bytes)));
+  const unfinished = new Map(
+    known.uploads
+      .filter((upload) => upload.isMine)
+      .map((upload) => [keyOf(upload.name, upload.folder ?? "", upload.bytes), upload.url]),
+  );
+  const outgoing: OutgoingFile[] = [];
+  const notTaken: NotTaken[] = [];
+  let alreadyIn = 0;
+  for (const file of files) {
+    const folder = folderOf(file);
+    const reason = await refusal(file);
+    if (reason !== null) {
+      notTaken.push({ name: file.name, folder, reason });
+      continue;
+    }
+    const key = keyOf(file.name, folder, file.size);
+    if (inAlready.has(key)) {
+      alreadyIn += 1;
+      continue;
+    }
+    outgoing.push({
+      name: file.name,
+      folder,
+      lastModifiedMs: file.lastModified,
+      bytes: file.size,
+      content: file,
+      uploadUrl: unfinished.get(key) ?? null,
+    });
+  }
+  return { outgoing, notTaken, alreadyIn };
+}
+
+/** Folder of a chosen file, "/"-separated, relative to what was dropped; "" at the root. */
+export function folderOf(file: File): string {
+  const dropped = "relativePath" in file && typeof file.relativePath === "string" ? file.relativePath : "";
+  const path = file.webkitRelativePath || dropped;
+  const parts = path.split("/").filter((part) => part !== "" && part !== ".");
+  return parts.slice(0, -1).join("/");
+}
+
+async function refusal(file: File): Promise<string | null> {
+  if (isHiddenName(file.name)) return "hidden file";
+  if (hasPictureExtension(file.name)) return null;
+  const head = new Uint8Array(
+    await file
+      .slice(0, HEAD_BYTES)
+      .arrayBuffer()
+      .catch(() => new ArrayBuffer(0)),
+  );
+  return isPictureFile(file.name, head) ? null : "not a picture";
+}
+
+function keyOf(name: string, folder: string, bytes: number): string {
+  return JSON.stringify([name, folder, bytes]);
+}

@@ -50,6 +50,8 @@ export async function listIntakeFiles(access: ProjectAccess): Promise<IntakeFile
       name: files.name,
       folder: files.folder,
       bytes: files.bytes,
+      lastModifiedMs: files.lastModifiedMs,
+      sha256: files.sha256,
       state: files.state,
       reason: files.reason,
       isRaw: files.isRaw,

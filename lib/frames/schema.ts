@@ -19,6 +19,9 @@ export const intakeFileSchema = z.object({
   name: z.string(),
   folder: z.string().nullable(),
   bytes: z.number(),
+  lastModifiedMs: z.number().nullable(),
+  /** Of the stored file; null until the worker has read it. */
+  sha256: z.string().nullable(),
   /** received: waits for the worker. failed: `reason` says why. duplicate: same bytes as `duplicateOf`. */
   state: z.enum(FILE_STATES),
   /** Plain words: why it was refused, or what is to be known about it (a raw file alone); null: all is well. */

@@ -7,8 +7,8 @@ const NOTHING: IntakeList = { files: [], uploads: [], sortError: null };
 // First bytes of a JPEG: SOI and APP0 (ITU-T T.81, annex B).
 const JPEG = new Uint8Array([0xff, 0xd8, 0xff, 0xe0, 0, 16]);
 
-function fileAt(path: string, content: BlobPart = "x"): File {
-  const file = new File([content], path.split("/").at(-1) ?? "", { lastModified: 5 });
+function fileAt(path: string, content: BlobPart = "x", lastModified = 5): File {
+  const file = new File([content], path.split("/").at(-1) ?? "", { lastModified });
   Object.defineProperty(file, "relativePath", { value: path });
   return file;
 }
@@ -40,7 +40,7 @@ test("pictures are sent, others are listed as not taken with the reason", async 
   ]);
 });
 
-test("what is in already is not sent twice, what broke off goes on", async () => {
+test("what is in already is not sent twice unless it was changed since, what broke off goes on", async () => {
   const known: IntakeList = {
     ...NOTHING,
     files: [
@@ -49,6 +49,8 @@ test("what is in already is not sent twice, what broke off goes on", async () =>
         name: "a.jpg",
         folder: "shoot",
         bytes: 1,
+        lastModifiedMs: 5,
+        sha256: null,
         state: "analysed",
         reason: null,
         duplicateOf: null,
@@ -71,9 +73,13 @@ test("what is in already is not sent twice, what broke off goes on", async () =>
       },
     ],
   };
-  const chosen = await sortChosenFiles([fileAt("shoot/a.jpg"), fileAt("other/a.jpg"), fileAt("b.jpg")], known);
+  const chosen = await sortChosenFiles(
+    [fileAt("shoot/a.jpg"), fileAt("shoot/a.jpg", "x", 6), fileAt("other/a.jpg"), fileAt("b.jpg")],
+    known,
+  );
   expect(chosen.alreadyIn).toBe(1);
   expect(chosen.outgoing.map(({ folder, name, uploadUrl }) => [folder, name, uploadUrl])).toEqual([
+    ["shoot", "a.jpg", null],
     ["other", "a.jpg", null],
     ["", "b.jpg", "/api/uploads/upload-1"],
   ]);

@@ -12,7 +12,7 @@ export interface NotTaken {
 export interface ChosenFiles {
   readonly outgoing: readonly OutgoingFile[];
   readonly notTaken: readonly NotTaken[];
-  /** In already, by name, folder and size: not sent twice. */
+  /** In already, by name, folder, size and time of the last change: not sent twice. */
   readonly alreadyIn: number;
 }
 
@@ -21,11 +21,13 @@ export interface ChosenFiles {
  * that broke off goes on where it stood.
  */
 export async function sortChosenFiles(files: readonly File[], known: IntakeList): Promise<ChosenFiles> {
-  const inAlready = new Set(known.files.map(({ name, folder, bytes }) => keyOf(name, folder ?? "", bytes)));
+  const inAlready = new Set(
+    known.files.map((file) => keyOf(file.name, file.folder ?? "", file.bytes, file.lastModifiedMs)),
+  );
   const unfinished = new Map(
     known.uploads
       .filter((upload) => upload.isMine)
-      .map((upload) => [keyOf(upload.name, upload.folder ?? "", upload.bytes), upload.url]),
+      .map((upload) => [keyOf(upload.name, upload.folder ?? "", upload.bytes, upload.lastModifiedMs), upload.url]),
   );
   const outgoing: OutgoingFile[] = [];
   const notTaken: NotTaken[] = [];
@@ -37,7 +39,7 @@ export async function sortChosenFiles(files: readonly File[], known: IntakeList)
       notTaken.push({ name: file.name, folder, reason });
       continue;
     }
-    const key = keyOf(file.name, folder, file.size);
+    const key = keyOf(file.name, folder, file.size, file.lastModified);
     if (inAlready.has(key)) {
       alreadyIn += 1;
       continue;
@@ -74,6 +76,7 @@ async function refusal(file: File): Promise<string | null> {
   return isPictureFile(file.name, head) ? null : "not a picture";
 }
 
-function keyOf(name: string, folder: string, bytes: number): string {
-  return JSON.stringify([name, folder, bytes]);
+/** Uncompressed files of one camera are all of one size: without the time two shoots could be taken for one another. */
+export function keyOf(name: string, folder: string, bytes: number, lastModifiedMs: number | null): string {
+  return JSON.stringify([name, folder, bytes, lastModifiedMs]);
 }

@@ -1,5 +1,6 @@
 import type { Metadata } from "next";
 import type { ReactNode } from "react";
+import { UploadsStrip } from "@/components/intake/uploads-strip";
 import { JobTicket } from "@/components/shell/job-ticket";
 import { ProjectHeader } from "@/components/shell/project-header";
 import { SkipLink } from "@/components/shell/skip-link";
@@ -30,6 +31,7 @@ export default async function ProjectLayout({ params, children }: ProjectLayoutP
       <SkipLink />
       <ProjectHeader person={person} project={project} />
       <JobTicket projectId={projectId} progress={progress} status={{ tiles, openQuestions, rows, columns }} />
+      <UploadsStrip projectId={projectId} />
       <main id="content" tabIndex={-1} className="flex flex-1 flex-col outline-none">
         {children}
       </main>

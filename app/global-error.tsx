@@ -1,6 +1,5 @@
 "use client";
 
-import "@fontsource-variable/atkinson-hyperlegible-next/wght.css";
 import "./globals.css";
 import { UnexpectedFailure } from "@/components/shell/unexpected-failure";
 

@@ -1,5 +1,3 @@
-import "@fontsource-variable/atkinson-hyperlegible-mono/wght.css";
-import "@fontsource-variable/atkinson-hyperlegible-next/wght.css";
 import "./globals.css";
 import type { Metadata, Viewport } from "next";
 import { cookies } from "next/headers";

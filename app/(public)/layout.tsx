@@ -15,12 +15,12 @@ export default function PublicLayout({ children }: { readonly children: ReactNod
         <main id="content" tabIndex={-1} className="px-4 py-8 outline-none sm:px-10 lg:py-14">
           <div className="max-w-md max-lg:mx-auto">{children}</div>
         </main>
-        <div className="flex flex-col bg-well max-lg:hidden">
+        <aside aria-label="What Stackyard does" className="flex flex-col bg-well max-lg:hidden">
           <YardSheet className="m-auto w-full max-w-4xl p-8" />
           <p className="m-5 self-end bg-paper px-3 py-1.5 text-sm">
             Hundreds of frames, one very large picture: every frame in its stack, every stack in its place.
           </p>
-        </div>
+        </aside>
       </div>
     </div>
   );

@@ -1,8 +1,7 @@
 import Link from "next/link";
 import type { ProjectActions } from "@/components/projects/project-actions";
 import { ProjectMenu } from "@/components/projects/project-menu";
-import { Chip } from "@/components/ui/chip";
-import { countOf } from "@/lib/board/words";
+import { ProjectStubs } from "@/components/projects/project-stubs";
 import type { Role } from "@/lib/auth/roles";
 
 /** What the list shows of a project. */
@@ -13,6 +12,7 @@ export interface ListedProject {
   readonly frames: number;
   readonly tiles: number;
   readonly openQuestions: number;
+  readonly isSorting: boolean;
   readonly members: readonly { readonly userId: string; readonly name: string; readonly role: Role }[];
   readonly bytes: number;
   readonly isArchived: boolean;
@@ -24,68 +24,50 @@ interface ProjectListProps {
   readonly actions: ProjectActions;
 }
 
+/** One ticket a project: whose it is, and how far. */
 export function ProjectList({ projects, actions }: ProjectListProps) {
   return (
-    <ul className="divide-y divide-hairline border-y border-ink">
+    <ul className="space-y-4">
       {projects.map((project) => (
         <li key={project.id}>
-          <ProjectRow project={project} actions={actions} />
+          <ProjectTicket project={project} actions={actions} />
         </li>
       ))}
     </ul>
   );
 }
 
-interface ProjectRowProps {
+interface ProjectTicketProps {
   readonly project: ListedProject;
   readonly actions: ProjectActions;
 }
 
-function ProjectRow({ project, actions }: ProjectRowProps) {
+function ProjectTicket({ project, actions }: ProjectTicketProps) {
   return (
-    <article className="grid grid-cols-[1fr_auto] items-start gap-x-6 gap-y-2 py-4 md:grid-cols-[minmax(0,5fr)_minmax(0,4fr)_auto]">
-      <div className="min-w-0">
-        <h3 className="text-lg font-bold break-words">
-          <Link href={`/projects/${project.id}`} className="link">
-            {project.name}
-          </Link>
-        </h3>
-        <p className="text-sm text-quiet">{peopleLine(project)}</p>
-      </div>
-      <div className="max-md:col-span-2 max-md:row-start-2">
-        <Facts project={project} />
-      </div>
-      {project.role === "lead" && (
-        <div className="max-md:col-start-2 max-md:row-start-1">
-          <ProjectMenu project={project} actions={actions} />
+    <article className="border border-ink">
+      <div className="flex items-start gap-x-4 px-4 py-3">
+        <div className="min-w-0 flex-1">
+          <h3 className="text-lg leading-6 font-bold break-words">
+            <Link href={`/projects/${project.id}`} className="underline-offset-4 hover:underline">
+              {project.name}
+            </Link>
+          </h3>
+          <p className="mt-0.5 text-sm text-quiet">{peopleLine(project)}</p>
         </div>
-      )}
+        {project.role === "lead" && <ProjectMenu project={menuFacts(project)} actions={actions} />}
+      </div>
+      <ProjectStubs project={project} />
     </article>
   );
 }
 
-function Facts({ project }: { readonly project: ListedProject }) {
-  if (project.frames === 0) return <p className="text-quiet">No frames yet: bring in the folder first.</p>;
-  return (
-    <ul className="flex flex-wrap items-center gap-x-5 gap-y-1">
-      <li className="figures">{countOf(project.frames, "frame")}</li>
-      <li className="figures">{countOf(project.tiles, "tile")}</li>
-      <li>
-        {project.openQuestions > 0 ? (
-          <Chip tone="ochre">{countOf(project.openQuestions, "question")}</Chip>
-        ) : (
-          <span className="text-quiet">no questions open</span>
-        )}
-      </li>
-    </ul>
-  );
+function menuFacts({ id, name, bytes, frames, isArchived }: ListedProject) {
+  return { id, name, bytes, frames, isArchived };
 }
 
-/** "You are lead, with Jonas Treve and Ines Okell". */
+/** "You are lead · with Jonas Treve (editor) and Ines Okell (viewer)". */
 function peopleLine({ role, members, isDemo }: ListedProject): string {
-  const own = `${isDemo ? "Demo. " : ""}You are ${role}`;
-  const others = members.length - 1;
-  if (others < 1) return own;
-  const names = members.map((member) => `${member.name} (${member.role})`);
-  return `${own} · ${names.join(", ")}`;
+  const own = isDemo ? `Demo project · you are ${role}` : `You are ${role}`;
+  if (members.length < 2) return `${own}, alone`;
+  return `${own} · ${members.map((member) => `${member.name} (${member.role})`).join(", ")}`;
 }

@@ -16,7 +16,7 @@ export function GridSize({ projectId, initial }: GridSizeProps) {
   const { data } = useQuery({ ...projectStatusQuery(projectId), initialData: initial });
   if (data.rows === 0 || data.columns === 0) return null;
   return (
-    <p className="figures text-sm text-quiet">
+    <p className="figures text-sm text-quiet max-sm:order-last max-sm:w-full">
       {countOf(data.rows, "row")} × {countOf(data.columns, "column")}
     </p>
   );

@@ -3,6 +3,7 @@
 import { useQuery } from "@tanstack/react-query";
 import Link from "next/link";
 import { usePathname } from "next/navigation";
+import { Perforation } from "@/components/shell/perforation";
 import { ticketLines, type TicketLine } from "@/components/shell/ticket-lines";
 import { classNames } from "@/components/ui/class-names";
 import { progressQuery } from "@/lib/frames/queries";
@@ -108,17 +109,5 @@ function Stub({ href, number, title, line, isHere }: StubProps) {
         <span className={classNames("figures block text-sm", LINE_TONES[line.tone])}>{line.text}</span>
       </span>
     </Link>
-  );
-}
-
-/** A dotted line between two punched half circles; each half hides the part outside the ticket. */
-function Perforation() {
-  const hole = "absolute -left-[7px] size-[13px] rounded-full border border-ink bg-paper";
-  return (
-    <span aria-hidden className="pointer-events-none">
-      <span className={classNames(hole, "-top-[7px] [clip-path:inset(6px_0_0_0)]")} />
-      <span className="absolute inset-y-2 left-[-1px] border-l-2 border-dotted border-line" />
-      <span className={classNames(hole, "-bottom-[7px] [clip-path:inset(0_0_6px_0)]")} />
-    </span>
   );
 }

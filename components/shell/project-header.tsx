@@ -16,7 +16,7 @@ export function ProjectHeader({ person, project }: ProjectHeaderProps) {
   return (
     <SiteHeader person={person}>
       <div className="flex flex-wrap items-baseline gap-x-3 gap-y-1">
-        <p className="min-w-0 font-bold break-words">
+        <p className="min-w-0 font-bold break-words max-sm:flex-1">
           <Link href={`/projects/${project.id}`} className="underline-offset-4 hover:underline">
             {project.name}
           </Link>

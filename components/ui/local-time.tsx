@@ -10,7 +10,11 @@ export function LocalTime({ atMs }: { readonly atMs: number }) {
     () => false,
   );
   const moment = new Date(atMs);
-  return <time dateTime={moment.toISOString()}>{isBrowser ? inLocalZone(moment) : inUtc(moment)}</time>;
+  return (
+    <time dateTime={moment.toISOString()} className="whitespace-nowrap">
+      {isBrowser ? inLocalZone(moment) : inUtc(moment)}
+    </time>
+  );
 }
 
 function subscribeToNothing() {

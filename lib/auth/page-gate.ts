@@ -22,6 +22,18 @@ export const openProject = cache(
   },
 );
 
+/** The same for what only decorates a page, such as its title: null wherever the gate would refuse. */
+export async function findProjectAccess(projectId: string): Promise<ProjectAccess | null> {
+  const id = projectIdSchema.safeParse(projectId);
+  if (!id.success) return null;
+  try {
+    return await requireProject(id.data, "view");
+  } catch (error) {
+    if (error instanceof AppError) return null;
+    throw error;
+  }
+}
+
 /** Who is signed in; without a session leads to sign-in and back here. */
 export const openSession = cache((): Promise<SignedInUser> => answerPage(requireUser));
 

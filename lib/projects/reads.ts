@@ -24,6 +24,8 @@ export interface ProjectSummary {
   /** Places of the grid that hold a stack. */
   readonly tiles: number;
   readonly openQuestions: number;
+  /** Something came in that the board does not cover yet. */
+  readonly isSorting: boolean;
   readonly members: readonly Member[];
   /** Originals, bytes: what deleting the project frees at least. */
   readonly bytes: number;
@@ -55,6 +57,7 @@ const summaryColumns = {
   frames: sql<number>`(select count(*) from ${frames} ${ofProject})`,
   tiles: sql<number>`(select count(distinct "row" || ' ' || "column") from ${stacks} ${ofProject} and "row" is not null)`,
   openQuestions: sql<number>`(select count(*) from ${questions} ${ofProject} and settled_at_ms is null)`,
+  isSorting: sql<number>`${projects.contentVersion} <> ${projects.sortedVersion}`.mapWith(Boolean),
   bytes: sql<number>`(select coalesce(sum(bytes), 0) from ${files} ${ofProject})`,
 };
 

@@ -41,7 +41,10 @@ function Shelves({ projects }: { readonly projects: Awaited<ReturnType<typeof li
   const archived = projects.filter((project) => project.isArchived);
   return (
     <>
-      <section aria-label="Projects at work" className="mt-6">
+      <section aria-labelledby="work-heading" className="mt-6">
+        <h2 id="work-heading" className="sr-only">
+          At work
+        </h2>
         {open.length > 0 ? (
           <ProjectList projects={open} actions={ACTIONS} />
         ) : (

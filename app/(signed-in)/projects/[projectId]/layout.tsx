@@ -4,15 +4,18 @@ import { UploadsStrip } from "@/components/intake/uploads-strip";
 import { JobTicket } from "@/components/shell/job-ticket";
 import { ProjectHeader } from "@/components/shell/project-header";
 import { SkipLink } from "@/components/shell/skip-link";
-import { openProject, openSession } from "@/lib/auth/page-gate";
+import { findProjectAccess, openProject, openSession } from "@/lib/auth/page-gate";
 import { getProgress } from "@/lib/frames/reads";
 import { getProject } from "@/lib/projects/reads";
 
 type Params = Promise<{ projectId: string }>;
 
+// Only names. Who may not open the project learns nothing from the title either: whatever page was asked for, it says
+// what the 404 page says.
 export async function generateMetadata({ params }: { readonly params: Params }): Promise<Metadata> {
-  const project = await getProject(await openProject((await params).projectId, "view"));
-  return { title: { default: project.name, template: `%s · ${project.name} · Stackyard` } };
+  const name = await findProjectName((await params).projectId);
+  if (name === null) return { title: { default: "Nothing here", template: "Nothing here · Stackyard" } };
+  return { title: { default: name, template: `%s · ${name} · Stackyard` } };
 }
 
 interface ProjectLayoutProps {
@@ -37,4 +40,9 @@ export default async function ProjectLayout({ params, children }: ProjectLayoutP
       </main>
     </div>
   );
+}
+
+async function findProjectName(projectId: string): Promise<string | null> {
+  const access = await findProjectAccess(projectId);
+  return access && (await getProject(access)).name;
 }

@@ -13,27 +13,31 @@ export default async function SettingsPage({ params }: { readonly params: Promis
   return (
     <div className="w-full max-w-5xl px-4 py-8 sm:px-5">
       <h1 className="text-3xl font-bold">Settings</h1>
-      {!project.isArchived && <SettingsForm project={project} action={saveSettingsForm} />}
-      <section aria-labelledby="archive-heading" className="mt-10 max-w-prose border-t border-ink pt-5">
-        <h2 id="archive-heading" className="text-xl font-bold">
-          Archive
-        </h2>
-        <p className="mt-2">
-          {project.isArchived
-            ? "This project is in the archive: everyone in it can look, nobody can change anything."
-            : "In the archive everyone in the project can still look, and nobody can change anything. It can be taken out again."}
-        </p>
-        <ArchiveForm project={project} action={archiveProjectForm} />
-      </section>
-      <section aria-labelledby="delete-heading" className="mt-10 max-w-prose border-t border-ink pt-5">
-        <h2 id="delete-heading" className="text-xl font-bold">
-          Delete
-        </h2>
-        <p className="mt-2">
-          Takes the frames stored here, the board and everything decided on it away for everyone, for good.
-        </p>
-        <DeleteButton project={project} action={deleteProjectForm} />
-      </section>
+      <div className="mt-2 grid gap-x-16 md:grid-cols-2">
+        {!project.isArchived && <SettingsForm project={project} action={saveSettingsForm} />}
+        <div>
+          <section aria-labelledby="archive-heading" className="mt-8 max-w-prose border-t border-ink pt-5">
+            <h2 id="archive-heading" className="text-xl font-bold">
+              Archive
+            </h2>
+            <p className="mt-2">
+              {project.isArchived
+                ? "This project is in the archive: everyone in it can look, nobody can change anything."
+                : "In the archive everyone in the project can still look, and nobody can change anything. It can be taken out again."}
+            </p>
+            <ArchiveForm project={project} action={archiveProjectForm} />
+          </section>
+          <section aria-labelledby="delete-heading" className="mt-8 max-w-prose border-t border-ink pt-5">
+            <h2 id="delete-heading" className="text-xl font-bold">
+              Delete
+            </h2>
+            <p className="mt-2">
+              Takes the frames stored here, the board and everything decided on it away for everyone, for good.
+            </p>
+            <DeleteButton project={project} action={deleteProjectForm} />
+          </section>
+        </div>
+      </div>
     </div>
   );
 }

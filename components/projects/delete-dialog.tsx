@@ -31,7 +31,8 @@ export function DeleteDialog({ project, action, isOpen, onOpenChange }: DeleteDi
       description={
         <p>
           This deletes the {countOf(frames, "frame")} stored here with their previews, the board and everything decided
-          on it, for everyone in the project. It frees {bytesText(bytes)} or a little more and cannot be taken back.
+          on it, for everyone in the project. It frees {bytesText(bytes).replace(" ", "\u00a0")} or a little more and
+          cannot be taken back.
         </p>
       }
     >

@@ -28,7 +28,7 @@ export function ProjectStubs({ project }: ProjectStubsProps) {
           {index > 0 && <Perforation />}
           <Link
             href={`/projects/${project.id}/${view}`}
-            className="block h-full px-4 py-2 -outline-offset-4 hover:bg-tray max-sm:px-3"
+            className="block h-full px-4 py-2 -outline-offset-4 hover:bg-tray max-sm:px-2"
           >
             <span className="block text-sm font-semibold">{title}</span>
             <span className={classNames("figures block text-sm", isOchre ? "font-semibold text-ochre" : "text-quiet")}>

@@ -1,12 +1,23 @@
 import { Notice } from "@/components/ui/notice";
 
 interface FormMessageProps {
-  readonly state: { readonly status: "idle" | "done" | "refused"; readonly message: string | null };
+  readonly state: {
+    readonly status: "idle" | "done" | "refused";
+    readonly message: string | null;
+    readonly fields: Readonly<Record<string, string>>;
+  };
 }
 
-/** What became of a form as a whole, read out when it appears. */
+/** What became of a form, read out when it appears. What is wrong with single fields is seen beside them. */
 export function FormMessage({ state }: FormMessageProps) {
-  if (state.status === "idle") return null;
-  if (state.status === "done") return state.message && <Notice live="status" title={state.message} />;
-  return <Notice tone="madder" live="alert" title={state.message ?? "Something in this form is not right yet."} />;
+  const { status, message, fields } = state;
+  if (status === "done") return message && <Notice live="status" title={message} />;
+  if (message !== null) return <Notice tone="madder" live="alert" title={message} />;
+  const complaints = Object.values(fields);
+  if (complaints.length === 0) return null;
+  return (
+    <p role="alert" className="sr-only">
+      {complaints.join(" ")}
+    </p>
+  );
 }

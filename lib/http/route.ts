@@ -18,7 +18,8 @@ export function route<Params>(paramsSchema: z.ZodType<Params>, handler: Handler<
     const requestId = crypto.randomUUID();
     try {
       if (CHANGING.has(request.method)) checkOrigin(request.headers);
-      const params = paramsSchema.safeParse(await context.params);
+      // Next gives a route without parameters no object at all.
+      const params = paramsSchema.safeParse((await context.params) ?? {});
       if (!params.success) throw new AppError("not_found", "There is nothing at this address.");
       return await handler(request, params.data);
     } catch (error) {

@@ -1,6 +1,7 @@
 import type { StackDraft } from "./draft";
 import { makeEdge, type Edge } from "./edges";
-import { labelStacks, LARGEST_SAME_PLACE, type Component, type Label } from "./lattice";
+import { labelStacks, type Component, type Label } from "./lattice";
+import { LARGEST_SAME_PLACE } from "./vector";
 import { inSteps, proposeSteps, type Steps } from "./lattice-steps";
 import type { PairStore } from "./pair-store";
 

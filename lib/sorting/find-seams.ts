@@ -2,7 +2,7 @@ import type { GridGraph } from "./collect-edges";
 import type { StackDraft } from "./draft";
 import type { Edge } from "./edges";
 import { inSteps } from "./lattice-steps";
-import type { Vector } from "./lattice";
+import type { Vector } from "./vector";
 import type { Place } from "./number-places";
 import { solvePositions, type PositionEdge } from "./solve-positions";
 

@@ -1,5 +1,5 @@
 import type { Edge } from "./edges";
-import { LARGEST_SAME_PLACE, type Vector } from "./lattice";
+import { LARGEST_SAME_PLACE, type Vector } from "./vector";
 
 /** The two steps of the grid: from a tile to its right and to its lower neighbour, in long sides of a frame. */
 export interface Steps {

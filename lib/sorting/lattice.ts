@@ -1,10 +1,6 @@
 import type { Edge } from "./edges";
 import { inSteps, type Steps } from "./lattice-steps";
-
-export interface Vector {
-  readonly x: number;
-  readonly y: number;
-}
+import { LARGEST_SAME_PLACE } from "./vector";
 
 /** A place relative to an origin that has no meaning: differences within one component do. */
 export interface Label {
@@ -15,8 +11,6 @@ export interface Label {
 /** Stacks connected by edges, each with its label, in the order of the stacks' indices. */
 export type Component = ReadonlyMap<number, Label>;
 
-/** Shift in long sides under which two stacks show the same tile: as within a stack. Source: analysis.md, step 4. */
-export const LARGEST_SAME_PLACE = 0.07;
 /** Misfit in steps at which an edge's word counts 1/e. Our own. */
 const MISFIT_SCALE = 0.35;
 const MOST_SWEEPS = 12;

@@ -1,4 +1,4 @@
-import type { Vector } from "./lattice";
+import type { Vector } from "./vector";
 
 /** Wanted difference of two positions: position[b] - position[a]. */
 export interface PositionEdge {

@@ -6,6 +6,8 @@ import { usePathname } from "next/navigation";
 import { Perforation } from "@/components/shell/perforation";
 import { ticketLines, type TicketLine } from "@/components/shell/ticket-lines";
 import { classNames } from "@/components/ui/class-names";
+import { TicketProblem } from "@/components/shell/ticket-problem";
+import { useProjectEvents } from "@/lib/events/use-project-events";
 import { progressQuery } from "@/lib/frames/queries";
 import type { Progress } from "@/lib/frames/schema";
 import { projectStatusQuery } from "@/lib/projects/queries";
@@ -25,29 +27,33 @@ interface JobTicketProps {
   readonly status: ProjectStatus;
 }
 
-/** While frames come in or are sorted; otherwise a look now and then keeps an open page honest. */
-const BUSY_POLL_MS = 2_000;
-const IDLE_POLL_MS = 20_000;
+// Events say when something changed; asking now and then as well keeps an open page honest where they do not arrive.
+const BUSY_POLL_MS = 4_000;
+const IDLE_POLL_MS = 30_000;
 
 /** Navigation and status at once: one perforated stub a step, each with one line saying how far it is. */
 export function JobTicket({ projectId, progress, status }: JobTicketProps) {
   const pathname = usePathname();
-  const lines = useTicketLines({ projectId, progress, status });
+  const { lines, problem } = useTicketLines({ projectId, progress, status });
+  useProjectEvents(projectId);
   return (
-    <nav aria-label="Job ticket" className="border-y border-ink">
-      <ol className="grid grid-cols-3">
-        {STUBS.map(({ view, title }, index) => {
-          const href = `/projects/${projectId}/${view}`;
-          const isHere = pathname === href || pathname.startsWith(`${href}/`);
-          return (
-            <li key={view} className="relative min-w-0">
-              {index > 0 && <Perforation />}
-              <Stub href={href} number={index + 1} title={title} line={lines[view]} isHere={isHere} />
-            </li>
-          );
-        })}
-      </ol>
-    </nav>
+    <>
+      <nav aria-label="Job ticket" className="border-y border-ink">
+        <ol className="grid grid-cols-3">
+          {STUBS.map(({ view, title }, index) => {
+            const href = `/projects/${projectId}/${view}`;
+            const isHere = pathname === href || pathname.startsWith(`${href}/`);
+            return (
+              <li key={view} className="relative min-w-0">
+                {index > 0 && <Perforation />}
+                <Stub href={href} number={index + 1} title={title} line={lines[view]} isHere={isHere} />
+              </li>
+            );
+          })}
+        </ol>
+      </nav>
+      {problem && <TicketProblem problem={problem} path={pathname} />}
+    </>
   );
 }
 
@@ -62,7 +68,7 @@ function useTicketLines({ projectId, progress, status }: JobTicketProps) {
     initialData: status,
     refetchInterval: isBusy(intake.data) ? BUSY_POLL_MS : IDLE_POLL_MS,
   });
-  return ticketLines({ ...intake.data, ...project.data });
+  return { lines: ticketLines({ ...intake.data, ...project.data }), problem: intake.error ?? project.error };
 }
 
 function isBusy(progress: Progress | undefined): boolean {

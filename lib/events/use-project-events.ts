@@ -4,6 +4,7 @@ import { useEffect } from "react";
 import { boardKeys } from "@/lib/board/queries";
 import { eventsUrl, type ProjectEvent, projectEventSchema, STREAM_EVENT_NAME } from "@/lib/events/schema";
 import { frameKeys } from "@/lib/frames/queries";
+import { projectKeys } from "@/lib/projects/queries";
 
 /** Many files in a second must not be as many fetches, ms. */
 const GATHER_MS = 400;
@@ -70,6 +71,8 @@ function gatherInvalidations(client: QueryClient, projectId: string) {
     timer = null;
     if (keys.has("frames")) void client.invalidateQueries({ queryKey: frameKeys.all(projectId) });
     if (keys.has("board")) void client.invalidateQueries({ queryKey: boardKeys.all(projectId) });
+    // What the job ticket says follows from either.
+    void client.invalidateQueries({ queryKey: projectKeys.all(projectId) });
     keys.clear();
   };
   return {

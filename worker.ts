@@ -9,6 +9,7 @@ import { createAnalyseFileHandler } from "@/lib/jobs/handlers/analyse-file";
 import { createSortProjectHandler } from "@/lib/jobs/handlers/sort-project";
 import { forgetWorkers } from "@/lib/jobs/queue";
 import { runJobs } from "@/lib/jobs/runner";
+import { sweepRemovals } from "@/lib/projects/writes";
 import { sortFrames } from "@/lib/sorting/sort-frames";
 import { prepareStorage } from "@/lib/storage/paths";
 
@@ -19,12 +20,13 @@ const WORKER_DEAD_MS = 60 * 60 * 1000;
 const stopping = new AbortController();
 for (const name of ["SIGTERM", "SIGINT"] as const) process.on(name, () => stopping.abort());
 
-/** Finishes uploads that are complete but not recorded, and clears old rows, now and every minute. */
+/** Finishes uploads that are complete but not recorded, clears deleted projects' files and old rows, now and every minute. */
 async function keepUp(signal: AbortSignal): Promise<void> {
   while (!signal.aborted) {
     try {
       const finished = await finishCompleteUploads();
       if (finished > 0) console.log(`recorded ${finished} complete uploads that a stopped process had left`);
+      await sweepRemovals(Date.now());
       await pruneEvents(Date.now());
       await forgetWorkers(Date.now() - WORKER_DEAD_MS);
     } catch (error) {

@@ -83,12 +83,6 @@ export function accessForJob(job: { readonly projectId: ProjectId }): ProjectAcc
   return mint(job.projectId, null, "editor");
 }
 
-/** Whether an account is still enabled; for places that hold a user id already. */
-export async function isEnabled(userId: UserId): Promise<boolean> {
-  const [user] = await database().select({ disabledAtMs: users.disabledAtMs }).from(users).where(eq(users.id, userId));
-  return user !== undefined && user.disabledAtMs === null;
-}
-
 const REFUSALS: Record<Right, string> = {
   view: "You may not see this project.",
   edit: "As a viewer you may look and comment, not change. Ask the project's lead to make you an editor.",

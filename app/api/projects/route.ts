@@ -1,5 +1,6 @@
 import { z } from "zod";
 import { requireProject, requireUser } from "@/lib/auth/gate";
+import { answerJson } from "@/lib/http/answer";
 import { readJson } from "@/lib/http/read-json";
 import { route } from "@/lib/http/route";
 import { getProject, listProjects } from "@/lib/projects/reads";
@@ -10,7 +11,7 @@ const paramsSchema = z.unknown();
 
 export const GET = route(paramsSchema, async () => {
   const user = await requireUser();
-  return Response.json({ projects: await listProjects(user) });
+  return answerJson({ projects: await listProjects(user) });
 });
 
 export const POST = route(paramsSchema, async (request) => {

@@ -1,5 +1,6 @@
 import { z } from "zod";
 import { requireProject } from "@/lib/auth/gate";
+import { answerJson } from "@/lib/http/answer";
 import { readJson } from "@/lib/http/read-json";
 import { route } from "@/lib/http/route";
 import { projectIdSchema } from "@/lib/ids";
@@ -11,7 +12,7 @@ const paramsSchema = z.object({ projectId: projectIdSchema });
 
 export const GET = route(paramsSchema, async (_request, { projectId }) => {
   const access = await requireProject(projectId, "view");
-  return Response.json(await getProject(access));
+  return answerJson(await getProject(access));
 });
 
 export const PATCH = route(paramsSchema, async (request, { projectId }) => {
@@ -20,11 +21,11 @@ export const PATCH = route(paramsSchema, async (request, { projectId }) => {
   // In the archive nothing changes but that it is in the archive.
   const access = await requireProject(projectId, "manage", { evenArchived: change.isArchived !== undefined });
   await changeProject(access, change);
-  return Response.json(await getProject(access));
+  return answerJson(await getProject(access));
 });
 
 export const DELETE = route(paramsSchema, async (request, { projectId }) => {
   const access = await requireProject(projectId, "manage", { evenArchived: true });
   const { confirmation } = await readJson(request, projectRemovalSchema);
-  return Response.json(await deleteProject(access, confirmation));
+  return answerJson(await deleteProject(access, confirmation));
 });

@@ -48,37 +48,43 @@ export interface StreamOptions {
 /** A project's events as a server-sent event stream (HTML Standard, 9.2), until the page goes or may listen no longer. */
 export function streamEvents(access: ProjectAccess, options: StreamOptions): ReadableStream<Uint8Array> {
   const encoder = new TextEncoder();
-  let stop = () => {};
+  let isOver = false;
+  const releases: (() => void)[] = [];
+  const end = () => {
+    isOver = true;
+    for (const release of releases.splice(0)) release();
+  };
   return new ReadableStream({
     async start(controller) {
-      const send = (text: string) => controller.enqueue(encoder.encode(text));
+      const send = (text: string) => {
+        if (!isOver) controller.enqueue(encoder.encode(text));
+      };
+      const close = () => {
+        if (isOver) return;
+        end();
+        controller.close();
+      };
+      options.signal.addEventListener("abort", close, { once: true });
       const seen = { id: options.afterId ?? (await findNewestId()) };
       const tell: Listener = ({ id, projectId, event }) => {
         if (projectId !== access.projectId || id <= seen.id) return;
         seen.id = id;
         send(format(id, event));
       };
-      const unsubscribe = await subscribe(tell);
+      releases.push(await subscribe(tell));
       const keepAlive = setInterval(() => {
         send(": still here\n\n");
-        void options.mayListen().then(
-          (may) => may || stop(),
-          () => stop(),
-        );
+        void options.mayListen().then((may) => may || close(), close);
       }, KEEP_ALIVE_MS);
-      stop = () => {
-        stop = () => {};
-        unsubscribe();
-        clearInterval(keepAlive);
-        controller.close();
-      };
-      options.signal.addEventListener("abort", () => stop(), { once: true });
-      if (options.signal.aborted) return stop();
+      releases.push(() => clearInterval(keepAlive));
+      if (options.signal.aborted) close();
+      // The page may have gone while this waited for the database: `cancel` found nothing to release yet.
+      if (isOver) return end();
       // The id goes out at once: a page whose connection breaks before the first event resumes from here.
       send(`id: ${seen.id}\n: open\n\n`);
       if (options.afterId !== null) await sendBacklog(access.projectId, options.afterId, tell);
     },
-    cancel: () => stop(),
+    cancel: end,
   });
 }
 

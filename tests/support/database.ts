@@ -27,7 +27,10 @@ export function useDatabase(): string {
   beforeEach(async () => {
     await closeDatabase();
     mkdirSync(storageDir, { recursive: true });
-    for (const name of readdirSync(storageDir)) rmSync(path.join(storageDir, name), { recursive: true });
+    // Folders stay: the upload store makes its own in the background and must not meet their going.
+    for (const entry of readdirSync(storageDir, { recursive: true, withFileTypes: true })) {
+      if (!entry.isDirectory()) rmSync(path.join(entry.parentPath, entry.name));
+    }
     copyFileSync(base, path.join(storageDir, "stackyard.db"));
   });
   afterAll(async () => {

@@ -39,6 +39,15 @@ describe("a pool of children that misbehave", () => {
     expect(results[1]).toMatchObject({ reason: { name: "PictureError", code } });
   });
 
+  test("a picture whose child is killed from outside is read by another", async () => {
+    const { analyse } = bind(open(1));
+    const { sha256: pid } = await analyse("first");
+    const slow = analyse("slow");
+    setTimeout(() => process.kill(Number(pid), "SIGKILL"), 200);
+    const { sha256: other } = await slow;
+    expect(other).not.toBe(pid);
+  });
+
   test("a picture that hangs is stopped after its time and the next one read", async () => {
     const { analyse } = bind(open(1, 1));
     const results = await Promise.allSettled([analyse("hang"), analyse("after")]);

@@ -10,6 +10,11 @@ import { PictureError, REASONS } from "@/lib/imaging/picture-error";
 const LONGEST_ANALYSIS_SECONDS = 120;
 /** A child that has not loaded by then never will: a broken installation, not a picture. */
 const LONGEST_START_SECONDS = 60;
+/**
+ * Children that one picture may take with it. A second one, since the system may have ended the first for want of
+ * memory or a person by hand, and the picture must not be called damaged for that.
+ */
+const CRASHES_ALLOWED = 2;
 /** JavaScript's own memory in a child; pixels lie outside it. MiB. */
 const CHILD_HEAP_MIB = 256;
 
@@ -42,6 +47,7 @@ interface Job {
   readonly reject: (error: Error) => void;
   readonly signal: AbortSignal | undefined;
   readonly onAbort: () => void;
+  crashes: number;
 }
 
 interface Member {
@@ -53,7 +59,7 @@ interface Member {
 
 /**
  * A fixed number of child processes that read pictures, one each at a time. A child that crashes, stalls or runs out
- * of memory fails its own picture only and is replaced; children end when this process does.
+ * of memory fails its own picture only (a crash at the second try) and is replaced; children end when this process does.
  */
 export function createAnalysisPool(options: AnalysisPoolOptions): AnalysisPool {
   return new ChildPool(options);
@@ -78,7 +84,14 @@ class ChildPool implements AnalysisPool {
   analyse(task: PictureTask, signal?: AbortSignal): Promise<AnalysedPicture> {
     return new Promise((fulfil, reject) => {
       if (this.isClosed || signal?.aborted) return reject(abortError());
-      const job: Job = { task: absolute(task), resolve: fulfil, reject, signal, onAbort: () => this.abort(job) };
+      const job: Job = {
+        task: absolute(task),
+        resolve: fulfil,
+        reject,
+        signal,
+        onAbort: () => this.abort(job),
+        crashes: 0,
+      };
       signal?.addEventListener("abort", job.onAbort, { once: true });
       this.waiting.push(job);
       this.next();
@@ -150,9 +163,15 @@ class ChildPool implements AnalysisPool {
     if (!this.members.delete(member)) return;
     const { job } = member;
     member.job = null;
-    if (job) settle(job, () => job.reject(new PictureError("crashed", REASONS.crashed)));
+    if (job) this.recover(job);
     if (!member.isReady) this.countFailedStart();
     this.next();
+  }
+
+  private recover(job: Job): void {
+    job.crashes += 1;
+    if (job.crashes < CRASHES_ALLOWED) this.waiting.unshift(job);
+    else settle(job, () => job.reject(new PictureError("crashed", REASONS.crashed)));
   }
 
   private countFailedStart(): void {

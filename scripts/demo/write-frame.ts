@@ -32,7 +32,7 @@ export interface FrameFile {
   readonly modifiedMs: number;
 }
 
-const JPEG_QUALITY = 90;
+const DEFAULT_QUALITY = 90;
 
 const twoDigits = (value: number) => String(value).padStart(2, "0");
 
@@ -72,13 +72,13 @@ function exifTags(exif: FrameExif): { IFD0: Record<string, string>; IFD2: Record
 export async function writeFrame(
   directory: string,
   frame: FrameFile,
-  picture: { pixels: Buffer; size: FrameSize },
+  picture: { pixels: Buffer; size: FrameSize; quality?: number },
 ): Promise<Buffer> {
   const { widthPx, heightPx } = picture.size;
   let image = sharp(picture.pixels, { raw: { width: widthPx, height: heightPx, channels: 3 } });
   if (frame.exif) image = image.withExif(exifTags(frame.exif));
   if (frame.orientation !== 1) image = image.withMetadata({ orientation: frame.orientation });
-  const bytes = await image.jpeg({ quality: JPEG_QUALITY }).toBuffer();
+  const bytes = await image.jpeg({ quality: picture.quality ?? DEFAULT_QUALITY }).toBuffer();
   await writeFileWithTime(directory, frame, bytes);
   return bytes;
 }

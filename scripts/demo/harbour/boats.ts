@@ -122,7 +122,20 @@ function drawHull(
     "#c8b894",
     3.2,
   );
-  for (let streak = 0; streak < 9; streak++) {
+  const shading = drawing.verticalGradient("hullShade", [
+    [0, "#fff8e8", 0.2],
+    [0.45, "#808080", 0],
+    [1, "#0c0e14", 0.46],
+  ]);
+  drawing.path(side, { fill: shading, opacity: 0.99 });
+  for (let plank = 0.42; plank < 0.95; plank += 0.14) {
+    drawing.curve(
+      `M${-half * 0.95} ${deck + height * plank}Q${half * 0.2} ${deck + height * (plank + 0.16)} ${half * 1.0} ${deck + height * (plank - 0.24)}`,
+      css(shade(colour, 0.72)),
+      0.9,
+    );
+  }
+  for (let streak = 0; streak < 14; streak++) {
     const x = random.between(-half * 0.8, half * 0.8);
     drawing.rect(x, deck + height * 0.5, random.between(1.5, 4), random.between(0.15, 0.4) * height, {
       fill: "#6a4a30",

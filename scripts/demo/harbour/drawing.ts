@@ -16,6 +16,8 @@ export const MATERIALS = {
   paving: 10,
   grass: 11,
   slate: 12,
+  roofTileFar: 13,
+  rubbleFar: 14,
 } as const;
 export type Material = keyof typeof MATERIALS;
 
@@ -36,6 +38,7 @@ export class Drawing {
   private readonly colours: string[] = [];
   private readonly materials: string[] = [];
   private readonly gradients: string[] = [];
+  private readonly gradientIds = new Set<string>();
 
   constructor(readonly size: FrameSize) {}
 
@@ -80,7 +83,9 @@ export class Drawing {
     const inner = stops
       .map(([at, colour, opacity = 1]) => `<stop offset="${at}" stop-color="${colour}" stop-opacity="${opacity}"/>`)
       .join("");
-    this.gradients.push(`<linearGradient id="${id}" x1="0" y1="0" x2="0" y2="1">${inner}</linearGradient>`);
+    if (!this.gradientIds.has(id))
+      this.gradients.push(`<linearGradient id="${id}" x1="0" y1="0" x2="0" y2="1">${inner}</linearGradient>`);
+    this.gradientIds.add(id);
     return `url(#${id})`;
   }
 

@@ -133,7 +133,7 @@ function drawShop(drawing: Drawing, house: House, random: SeededRandom): void {
     }
     if (i === door) drawing.rect(x + pane - 24, base - 56, 3, 14, { fill: "#d8c48a" });
   }
-  if (random.chance(0.75)) drawAwning(drawing, from - 6, base - 122, span + 12, random);
+  if (random.chance(0.55)) drawAwning(drawing, from - 6, base - 122, span + 12, random);
 }
 
 function drawAwning(drawing: Drawing, x: number, y: number, width: number, random: SeededRandom): void {

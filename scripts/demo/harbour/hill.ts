@@ -100,41 +100,57 @@ export function drawHill(drawing: Drawing, seed: number): void {
     const y = top + 8 + (STREET_Y - 230 - top) * random.next();
     const depth = Math.max(0, Math.min(1, (STREET_Y - 300 - y) / 520));
     const treeSeed = mixSeeds(seed, 206, i);
-    things.push({ x, y: y + 34, draw: () => drawTree(drawing, { x, base: y + 34, depth }, makeRandom(treeSeed)) });
+    things.push({ x, y: y + 34, draw: () => drawHillTree(drawing, { x, base: y + 34, depth }, treeSeed) });
   }
   things.sort((a, b) => a.y - b.y);
   for (const thing of things) thing.draw();
 }
 
-/** A crown built of lit and shaded leaf masses; its fine structure comes from the foliage texture. */
-export function drawTree(drawing: Drawing, at: { x: number; base: number; depth: number }, random: SeededRandom): void {
-  const scale = 0.95 - 0.5 * at.depth;
-  const haze = 0.06 + 0.34 * at.depth;
-  const height = random.between(52, 104) * scale;
-  const base = random.pick<Colour>([
-    [70, 90, 50],
-    [84, 100, 56],
-    [58, 78, 50],
-    [98, 104, 62],
-    [66, 84, 66],
-  ]);
-  const leaf = (factor: number) => css(blend(shade(base, factor), HAZE, haze));
-  const isSlim = random.chance(0.16);
-  const width = height * (isSlim ? 0.26 : random.between(0.7, 1.05));
-  drawing.rect(at.x - 2 * scale, at.base - height * 0.4, 4 * scale, height * 0.4, {
-    fill: css(blend([74, 60, 48], HAZE, haze)),
+function drawHillTree(drawing: Drawing, at: { x: number; base: number; depth: number }, seed: number): void {
+  const random = makeRandom(seed);
+  const heightPx = random.between(46, 100) * (0.95 - 0.5 * at.depth);
+  drawTree(drawing, { x: at.x, base: at.base, heightPx, haze: 0.04 + 0.3 * at.depth }, random);
+}
+
+/** How a tree stands in the scene. */
+interface TreePlace {
+  readonly x: number;
+  readonly base: number;
+  readonly heightPx: number;
+  /** 0 near to 1 lost in haze. */
+  readonly haze: number;
+}
+
+const LEAVES: readonly Colour[] = [
+  [92, 108, 62],
+  [106, 118, 68],
+  [78, 98, 62],
+  [118, 118, 74],
+  [84, 102, 78],
+];
+
+/** A crown built of lit and shaded leaf masses, from the far ones to the near; leaves come from the foliage texture. */
+export function drawTree(drawing: Drawing, at: TreePlace, random: SeededRandom): void {
+  const { x, base, heightPx: height, haze } = at;
+  const colour = random.pick(LEAVES);
+  const leaf = (factor: number) => css(blend(shade(colour, factor), HAZE, haze));
+  const isSlim = random.chance(0.14);
+  const width = height * (isSlim ? 0.3 : random.between(0.72, 1));
+  const trunk = Math.max(2, height * 0.05);
+  drawing.rect(x - trunk / 2, base - height * 0.45, trunk, height * 0.45, {
+    fill: css(blend([74, 62, 50], HAZE, haze)),
+    material: "timber",
   });
-  drawing.ellipse(at.x + width * 0.1, at.base - height * 0.52, width * 0.5, height * 0.46, {
-    fill: leaf(0.66),
-    material: "foliage",
-  });
-  for (let mass = 0; mass < 9; mass++) {
+  const masses = Math.round(14 + height * 0.22);
+  for (let mass = 0; mass < masses; mass++) {
     const angle = random.between(0, 2 * Math.PI);
-    const reach = random.next() ** 0.5;
-    const x = at.x + Math.cos(angle) * reach * width * 0.4;
-    const y = at.base - height * 0.55 + Math.sin(angle) * reach * height * 0.36;
-    const light = 0.92 - (0.34 * (y - (at.base - height))) / height + (0.22 * (at.x - x)) / width;
-    drawing.ellipse(x, y, width * random.between(0.13, 0.24), height * random.between(0.1, 0.17), {
+    const reach = random.next() ** 0.6;
+    const dx = Math.cos(angle) * reach * 0.44;
+    const dy = Math.sin(angle) * reach * 0.36;
+    // Light from the upper left; what is drawn first lies behind and in shade.
+    const light = 0.62 + (0.34 * mass) / masses - 0.3 * dy - 0.26 * dx;
+    const size = random.between(0.07, 0.15) * (0.75 + 0.4 * (1 - mass / masses));
+    drawing.ellipse(x + dx * width, base - height * 0.6 + dy * height, width * size * 1.3, height * size, {
       fill: leaf(light),
       material: "foliage",
     });
@@ -144,7 +160,7 @@ export function drawTree(drawing: Drawing, at: { x: number; base: number; depth:
 /** A church above the roofs, the harbour's landmark. */
 export function drawChurch(drawing: Drawing, x: number, base: number): void {
   const stone = (factor: number) => css(blend(shade([188, 178, 160], factor), HAZE, 0.16));
-  drawing.rect(x + 56, base - 150, 250, 150, { fill: stone(1), material: "rubble" });
+  drawing.rect(x + 56, base - 150, 250, 150, { fill: stone(1), material: "rubbleFar" });
   drawing.polygon(
     [
       [x + 40, base - 146],
@@ -160,7 +176,7 @@ export function drawChurch(drawing: Drawing, x: number, base: number): void {
       fill: "#434c54",
     });
   }
-  drawing.rect(x - 42, base - 372, 98, 372, { fill: stone(1.04), material: "rubble" });
+  drawing.rect(x - 42, base - 372, 98, 372, { fill: stone(1.04), material: "rubbleFar" });
   drawing.rect(x + 28, base - 372, 28, 372, { fill: "#1c2028", opacity: 0.22 });
   for (const y of [base - 372, base - 250, base - 120])
     drawing.rect(x - 46, y - 5, 106, 9, { fill: stone(0.86), material: "plaster" });

@@ -35,11 +35,12 @@ const WALLS: readonly (readonly [Colour, Material])[] = [
   [[186, 150, 132], "plaster"],
 ];
 const ROOFS: readonly Colour[] = [
-  [158, 84, 58],
-  [146, 78, 60],
-  [172, 98, 66],
-  [92, 94, 102],
-  [134, 76, 58],
+  [146, 92, 70],
+  [134, 84, 68],
+  [158, 106, 80],
+  [94, 96, 102],
+  [124, 84, 68],
+  [108, 104, 100],
 ];
 const SHUTTERS: readonly Colour[] = [
   [62, 92, 96],
@@ -109,15 +110,21 @@ export function drawFrontHouse(drawing: Drawing, house: House): void {
 /** Damp at the foot, streaks below the eaves, and the shade that the neighbour on the sunny side throws. */
 function drawWeather(drawing: Drawing, house: House, random: SeededRandom): void {
   const { left, width, base, eaves } = house;
+  const shading = drawing.verticalGradient(`wall${Math.round(left)}`, [
+    [0, "#fff4dc", 0.1],
+    [0.5, "#808080", 0],
+    [1, "#14161c", 0.24],
+  ]);
+  drawing.rect(left, eaves, width, base - eaves, { fill: shading, opacity: 0.99 });
   drawing.rect(left, eaves, width, 26, { fill: "#181a24", opacity: 0.34 });
   drawing.rect(left, eaves + 26, width, 10, { fill: "#181a24", opacity: 0.14 });
   drawing.rect(left, base - 46, width, 46, { fill: "#2c2a28", opacity: 0.14 });
   drawing.rect(left, base - 18, width, 18, { fill: "#2c2a28", opacity: 0.22 });
   drawing.rect(left, eaves, random.between(4, 22), base - eaves, { fill: "#20222c", opacity: 0.2 });
-  for (let streak = 0; streak < 7; streak++) {
+  for (let streak = 0; streak < 16; streak++) {
     const x = left + random.between(6, width - 14);
     const length = random.between(40, 190);
-    drawing.rect(x, eaves + 20, random.between(2, 9), length, { fill: "#3a3630", opacity: random.between(0.05, 0.12) });
+    drawing.rect(x, eaves + 20, random.between(2, 9), length, { fill: "#3a3630", opacity: random.between(0.03, 0.13) });
   }
 }
 

@@ -66,7 +66,7 @@ export function drawQuayLife(drawing: Drawing, seed: number): void {
   const random = makeRandom(mixSeeds(seed, 302));
   for (let x = 180; x < widthPx; x += random.between(430, 620)) drawLamp(drawing, x);
   for (let x = 330; x < widthPx; x += random.between(600, 1000)) {
-    drawTree(drawing, { x, base: QUAY_TOP_Y - 26, depth: -1.1 }, random);
+    drawTree(drawing, { x, base: QUAY_TOP_Y - 22, heightPx: random.between(190, 250), haze: 0 }, random);
   }
   for (let x = 60; x < widthPx; x += random.between(130, 260)) drawBollard(drawing, x);
   for (let x = 20; x < widthPx; x += random.between(120, 330)) {
@@ -285,11 +285,11 @@ function drawGull(drawing: Drawing, random: SeededRandom): void {
     drawing.path(`M${x} ${y}q7 -7 16 -4q-4 7 -16 4z`, { fill: "#9aa2a8" });
     return;
   }
-  const span = random.between(16, 34);
+  const span = random.between(9, 20);
   drawing.curve(
     `M${x - span} ${y - span * 0.2}Q${x - span * 0.4} ${y - span * 0.45} ${x} ${y}Q${x + span * 0.4} ${y - span * 0.45} ${x + span} ${y - span * 0.25}`,
     "#f0eee8",
-    3.4,
+    2.2,
   );
-  drawing.ellipse(x, y + 1, span * 0.22, 3.2, { fill: "#e4e2dc" });
+  drawing.ellipse(x, y + 1, span * 0.22, 2, { fill: "#e4e2dc" });
 }

@@ -5,11 +5,15 @@ import type { House } from "./houses";
 
 export type RoofKind = "eaves" | "hip" | "gable" | "stepped" | "bell";
 
+/** Houses on the hill are narrower than any along the quay. */
+const FAR_WIDTH_PX = 150;
+
 const isSlate = (colour: Colour) => colour[2] > colour[0] - 8;
 
 /** Draws what stands above the wall: roof or gable, chimneys, dormers. */
 export function drawRoof(drawing: Drawing, house: House, random: SeededRandom): void {
-  const material: Material = isSlate(house.roofColour) ? "slate" : "roofTile";
+  const isFar = house.width < FAR_WIDTH_PX;
+  const material: Material = isSlate(house.roofColour) ? "slate" : isFar ? "roofTileFar" : "roofTile";
   const rise = house.width * random.between(0.34, 0.5);
   drawChimneys(drawing, house, rise, random);
   if (house.roof === "eaves" || house.roof === "hip") {

@@ -21,8 +21,8 @@ export function drawSky(raster: Raster, seed: number): void {
     cellPx: 150,
     smallestCellPx: 2,
     strength: 0.62,
-    gain: 0.56,
-    stretch: 2.3,
+    gain: 0.58,
+    stretch: 1.6,
     seed: mixSeeds(seed, 601),
   });
   const wisps = makeField(width, height);
@@ -59,8 +59,8 @@ function skyColour(across: number, down: number, cloud: { here: number; sunward:
   const glow = Math.exp(-(((across - 0.06) / 0.35) ** 2)) * (0.25 + 0.4 * down);
   const air = blend(base, [250, 236, 208], Math.min(0.75, glow));
   const band = Math.exp(-(((down - 0.3) / 0.3) ** 2));
-  const density = ramp(cloud.here + 0.22 * cloud.wisp, 0.16 - 0.16 * band, 0.66 - 0.1 * band);
-  const lit = ramp(cloud.here - cloud.sunward, -0.28, 0.3);
+  const density = ramp(cloud.here + 0.22 * cloud.wisp, 0.1 - 0.2 * band, 0.6 - 0.16 * band);
+  const lit = ramp(cloud.here - cloud.sunward, -0.3, 0.24);
   const body = blend(CLOUD_SHADE, CLOUD_LIT, 0.25 + 0.75 * lit);
   const veil = 0.22 * ramp(cloud.wisp, 0.05, 0.7) * (1 - down);
   return blend(blend(air, CLOUD_LIT, veil), blend(body, air, 0.2 + 0.4 * down), 0.92 * density);

@@ -48,7 +48,8 @@ function courses(
   return isJoint ? size.jointTone : 1 + size.tone * hash(row, column, spot.variant);
 }
 
-const plaster: Texture = ({ fine, broad }) => 1 + 0.05 * broad + 0.035 * fine;
+const plaster: Texture = ({ x, fine, broad, variant }) =>
+  1 + 0.07 * broad + 0.045 * fine + 0.02 * hash(Math.floor((x + 6 * broad) / 5), variant, 4);
 
 const brick: Texture = (spot) =>
   courses(spot, { width: 21, height: 8, joint: 1.3, tone: 0.14, jointTone: 1.2 }) *
@@ -76,8 +77,8 @@ const roofTile: Texture = (spot) => {
 
 /** Stones of many sizes: the courses waver and no two stones are alike. */
 const rubble: Texture = (spot) => {
-  const wavering = { ...spot, x: spot.x + 5 * spot.fine, y: spot.y + 4 * spot.broad + 2 * spot.fine };
-  return courses(wavering, { width: 31, height: 15, joint: 2, tone: 0.16, jointTone: 0.7 }) * (1 + 0.08 * spot.fine);
+  const wavering = { ...spot, x: spot.x + 2.6 * spot.fine, y: spot.y + 3 * spot.broad + 1.2 * spot.fine };
+  return courses(wavering, { width: 27, height: 13, joint: 1.6, tone: 0.15, jointTone: 0.78 }) * (1 + 0.08 * spot.fine);
 };
 
 const paving: Texture = (spot) => {
@@ -96,10 +97,15 @@ const timber: Texture = (spot) => {
 
 const crisp = (value: number) => value / (Math.abs(value) + 0.22);
 
-const foliage: Texture = ({ fine, broad }) => 1 + 0.3 * crisp(fine + 0.2) + 0.08 * broad;
+/** Leaves: clumps with gaps, the upper left of each lit. */
+const foliage: Texture = ({ x, y, fine, broad }) => {
+  const leaf = hash(Math.floor((x + 4 * fine) / 3.1), Math.floor((y - 4 * fine) / 2.7), 5);
+  return 1.02 + 0.13 * crisp(fine + 0.1) + 0.24 * leaf + 0.1 * broad;
+};
 
 /** The variant says how hazy: 0 near, 255 nothing left. */
-const grass: Texture = ({ fine, broad, variant }) => 1 + (1 - variant / 255) * (0.14 * crisp(fine) + 0.16 * broad);
+const grass: Texture = ({ fine, broad, variant }) =>
+  1 + (1 - variant / 255) * (0.1 * crisp(fine) + 0.09 * fine + 0.18 * broad);
 
 const hull: Texture = ({ fine, broad }) => 1 + 0.03 * fine + 0.05 * broad;
 
@@ -108,11 +114,11 @@ const quayStone: Texture = (spot) => {
   const wavering = {
     ...spot,
     variant: 0,
-    x: spot.x + 2.2 * spot.fine + 40 * hash(row, 7, 7),
-    y: spot.y + 1.4 * spot.fine - QUAY_TOP_Y,
+    x: spot.x + 1.1 * spot.fine + 40 * hash(row, 7, 7),
+    y: spot.y + 0.8 * spot.fine - QUAY_TOP_Y,
   };
   return (
-    courses(wavering, { width: 84, height: 37, joint: 3, tone: 0.15, jointTone: 0.6 }) *
+    courses(wavering, { width: 84, height: 37, joint: 2.2, tone: 0.15, jointTone: 0.7 }) *
     (1 + 0.13 * spot.fine + 0.12 * spot.broad)
   );
 };
@@ -129,6 +135,8 @@ const TEXTURES = new Map<number, Texture>([
   [MATERIALS.paving, paving],
   [MATERIALS.grass, grass],
   [MATERIALS.slate, slate],
+  [MATERIALS.roofTileFar, (spot) => roofTile({ ...spot, x: spot.x * 2, y: spot.y * 2 })],
+  [MATERIALS.rubbleFar, (spot) => rubble({ ...spot, x: spot.x * 1.9, y: spot.y * 1.9 })],
 ]);
 
 /** Multiplies the colours of a drawing (alpha kept) by the fine structure of its materials. */

@@ -4,7 +4,7 @@ import { addFractalNoise } from "../value-noise";
 import { blend, type Colour } from "./colour";
 import { SCENE_SIZE, WATER_Y } from "./layout";
 
-const DEEP: Colour = [50, 70, 72];
+const DEEP: Colour = [58, 80, 84];
 const SKY_NEAR: Colour = [158, 182, 202];
 const SKY_FAR: Colour = [214, 216, 212];
 /** Above every edge that the water may have. */
@@ -85,10 +85,10 @@ function drawWaterPixel(raster: Raster, boats: Buffer, spot: WaterSpot): void {
   const boat = (boatRow * widthPx + column) * 4;
   const boatShare = (boats[boat + 3] as number) / 255;
   // Faces turned to us show the water's depth, those turned away the sky.
-  const sky = Math.max(0, Math.min(1, 0.2 + 0.42 * wave + 2.4 * slope));
-  const own = Math.max(0.12, Math.min(0.8, 0.26 + 0.3 * near - 1.9 * slope));
+  const sky = Math.max(0, Math.min(1, 0.3 + 0.3 * wave + (0.9 + 1.1 * near) * slope));
+  const own = Math.max(0.12, Math.min(0.8, 0.24 + 0.26 * near - (0.6 + 1.1 * near) * slope));
   const skyColour = blend(SKY_FAR, SKY_NEAR, near);
-  const glint = slope > 0.24 + 0.1 * near ? 40 : 0;
+  const glint = Math.max(0, Math.min(1, (slope - 0.34) * 7)) * 46;
   const to = (y * widthPx + x) * 3;
   const foam = Math.max(0, 1 - (y - shore) / 3.5) * 0.5;
   for (let channel = 0; channel < 3; channel++) {

@@ -54,7 +54,9 @@ class Page {
   }
 
   get events(): ProjectEvent[] {
-    return [...this.text.matchAll(/^data: (.*)$/gm)].map(([, data]) => projectEventSchema.parse(JSON.parse(data ?? "")));
+    return [...this.text.matchAll(/^data: (.*)$/gm)].map(([, data]) =>
+      projectEventSchema.parse(JSON.parse(data ?? "")),
+    );
   }
 
   get lastId(): string {

@@ -8,7 +8,7 @@ test("the first account is made on the web, signs in at once and can be made onl
   await page.getByLabel("E-mail").fill(LEAD.email);
   await page.getByLabel("Password", { exact: true }).fill("short");
   await page.getByRole("button", { name: "Make the account" }).click();
-  await expect(page.getByText(/15 characters/).first()).toBeVisible();
+  await expect(page.getByRole("alert").getByText(/this has 5/)).toBeVisible();
   await page.getByLabel("Password", { exact: true }).fill(LEAD.password);
   await page.getByRole("button", { name: "Make the account" }).click();
   await expect(page).toHaveURL(/\/projects$/);

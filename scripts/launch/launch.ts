@@ -10,6 +10,7 @@ import { startOnce, supervise, type Supervised } from "./supervise";
 const SERVER_TYPESCRIPT = ["--import", "tsx", "--conditions=react-server"];
 const HEALTH_EVERY_MS = 150;
 const READY_WITHIN_MS = 90_000;
+const PARENT_CHECK_MS = 1_000;
 
 /**
  * Runs the product until it is asked to stop.
@@ -72,11 +73,22 @@ async function runUntilStopped(settings: Environment, port: number, withDemo: bo
     process.once("SIGINT", () => resolve(0));
     process.once("SIGTERM", () => resolve(0));
     process.once("SIGHUP", () => resolve(0));
+    whenParentIsGone(() => resolve(0));
     void announce({ local, appUrl, withDemo, env, running }).catch((error: unknown) => onGivenUp(String(error)));
   });
   console.log("Stopping.");
   await Promise.all(running.map((process) => process.stop()));
   return code;
+}
+
+/** npm passes SIGTERM on, but nothing where it is killed itself; what it started must not stay on the port. */
+function whenParentIsGone(stop: () => void): void {
+  if (process.env.npm_lifecycle_event !== "launch") return;
+  const parent = process.ppid;
+  const timer = setInterval(() => {
+    if (process.ppid !== parent) stop();
+  }, PARENT_CHECK_MS);
+  timer.unref();
 }
 
 interface Running {

@@ -22,10 +22,8 @@ test.beforeEach(async () => {
 });
 
 test.afterEach(async () => {
-  for (const { child, ended } of launched.splice(0)) {
-    child.kill("SIGKILL");
-    await ended;
-  }
+  for (const id of await listProcesses()) process.kill(id, "SIGKILL");
+  await Promise.all(launched.splice(0).map(({ ended }) => ended));
   await rm(storageDir, { recursive: true, force: true });
 });
 
@@ -60,12 +58,20 @@ async function listProcesses(): Promise<number[]> {
   return found.flat();
 }
 
-async function findProcess(part: string): Promise<number> {
+/** @param part of its command line */
+async function findProcess(part: string): Promise<number | undefined> {
   for (const id of await listProcesses()) {
     const commandLine = await readFile(`/proc/${id}/cmdline`, "utf8").catch(() => "");
-    if (commandLine.includes(part) && commandLine.includes("end-with-parent")) return id;
+    if (commandLine.split("\0").join(" ").includes(part)) return id;
   }
-  throw new Error(`no process runs ${part}`);
+  return undefined;
+}
+
+async function killProcess(part: string, signal: NodeJS.Signals): Promise<number> {
+  const id = await findProcess(part);
+  if (id === undefined) throw new Error(`no process runs ${part}`);
+  process.kill(id, signal);
+  return id;
 }
 
 test("launch is ready, answers, stops on SIGTERM with 0 and leaves no process behind", async () => {
@@ -81,20 +87,22 @@ test("launch is ready, answers, stops on SIGTERM with 0 and leaves no process be
   expect(await second.ended).toBe(1);
   expect(second.output()).toContain(`Port ${port} on 127.0.0.1 is already in use.`);
 
+  // npm passes it on and waits: nothing is left when it has ended.
   product.child.kill("SIGTERM");
   await product.ended;
-  await expect.poll(listProcesses, { timeout: 30_000 }).toEqual([]);
+  expect(await listProcesses()).toEqual([]);
+  expect(product.output().trimEnd().split("\n").at(-1)).toBe("Stopping.");
   await expect(fetch(`${product.address}/api/health`)).rejects.toThrow();
 });
 
 test("a worker and a web process that are killed are started again, and the launching process's end ends both", async () => {
   const product = await launchByNpm(await claimPort(0, "127.0.0.1"), "--no-demo");
   await waitForReady(product);
-  for (const part of ["worker.ts", "next/dist/bin/next"]) {
-    const before = await findProcess(part);
-    process.kill(before, "SIGKILL");
+  // Next gives its process a name of its own.
+  for (const part of ["worker.ts", "next-server"]) {
+    const before = await killProcess(part, "SIGKILL");
     await expect
-      .poll(() => findProcess(part).catch(() => before), { timeout: 30_000, message: `${part} is started again` })
+      .poll(async () => (await findProcess(part)) ?? before, { timeout: 30_000, message: `${part} is started again` })
       .not.toBe(before);
   }
   const health = () =>
@@ -104,11 +112,14 @@ test("a worker and a web process that are killed are started again, and the laun
     );
   await expect.poll(health, { timeout: 30_000 }).toBe(200);
 
-  for (const id of await listProcesses()) {
-    const commandLine = await readFile(`/proc/${id}/cmdline`, "utf8").catch(() => "");
-    if (commandLine.includes("scripts/launch.mjs") && !commandLine.includes("end-with-parent"))
-      process.kill(id, "SIGKILL");
-  }
+  await killProcess("node scripts/launch.mjs", "SIGKILL");
+  await expect.poll(listProcesses, { timeout: 30_000 }).toEqual([]);
+});
+
+test("npm killed outright leaves nothing behind either", async () => {
+  const product = await launchByNpm(await claimPort(0, "127.0.0.1"), "--no-demo");
+  await waitForReady(product);
+  product.child.kill("SIGKILL");
   await expect.poll(listProcesses, { timeout: 30_000 }).toEqual([]);
 });
 
@@ -116,7 +127,8 @@ test("an unknown option and a storage folder that cannot be written are one clea
   const unknown = await launchByNpm(0, "--everything");
   expect(await unknown.ended).toBe(1);
   expect(unknown.output()).toContain("Unknown option: --everything");
-  const unwritable = await launchByNpm(0, "--no-demo", { STORAGE_DIR: "/proc/nowhere" });
+  const inFile = path.join(process.cwd(), "package.json", "storage");
+  const unwritable = await launchByNpm(0, "--no-demo", { STORAGE_DIR: inFile });
   expect(await unwritable.ended).toBe(1);
-  expect(unwritable.output()).toContain("Cannot write to the storage folder /proc/nowhere (STORAGE_DIR).");
+  expect(unwritable.output()).toContain(`Cannot write to the storage folder ${inFile} (STORAGE_DIR).`);
 });

@@ -87,29 +87,28 @@ function shiftRow(
   const [a, b, c, d, e, f] = weightsAt(from.weightsAt);
   const rowStart = from.sceneRow * widthPx * 3;
   const count = into.length / 3;
+  const firstInside = Math.min(count, Math.max(0, 2 - from.startX));
+  const afterInside = Math.max(firstInside, Math.min(count, widthPx - TAPS + 3 - from.startX));
+  const offset = rowStart + (from.startX - 2) * 3;
+  // Channels lie side by side and are shifted alike, so one flat loop does all three.
+  for (let i = firstInside * 3; i < afterInside * 3; i++) {
+    const j = offset + i;
+    into[i] =
+      a * (data[j] as number) +
+      b * (data[j + 3] as number) +
+      c * (data[j + 6] as number) +
+      d * (data[j + 9] as number) +
+      e * (data[j + 12] as number) +
+      f * (data[j + 15] as number);
+  }
+  const weights = [a, b, c, d, e, f];
   for (let x = 0; x < count; x++) {
-    const first = from.startX - 2 + x;
-    if (first >= 0 && first + TAPS <= widthPx) {
-      const i = rowStart + first * 3;
-      for (let channel = 0; channel < 3; channel++) {
-        const j = i + channel;
-        into[x * 3 + channel] =
-          a * (data[j] as number) +
-          b * (data[j + 3] as number) +
-          c * (data[j + 6] as number) +
-          d * (data[j + 9] as number) +
-          e * (data[j + 12] as number) +
-          f * (data[j + 15] as number);
-      }
-    } else {
-      const weights = [a, b, c, d, e, f];
-      for (let channel = 0; channel < 3; channel++) {
-        let sum = 0;
-        for (let tap = 0; tap < TAPS; tap++) {
-          sum += (weights[tap] as number) * (data[rowStart + clampIndex(first + tap, widthPx) * 3 + channel] as number);
-        }
-        into[x * 3 + channel] = sum;
-      }
+    if (x === firstInside) x = afterInside;
+    for (let channel = 0; channel < 3 && x < count; channel++) {
+      into[x * 3 + channel] = weights.reduce((sum, weight, tap) => {
+        const column = clampIndex(from.startX - 2 + x + tap, widthPx);
+        return sum + weight * (data[rowStart + column * 3 + channel] as number);
+      }, 0);
     }
   }
 }

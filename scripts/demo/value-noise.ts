@@ -1,5 +1,5 @@
 import type { Field } from "./raster";
-import { mixSeeds } from "./seeded-random";
+import { mixSeeds, mixThree } from "./seeded-random";
 
 export interface NoiseOctave {
   /** Distance of the lattice's points, px; may differ across and down (grain of wood, layers of cloud). */
@@ -11,7 +11,7 @@ export interface NoiseOctave {
 }
 
 function latticeRow(row: number, count: number, seed: number, into: Float32Array): void {
-  for (let i = 0; i < count; i++) into[i] = mixSeeds(seed, row, i) / 2147483648 - 1;
+  for (let i = 0; i < count; i++) into[i] = mixThree(seed, row, i) / 2147483648 - 1;
 }
 
 const smooth = (t: number) => t * t * (3 - 2 * t);

@@ -1,5 +1,5 @@
 import { type Field, makeField } from "../raster";
-import { mixSeeds } from "../seeded-random";
+import { mixSeeds, mixThree } from "../seeded-random";
 import { addFractalNoise } from "../value-noise";
 import { MATERIALS } from "./drawing";
 import { HIGH_TIDE_Y, QUAY_TOP_Y, SCENE_SIZE } from "./layout";
@@ -21,7 +21,7 @@ export function makeGrain(seed: number): Grain {
 }
 
 /** Uniform in -1 to 1 for a cell of a pattern. */
-const hash = (a: number, b: number, c: number) => mixSeeds(a, b, c) / 2147483648 - 1;
+const hash = (a: number, b: number, c: number) => mixThree(a, b, c) / 2147483648 - 1;
 
 interface Spot {
   readonly x: number;

@@ -1,6 +1,6 @@
 import type { FrameSize } from "@/scripts/demo/pose";
 import { clampToByte, makeField } from "@/scripts/demo/raster";
-import { makeRandom, mixSeeds, type SeededRandom } from "@/scripts/demo/seeded-random";
+import { makeRandom, mixSeeds, mixThree, type SeededRandom } from "@/scripts/demo/seeded-random";
 import { addFractalNoise } from "@/scripts/demo/value-noise";
 import type { Scene } from "./scene";
 
@@ -88,7 +88,7 @@ function houseAt(house: House, x: number, y: number, grain: number): [number, nu
   const edge = Math.max(1 - within(inX - 3, house.rightPx - house.leftPx), 1 - within(inY - 6, 1e6));
   const wallTone = grain * 16 - edge * 40;
   // Curtains, lamps and reflections: no two windows are quite alike, but nearly.
-  const own = mixSeeds(house.seed, column, floor) / 4294967296;
+  const own = mixThree(house.seed, column, floor) / 4294967296;
   const bar = Math.max(
     within(windowX - house.windowXPx / 2 + 1.2, 2.4),
     within(windowY - house.windowYPx * 0.4 + 1.2, 2.4),

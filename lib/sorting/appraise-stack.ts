@@ -1,6 +1,7 @@
 import type { FrameDraft, Shift, StackDraft } from "./draft";
 import { findDeviations, lightOf, type Deviation } from "./frame-deviations";
 import { frameSharpness, type FrameSharpness } from "./frame-sharpness";
+import { isMatch } from "./judge-pair";
 import type { PairStore } from "./pair-store";
 import type { FixedStack, SetAsideReason, SortFrame } from "./types";
 
@@ -18,9 +19,6 @@ export interface AppraisalInput {
   readonly isBracketed: boolean;
 }
 
-/** Two frames this well correlated lie to each other as measured. Source: analysis.md, step 4. */
-const LEAST_NCC = 0.35;
-const LEAST_CONTRAST = 1;
 /** A stack is a bracket where its settings span this much light or more. Our own. */
 const LEAST_BRACKET_EV = 0.6;
 
@@ -95,7 +93,7 @@ export function chainShifts(frames: readonly SortFrame[], store: PairStore): (Sh
       const before = frames[back];
       const origin = shifts[back];
       const measure = before && origin ? store.find(before.id, frame.id) : null;
-      if (!origin || !measure || measure.ncc < LEAST_NCC || measure.contrast < LEAST_CONTRAST) continue;
+      if (!before || !origin || !measure || !isMatch(measure, before)) continue;
       return shifts.push({ xPx: origin.xPx + measure.xPx, yPx: origin.yPx + measure.yPx });
     }
     return shifts.push(null);

@@ -1,5 +1,6 @@
 import type { PairMeasure } from "@/lib/analysis/types";
 import { isTextured } from "./judge-pair";
+import { significanceOf } from "./significance";
 import type { SortFrame } from "./types";
 
 /** How two stacks' references lie to each other. */
@@ -18,9 +19,6 @@ export interface Edge {
   readonly steps: { readonly columns: number; readonly rows: number } | null;
 }
 
-const REGISTRATION_LONG_SIDE_PX = 256;
-/** Neighbouring pixels are alike, so about twelve count as one sample. Source: analysis.md, step 3. */
-const PIXELS_PER_SAMPLE = 12;
 /** Chance reaches 4.5 among 153 pairs of one shoot (measured on the aerial photographs in shared/data/grid-18). */
 const LEAST_SIGNIFICANCE = 4.6;
 const LEAST_PEAK_RATIO = 1.2;
@@ -32,16 +30,6 @@ const LEAST_NCC_WHERE_PLAIN = 0.6;
 const LEAST_CONTRAST = 1;
 /** Beyond this an edge is as sure as any. */
 const HIGHEST_WEIGHT = 30;
-
-/** atanh(ncc) in standard deviations of chance, for the overlap that the shift leaves. 0 where they do not overlap. */
-export function significanceOf(measure: PairMeasure, frame: SortFrame): number {
-  const { widthPx, heightPx } = frame.measurements;
-  const shareX = Math.max(0, 1 - Math.abs(measure.xPx) / widthPx);
-  const shareY = Math.max(0, 1 - Math.abs(measure.yPx) / heightPx);
-  const scale = REGISTRATION_LONG_SIDE_PX / Math.max(widthPx, heightPx);
-  const samples = (widthPx * heightPx * scale ** 2 * shareX * shareY) / PIXELS_PER_SAMPLE;
-  return Math.atanh(Math.min(0.999, Math.max(-0.999, measure.ncc))) * Math.sqrt(samples);
-}
 
 /** The edge between two references; null where the measurement proves nothing. */
 export function makeEdge(

@@ -1,9 +1,10 @@
 import type { GridGraph } from "./collect-edges";
-import type { StackDraft } from "./draft";
+import { framesInUse, type StackDraft } from "./draft";
 import type { Edge } from "./edges";
 import { inSteps } from "./lattice-steps";
 import type { Vector } from "./vector";
 import type { Place } from "./number-places";
+import { median } from "./robust";
 import { solvePositions, type PositionEdge } from "./solve-positions";
 
 /** Edges further off whole steps than this do not shape the positions. Our own. */
@@ -109,7 +110,8 @@ export function findSeams(
     return sides.flatMap(({ side, other }): Seam[] => {
       if (!other) return [];
       const step = directStep(direct, stack.index, other.index) ?? positionStep(positions, stack, other);
-      return [{ a: stack.index, b: other.index, side, overlap: step && overlapOf(step, side, stack) }];
+      const overlap = step && overlapOf(betweenMiddles(step, stack, other), side, stack);
+      return [{ a: stack.index, b: other.index, side, overlap }];
     });
   });
 }
@@ -129,6 +131,27 @@ function positionStep(
   if (!from || !to) return null;
   const longSidePx = Math.max(a.hub.measurements.widthPx, a.hub.measurements.heightPx);
   return { x: (to.xPx - from.xPx) / longSidePx, y: (to.yPx - from.yPx) / longSidePx };
+}
+
+/**
+ * From the step between two references to that between the middles of their stacks: what is merged is the whole stack,
+ * and a handheld reference may lie off its middle.
+ */
+function betweenMiddles(step: Vector, a: StackDraft, b: StackDraft): Vector {
+  const [from, to] = [middleOf(a), middleOf(b)];
+  return { x: step.x + to.x - from.x, y: step.y + to.y - from.y };
+}
+
+/** Median framing of the frames in use against the reference, in long sides. */
+function middleOf(stack: StackDraft): Vector {
+  const { widthPx, heightPx } = stack.hub.measurements;
+  const shifts = framesInUse(stack).flatMap(({ shift }) => shift ?? []);
+  if (shifts.length === 0) return { x: 0, y: 0 };
+  const longSidePx = Math.max(widthPx, heightPx);
+  return {
+    x: median(shifts.map(({ xPx }) => xPx)) / longSidePx,
+    y: median(shifts.map(({ yPx }) => yPx)) / longSidePx,
+  };
 }
 
 function overlapOf(step: Vector, side: "right" | "below", { hub }: StackDraft): number {

@@ -125,7 +125,7 @@ function fixedEdges(stacks: readonly StackDraft[]): Edge[] {
   return placed.slice(1).map((stack, at) => {
     const before = placed[at] ?? stack;
     const steps = { columns: stack.column - before.column, rows: stack.row - before.row };
-    const none = { x: 0, y: 0, ncc: 1, significance: 0 };
+    const none = { x: 0, y: 0, ncc: 1, significance: 0, isFaint: false };
     return { a: before.index, b: stack.index, ...none, weight: FIXED_WEIGHT, steps };
   });
 }

@@ -13,6 +13,8 @@ export interface Edge {
   readonly ncc: number;
   /** How far the correlation stands above chance, in standard deviations: 5 is seldom wrong. */
   readonly significance: number;
+  /** Too little detail in the overlap for its shift to be measured well. */
+  readonly isFaint: boolean;
   /** Weight of the edge's word where edges contradict each other. */
   readonly weight: number;
   /** Whole steps that are a fact already (both ends were placed before); null: to be read off x and y. */
@@ -52,6 +54,7 @@ export function makeEdge(
     y: measure.yPx / longSidePx,
     ncc: measure.ncc,
     significance,
+    isFaint: measure.contrast < LEAST_CONTRAST,
     weight: Math.min(significance, HIGHEST_WEIGHT) * clearness * (isPlain ? 0.3 : 1),
     steps: null,
   };

@@ -13,7 +13,7 @@ const LARGEST_MISFIT = 0.6;
 /** Edges that agree with the places, as wanted differences of positions in long sides. */
 export function agreeingEdges(graph: GridGraph, places: readonly Place[]): PositionEdge[] {
   return graph.edges.flatMap((edge): PositionEdge[] => {
-    if (edge.steps || !agreesWithPlaces(edge, graph, places)) return [];
+    if (edge.steps || edge.isFaint || !agreesWithPlaces(edge, graph, places)) return [];
     return [{ a: edge.a, b: edge.b, x: edge.x, y: edge.y, weight: edge.significance ** 2 }];
   });
 }
@@ -94,7 +94,7 @@ export function findSeams(
   const positions = findPositions(stacks, places, graph);
   const direct = new Map<string, Edge>();
   for (const edge of graph.edges) {
-    if (!edge.steps && agreesWithPlaces(edge, graph, places)) direct.set(`${edge.a} ${edge.b}`, edge);
+    if (!edge.steps && !edge.isFaint && agreesWithPlaces(edge, graph, places)) direct.set(`${edge.a} ${edge.b}`, edge);
   }
   const at = new Map<string, StackDraft>();
   for (const stack of stacks) {

@@ -1,5 +1,6 @@
 import { isTextured } from "./judge-pair";
-import { median, quantile } from "./robust";
+import type { PatchGrid } from "@/lib/analysis/types";
+import { median } from "./robust";
 import type { SortFrame } from "./types";
 
 export type SoftVerdict = "sharp" | "ask" | "soft" | "cannot tell";
@@ -18,6 +19,14 @@ const LEAST_FRAMES = 3;
 const ASK_SHARE = 0.75;
 /** Patches with less texture than this quantile are left out. Source: analysis.md, step 7. */
 const TEXTURE_QUANTILE = 0.5;
+/**
+ * Plain patches hold nothing but noise, which is as sharp in a soft frame: only patches this many times above the
+ * plainest of the stack count, unless too few of them are left. Our own, from generated shoots with sky.
+ */
+const ABOVE_NOISE = 2.5;
+const LEAST_PATCH_SHARE = 0.1;
+/** With fewer textured patches than this share, what jitter moves from patch to patch must be added up. Our own. */
+const SPARSE_SHARE = 0.3;
 /** Two frames this close in score vouch for each other. Our own. */
 const AGREEING = 0.1;
 
@@ -61,10 +70,9 @@ function logRatios(frames: readonly SortFrame[], size: "full" | "half"): number[
   const count = Math.min(...grids.map((grid) => grid[size].length));
   if (!Number.isFinite(count) || count === 0) return frames.map(() => 0);
   const middles = Array.from({ length: count }, (_, patch) => median(grids.map((grid) => grid[size][patch] ?? 0)));
-  const least = quantile(middles, TEXTURE_QUANTILE);
-  const used = middles.flatMap((middle, patch) => (middle >= least && middle > 0 ? [patch] : []));
+  const used = tellingPatches(middles, grids);
   if (used.length === 0) return frames.map(() => 0);
-  return grids.map((grid) =>
+  const byPatch = grids.map((grid) =>
     median(
       used.map((patch) => {
         const value = grid[size][patch] ?? 0;
@@ -74,6 +82,25 @@ function logRatios(frames: readonly SortFrame[], size: "full" | "half"): number[
       }),
     ),
   );
+  if (used.length >= SPARSE_SHARE * count) return byPatch;
+  const sums = grids.map((grid) => used.reduce((sum, patch) => sum + (grid[size][patch] ?? 0), 0));
+  const usual = median(sums);
+  return byPatch.map((ratio, at) => {
+    const bySum = Math.log(Math.max(sums[at] ?? 0, 1e-12) / usual);
+    return Math.abs(bySum) < Math.abs(ratio) ? bySum : ratio;
+  });
+}
+
+/** The more textured half of the patches, as far as they stand out from the noise. */
+function tellingPatches(middles: readonly number[], grids: readonly PatchGrid[]): number[] {
+  // Noise is about equal all over the picture in levels, not relative to the brightness.
+  const levels = middles.map((middle, patch) => middle * median(grids.map((grid) => grid.brightness[patch] ?? 0)) ** 2);
+  const ranked = levels.map((level, patch) => ({ level, patch })).filter(({ patch }) => (middles[patch] ?? 0) > 0);
+  ranked.sort((a, b) => b.level - a.level);
+  const half = ranked.slice(0, Math.ceil(ranked.length * (1 - TEXTURE_QUANTILE)));
+  const noise = ranked.at(-1)?.level ?? 0;
+  const clear = half.filter(({ level }) => level >= ABOVE_NOISE * noise).length;
+  return half.slice(0, Math.max(clear, Math.ceil(ranked.length * LEAST_PATCH_SHARE))).map(({ patch }) => patch);
 }
 
 /** Centre of the patch that tells soft from sharp best: the most textured one, as fractions of width and height. */

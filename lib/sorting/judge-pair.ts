@@ -19,6 +19,12 @@ const LEAST_PEAK_RATIO = 1.15;
  * above chance, which stays under 5. Our own, from generated handheld shoots.
  */
 const SURE_SIGNIFICANCE = 8;
+/** Chance seldom falls among the few small shifts. */
+const SURE_SIGNIFICANCE_WITHIN = 6;
+/** Limits for a match in plain sky. Our own, from generated shoots. */
+const FAINT_NCC = 0.5;
+const FAINT_PEAK_RATIO = 1.4;
+const LEAST_FAINT_SHIFT = 0.003;
 const SURE_PEAK_RATIO = 1.25;
 
 /** Length of a pair's shift as a fraction of the frame's longer side. */
@@ -33,20 +39,29 @@ export function isTextured(frame: SortFrame): boolean {
 
 /** True where the measured shift is no chance. */
 export function isMatch(measure: PairMeasure, frame: SortFrame): boolean {
-  if (measure.contrast < LEAST_CONTRAST) return false;
+  if (measure.contrast < LEAST_CONTRAST) return isFaintMatch(measure, frame);
   if (measure.ncc >= LEAST_NCC) return true;
-  return significanceOf(measure, frame) >= SURE_SIGNIFICANCE && measure.peakRatio >= SURE_PEAK_RATIO;
+  const isNear = shiftFraction(measure, frame) < LARGEST_SHIFT_WITHIN;
+  const least = isNear ? SURE_SIGNIFICANCE_WITHIN : SURE_SIGNIFICANCE;
+  return significanceOf(measure, frame) >= least && measure.peakRatio >= SURE_PEAK_RATIO;
+}
+
+/** Shading and dust match at no shift at all, whatever is in view: a faint match proves something only if it moved. */
+function isFaintMatch(measure: PairMeasure, frame: SortFrame): boolean {
+  const shift = shiftFraction(measure, frame);
+  if (shift < LEAST_FAINT_SHIFT || measure.ncc < FAINT_NCC) return false;
+  return shift < LARGEST_SHIFT_WITHIN || measure.peakRatio >= FAINT_PEAK_RATIO;
 }
 
 /** Judges two frames by their pictures: the same tile, another one, or no saying. */
 export function judgePair(a: SortFrame, b: SortFrame, measure: PairMeasure): Verdict {
-  const isPlain = !isTextured(a) || !isTextured(b);
-  const isMatched = isMatch(measure, a);
+  const isPlain = !isTextured(a) || !isTextured(b) || measure.contrast < LEAST_CONTRAST;
   const shift = shiftFraction(measure, a);
-  if (isMatched && shift < LARGEST_SHIFT_WITHIN) return isPlain ? "unknown" : "same";
-  if (isMatched && shift > LEAST_SHIFT_BETWEEN && measure.peakRatio >= LEAST_PEAK_RATIO) {
-    return isPlain ? "unknown" : "different";
+  if (isMatch(measure, a)) {
+    if (shift < LARGEST_SHIFT_WITHIN) return "same";
+    if (shift <= LEAST_SHIFT_BETWEEN) return "unknown";
+    if (isPlain && measure.peakRatio < FAINT_PEAK_RATIO) return "unknown";
+    if (measure.peakRatio >= LEAST_PEAK_RATIO) return "different";
   }
-  if (isMatched && shift <= LEAST_SHIFT_BETWEEN) return "unknown";
   return isPlain ? "unknown" : "probably different";
 }

@@ -101,6 +101,12 @@ function findStrays(stacks: readonly StackDraft[], graph: GridGraph, usualSize: 
     if (own.length === 0 && isTextured(stack.hub)) strays.set(stack.index, false);
     if (own.length > 0 && misfitOf(own, graph) > STRAY_MISFIT) strays.set(stack.index, false);
   }
+  // Several frames of the ground before the feet match each other, and nothing of the scene.
+  for (const piece of graph.components.slice(1)) {
+    const members = [...piece.keys()].flatMap((index) => stacks[index] ?? []);
+    const isOther = members.every((stack) => !stack.fixed && isFew(stack, usualSize) && isTextured(stack.hub));
+    if (isOther && usualSize >= 3) for (const stack of members) strays.set(stack.index, false);
+  }
   return strays;
 }
 

@@ -13,4 +13,3 @@ export function significanceOf(measure: PairMeasure, frame: SortFrame): number {
   const samples = (widthPx * heightPx * scale ** 2 * shareX * shareY) / PIXELS_PER_SAMPLE;
   return Math.atanh(Math.min(0.999, Math.max(-0.999, measure.ncc))) * Math.sqrt(samples);
 }
-

@@ -39,6 +39,8 @@ export interface SplitOptions {
 const MOST_TIME_ERRORS = 0.03;
 /** A picture verdict that time contradicts is believed only down to this correlation. Our own. */
 const LONGEST_ODD_RUN = 2;
+/** Where neither texture nor time decide, plain frames this much alike are taken together. Our own. */
+const LEANING_NCC = 0.4;
 /** A frame knocked aside by less than this is still of its tile; the deviation is reported. Our own. */
 const LARGEST_KNOCK = 0.25;
 
@@ -182,5 +184,5 @@ function decide(link: Link, { limit, options }: CutInput): Join {
     return { ...link, isSame: false, basis: isShort === false ? "pictures and time" : "pictures" };
   }
   if (isShort !== null) return { ...link, isSame: isShort, basis: "time" };
-  return { ...link, isSame: link.measure.ncc > 0 || link.measure.ssim > 0.5, basis: "nothing" };
+  return { ...link, isSame: link.measure.ncc >= LEANING_NCC, basis: "nothing" };
 }

@@ -6,7 +6,7 @@ import { Notice } from "@/components/ui/notice";
 import { bytesText, countOf, percent } from "@/lib/board/words";
 import { frameKeys } from "@/lib/frames/queries";
 import type { UnfinishedUpload } from "@/lib/frames/schema";
-import { cancelBrokenUpload } from "@/lib/intake/cancel-upload";
+import { cancelBrokenUpload } from "@/lib/uploads/cancel-upload";
 
 interface BrokenOffProps {
   readonly projectId: string;

@@ -12,7 +12,7 @@ import { useFreshLists, useUploads } from "@/components/intake/uploads-provider"
 import { Button } from "@/components/ui/button";
 import { Notice } from "@/components/ui/notice";
 import { intakeQuery, progressQuery } from "@/lib/frames/queries";
-import { keyOf, sortChosenFiles, type NotTaken } from "@/lib/intake/chosen-files";
+import { keyOf, sortChosenFiles, type NotTaken } from "@/lib/uploads/chosen-files";
 
 interface IntakeProps {
   readonly projectId: string;

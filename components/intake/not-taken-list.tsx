@@ -1,5 +1,5 @@
 import { countOf } from "@/lib/board/words";
-import type { NotTaken } from "@/lib/intake/chosen-files";
+import type { NotTaken } from "@/lib/uploads/chosen-files";
 
 interface NotTakenListProps {
   readonly notTaken: readonly NotTaken[];

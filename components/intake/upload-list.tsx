@@ -5,7 +5,7 @@ import { useState } from "react";
 import { Button } from "@/components/ui/button";
 import { Progress } from "@/components/ui/progress";
 import { bytesText } from "@/lib/board/words";
-import type { UploadItem, UploadQueue, UploadState } from "@/lib/intake/upload-queue";
+import type { UploadItem, UploadQueue, UploadState } from "@/lib/uploads/upload-queue";
 
 interface UploadListProps {
   readonly queue: UploadQueue;

@@ -6,8 +6,8 @@ import { Notice } from "@/components/ui/notice";
 import { Progress } from "@/components/ui/progress";
 import { bytesText, countOf, groupDigits, pauseText } from "@/lib/board/words";
 import type { IntakeList } from "@/lib/frames/schema";
-import { keyOf } from "@/lib/intake/chosen-files";
-import type { Hold, UploadQueue, UploadSnapshot } from "@/lib/intake/upload-queue";
+import { keyOf } from "@/lib/uploads/chosen-files";
+import type { Hold, UploadQueue, UploadSnapshot } from "@/lib/uploads/upload-queue";
 
 interface UploadSummaryProps {
   readonly queue: UploadQueue;

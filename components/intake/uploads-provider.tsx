@@ -4,8 +4,8 @@ import { useQueryClient } from "@tanstack/react-query";
 import { createContext, useContext, useEffect, useState, useSyncExternalStore, type ReactNode } from "react";
 import { boardKeys } from "@/lib/board/queries";
 import { frameKeys } from "@/lib/frames/queries";
-import { tusTransfers } from "@/lib/intake/tus-transfer";
-import { UploadQueue, type UploadSnapshot } from "@/lib/intake/upload-queue";
+import { tusTransfers } from "@/lib/uploads/tus-transfer";
+import { UploadQueue, type UploadSnapshot } from "@/lib/uploads/upload-queue";
 
 /** The queues of this tab, one a project. */
 class UploadQueues {

@@ -1,7 +1,7 @@
 import { expect, test } from "vitest";
 import type { IntakeList } from "@/lib/frames/schema";
 import { fileIdSchema, uploadIdSchema } from "@/lib/ids";
-import { folderOf, sortChosenFiles } from "@/lib/intake/chosen-files";
+import { folderOf, sortChosenFiles } from "@/lib/uploads/chosen-files";
 
 const NOTHING: IntakeList = { files: [], uploads: [], sortError: null };
 // First bytes of a JPEG: SOI and APP0 (ITU-T T.81, annex B).

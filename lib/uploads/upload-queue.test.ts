@@ -1,5 +1,5 @@
 import { beforeEach, expect, test, vi } from "vitest";
-import { UploadQueue, type MakeTransfer, type OutgoingFile, type TransferEvents } from "@/lib/intake/upload-queue";
+import { UploadQueue, type MakeTransfer, type OutgoingFile, type TransferEvents } from "@/lib/uploads/upload-queue";
 
 interface Line {
   readonly name: string;

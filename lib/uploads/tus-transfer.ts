@@ -1,5 +1,5 @@
 import { DetailedError, Upload } from "tus-js-client";
-import type { MakeTransfer, OutgoingFile, TransferFailure } from "@/lib/intake/upload-queue";
+import type { MakeTransfer, OutgoingFile, TransferFailure } from "@/lib/uploads/upload-queue";
 
 const ENDPOINT = "/api/uploads";
 /** Long enough to be quick, short enough that a break costs little to repeat. */

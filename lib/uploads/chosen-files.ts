@@ -1,6 +1,6 @@
 import type { IntakeList } from "@/lib/frames/schema";
 import { HEAD_BYTES, hasPictureExtension, isHiddenName, isPictureFile } from "@/lib/intake/picture-files";
-import type { OutgoingFile } from "@/lib/intake/upload-queue";
+import type { OutgoingFile } from "@/lib/uploads/upload-queue";
 
 /** A file that was chosen or dropped and is not sent, and why. */
 export interface NotTaken {

@@ -1,13 +1,4 @@
-import type { FileId, FrameId, ProjectId, UploadId } from "@/lib/ids";
-
-/** What the calls of the matrix are made on: a project with one frame, and an upload that its editor has begun. */
-export interface Target {
-  readonly projectId: ProjectId;
-  readonly projectName: string;
-  readonly frameId: FrameId;
-  readonly fileId: FileId;
-  readonly uploadId: UploadId;
-}
+import type { Target } from "../support/yard";
 
 /** Who may make a call. creator: only who began the upload. */
 export type Audience = "everybody" | "signed in" | "view" | "edit" | "manage" | "creator";

@@ -1,31 +1,18 @@
 // Before anything that reads cookies.
-import { addMember, makePerson, makeProject, presentCookie, signInAs, signOut, type Person } from "../support/people";
+import { makeProject } from "../support/people";
 import { setTimeout as delay } from "node:timers/promises";
 import { eq } from "drizzle-orm";
 import { describe, expect, test } from "vitest";
 import { writeTransaction } from "@/db/client";
-import { sessions, users } from "@/db/schema/accounts";
 import { projects } from "@/db/schema/projects";
 import { useDatabase } from "../support/database";
-import { addStoredFrame, addUnfinishedUpload } from "../support/full-project";
 import { listAppFiles } from "../support/routes";
-import { GATE_CALLS, type Audience, type GateCall, type Target } from "./gate-calls";
+import { ASKERS, comeAs, FILE_NAME, makeYard, PROJECT_NAME, type Asker, type Target } from "../support/yard";
+import { GATE_CALLS, type Audience, type GateCall } from "./gate-calls";
 
 useDatabase();
 
 const METHODS = ["GET", "HEAD", "OPTIONS", "POST", "PUT", "PATCH", "DELETE"];
-const ASKERS = [
-  "lead",
-  "editor",
-  "viewer",
-  "lead of another project",
-  "administrator who is no member",
-  "nobody",
-  "disabled editor",
-  "editor who has signed out",
-  "forger",
-] as const;
-type Asker = (typeof ASKERS)[number];
 
 /** product.md: the table of rights, "not a member: 404, the administrator too"; interfaces.md: no session: 401. */
 const REFUSED_WITHOUT_SESSION = {
@@ -46,61 +33,6 @@ const REFUSALS: Record<Audience, Partial<Record<Asker, number>>> = {
 const CODES: Record<number, string> = { 401: "unauthenticated", 403: "forbidden", 404: "not_found" };
 
 const POLLER_RESTS_MS = 300;
-const PROJECT_NAME = "Quiet estuary 7391";
-const FILE_NAME = "SECRET_7391.jpg";
-
-interface Yard extends Target {
-  readonly people: Record<"lead" | "editor" | "viewer" | "stranger" | "administrator" | "disabled", Person>;
-}
-
-async function makeYard(): Promise<Yard> {
-  const people = {
-    lead: await makePerson("Lead"),
-    editor: await makePerson("Editor"),
-    viewer: await makePerson("Viewer"),
-    stranger: await makePerson("Stranger"),
-    administrator: await makePerson("Administrator", { isAdministrator: true }),
-    disabled: await makePerson("Disabled"),
-  };
-  const projectId = await makeProject(people.lead, PROJECT_NAME);
-  await addMember(projectId, people.editor, "editor");
-  await addMember(projectId, people.viewer, "viewer");
-  await addMember(projectId, people.disabled, "editor");
-  await makeProject(people.stranger, "Elsewhere");
-  const stored = await addStoredFrame(projectId, people.editor, FILE_NAME);
-  const uploadId = await addUnfinishedUpload(projectId, people.editor, FILE_NAME);
-  return { ...stored, projectId, projectName: PROJECT_NAME, uploadId, people };
-}
-
-/** The following call comes from them. */
-async function comeAs(asker: Asker, { people }: Yard): Promise<void> {
-  signOut();
-  if (asker === "nobody") return;
-  if (asker === "forger") return presentCookie("eyJhbGciOiJkaXIiLCJlbmMiOiJBMjU2R0NNIn0..AAAA.AAAA.AAAA");
-  if (asker === "disabled editor") {
-    await signInAs(people.disabled);
-    // Not through disableAccount: that ends the session too, and it is the mark on the account that must refuse here.
-    await disableKeepingSession(people.disabled);
-    return;
-  }
-  if (asker === "editor who has signed out") {
-    await signInAs(people.editor);
-    await writeTransaction((tx) => tx.delete(sessions).where(eq(sessions.userId, people.editor.id)));
-    return;
-  }
-  const person = {
-    lead: people.lead,
-    editor: people.editor,
-    viewer: people.viewer,
-    "lead of another project": people.stranger,
-    "administrator who is no member": people.administrator,
-  }[asker];
-  await signInAs(person);
-}
-
-async function disableKeepingSession(person: Person): Promise<void> {
-  await writeTransaction((tx) => tx.update(users).set({ disabledAtMs: 1 }).where(eq(users.id, person.id)));
-}
 
 type RouteModule = Record<string, (request: Request, context: { params: Promise<object> }) => Promise<Response>>;
 

@@ -17,6 +17,7 @@ import { authSecret } from "@/lib/storage/auth-secret";
 const request = vi.hoisted(() => ({ cookies: new Map<string, string>() }));
 vi.mock("next/headers", () => ({
   cookies: async () => ({
+    has: (name: string) => request.cookies.has(name),
     get: (name: string) => {
       const value = request.cookies.get(name);
       return value === undefined ? undefined : { name, value };

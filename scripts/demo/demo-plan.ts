@@ -2,13 +2,6 @@ import { SCENE_SIZE } from "./harbour/layout";
 import type { FrameSize, Pose } from "./pose";
 import { makeRandom, mixSeeds, type SeededRandom } from "./seeded-random";
 
-/** What the demo's project is called and asks for; the intake of the demo sets these. */
-export const DEMO_PROJECT = {
-  name: "Harbour front at low tide",
-  overlapWanted: 0.33,
-  framesPerTile: { least: 4, most: 8 },
-} as const;
-
 export const DEMO_FRAME_SIZE: FrameSize = { widthPx: 1500, heightPx: 1000 };
 
 const ROWS = 3;

@@ -7,6 +7,7 @@ import sharp from "sharp";
 import { afterAll, beforeAll, describe, expect, test } from "vitest";
 import { generateShoot } from "./generate-shoot";
 import { SHOOT_KINDS } from "./kinds";
+import { make24MpFrames } from "./make-24mp-frames";
 import { planShoot } from "./plan-shoot";
 import { overlapBetween, type ShootTruth } from "./shoot-truth";
 import { walk } from "./walk";
@@ -190,4 +191,15 @@ test("overlap of two frames side by side is what their distance says", () => {
   // check-values.md E33: a thumbnail of 300 x 200 with a third of overlap; its right neighbour lies 200 px away.
   const overlap = overlapBetween(pose, { ...pose, centreXPx: 700 }, { widthPx: 300, heightPx: 200 }, "right");
   expect(overlap).toBeCloseTo(1 / 3, 6);
+});
+
+test("a frame for the benches has the size of a real camera's, in pixels and bytes", async () => {
+  const large = path.join(directory, "large");
+  const [file] = await make24MpFrames(large, 1, 1);
+  const bytes = await readFile(path.join(large, file ?? ""));
+  const { width, height } = await sharp(bytes).metadata();
+  expect([width, height]).toEqual([6000, 4000]);
+  // From memory: cameras of 24 megapixels write fine JPEGs of 8 to 12 MB.
+  expect(bytes.length).toBeGreaterThan(8e6);
+  expect(bytes.length).toBeLessThan(12e6);
 });

@@ -10,8 +10,7 @@ export default async function NotFound() {
     <PageFrame person={await findSession()}>
       <Failure title="There is nothing at this address">
         <p>
-          It may be mistyped, or what was here is deleted. A project is also hidden from everybody who is not in it: ask
-          its lead to add you.
+          It may be mistyped, or what was here is deleted. A project is also hidden from everybody who is not in it.
         </p>
       </Failure>
     </PageFrame>

@@ -23,7 +23,7 @@ export function ProjectStubs({ project }: ProjectStubsProps) {
   ];
   return (
     <ul aria-label={`Steps of ${project.name}`} className="grid grid-cols-3 border-t border-ink">
-      {stubs.map(({ view, title, text, isOchre }, index) => (
+      {stubs.map(({ view, title, texts, isOchre }, index) => (
         <li key={view} className="relative min-w-0">
           {index > 0 && <Perforation />}
           <Link
@@ -32,7 +32,12 @@ export function ProjectStubs({ project }: ProjectStubsProps) {
           >
             <span className="block text-sm font-semibold">{title}</span>
             <span className={classNames("figures block text-sm", isOchre ? "font-semibold text-ochre" : "text-quiet")}>
-              {text}
+              {/* On a phone the line breaks between the counts before it breaks inside one. */}
+              {texts.map((text) => (
+                <span key={text} className="inline-block pr-[1ch]">
+                  {text}
+                </span>
+              ))}
             </span>
           </Link>
         </li>
@@ -44,19 +49,15 @@ export function ProjectStubs({ project }: ProjectStubsProps) {
 type Project = ProjectStubsProps["project"];
 
 function intakeFacts({ frames }: Project) {
-  return { text: frames === 0 ? "start here" : countOf(frames, "frame"), isOchre: false };
+  return { texts: [frames === 0 ? "start here" : countOf(frames, "frame")], isOchre: false };
 }
 
 function boardFacts({ frames, tiles, openQuestions, isSorting }: Project) {
-  if (frames === 0) return { text: "not yet", isOchre: false };
-  if (isSorting) return { text: "sorting", isOchre: false };
-  // Spaces that do not break: on a phone the line breaks between the two counts.
-  const counts = [countOf(tiles, "tile"), countOf(openQuestions, "question")].map((text) =>
-    text.replaceAll(" ", "\u00a0"),
-  );
-  return { text: counts.join(", "), isOchre: openQuestions > 0 };
+  if (frames === 0) return { texts: ["not yet"], isOchre: false };
+  if (isSorting) return { texts: ["sorting"], isOchre: false };
+  return { texts: [`${countOf(tiles, "tile")},`, countOf(openQuestions, "question")], isOchre: openQuestions > 0 };
 }
 
 function handoverFacts({ tiles, isSorting }: Project) {
-  return { text: tiles === 0 || isSorting ? "not yet" : "ready", isOchre: false };
+  return { texts: [tiles === 0 || isSorting ? "not yet" : "ready"], isOchre: false };
 }

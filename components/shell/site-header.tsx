@@ -23,7 +23,7 @@ export async function SiteHeader({ person, children }: SiteHeaderProps) {
         className="flex min-h-7 items-center gap-2.5 text-lg font-bold tracking-tight pointer-coarse:min-h-11"
       >
         <Mark className="size-6" />
-        Stackyard
+        <span className="max-[22rem]:sr-only">Stackyard</span>
       </Link>
       {children !== undefined && <div className="min-w-0 max-sm:order-last max-sm:w-full">{children}</div>}
       <div className="ml-auto flex items-center gap-1">

@@ -14,8 +14,7 @@ export default async function FirstAccountPage() {
     <>
       <h1 className="text-3xl font-bold">Make the first account</h1>
       <p className="mt-3">
-        It administers this installation: it can make accounts for others. It sees a project only where it is a member,
-        like everybody else.
+        It administers this installation. Projects it sees only where it is a member, like everybody else.
       </p>
       <FirstAccountForm action={makeFirstAccount} />
       {hasDemo && (

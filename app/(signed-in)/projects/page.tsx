@@ -28,12 +28,18 @@ export default async function ProjectsPage({ searchParams }: { readonly searchPa
       </div>
       {freedBytes !== null && (
         <div className="mt-5">
-          <Notice live="status" title={`The project is deleted; ${bytesText(freedBytes)} are free again.`} />
+          <Notice live="status" title={deletedText(freedBytes)} />
         </div>
       )}
       {projects.length === 0 ? <NoProjects /> : <Shelves projects={projects} />}
     </PageFrame>
   );
+}
+
+function deletedText(freedBytes: number): string {
+  return freedBytes === 0
+    ? "The project is deleted."
+    : `The project is deleted; ${bytesText(freedBytes)} are free again.`;
 }
 
 function Shelves({ projects }: { readonly projects: Awaited<ReturnType<typeof listProjects>> }) {
@@ -76,7 +82,7 @@ function NoProjects() {
       <ol className="mt-5 grid gap-x-8 gap-y-4 sm:grid-cols-3">
         {[
           ["Bring in", "Drop the folder: hundreds of frames at once, raw files beside their JPEGs too."],
-          ["Board", "See each frame in its stack and each stack in its place, and answer what is not sure."],
+          ["Board", "See each frame in its stack and each stack in its place, and what is not sure."],
           ["Hand over", "Download the manifest that says where every frame belongs."],
         ].map(([title, text], index) => (
           <li key={title} className="flex gap-3">

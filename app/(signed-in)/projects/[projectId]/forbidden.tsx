@@ -5,10 +5,7 @@ export default function ForbiddenInProject() {
     <div className="px-4 sm:px-5">
       <title>Not for your role · Stackyard</title>
       <Failure title="Your role in this project does not reach this page">
-        <p>
-          Settings are for its leads. You can look at everything else; to change the project itself, ask a lead to do it
-          or to make you one.
-        </p>
+        <p>Settings are for its leads. You can look at everything else; to change the project itself, ask a lead.</p>
       </Failure>
     </div>
   );

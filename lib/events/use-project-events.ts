@@ -7,7 +7,7 @@ import { frameKeys } from "@/lib/frames/queries";
 import { projectKeys } from "@/lib/projects/queries";
 
 /** Many files in a second must not be as many fetches, ms. */
-const GATHER_MS = 400;
+const GATHER_MS = 1_000;
 
 /**
  * Keeps what a page shows of a project fresh. One stream a browser and project: browsers hold six connections to a

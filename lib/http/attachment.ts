@@ -3,7 +3,7 @@
  * @param name - what a person called it; what no file system takes is replaced
  */
 export function attachment(name: string, ending: string): string {
-  const safe = name.replace(/[\u0000-\u001f\u007f/\\:*?"<>|]+/g, "_").trim() || "project";
+  const safe = name.replace(/[\p{Cc}/\\:*?"<>|]+/gu, "_").trim() || "project";
   const plain = `${safe}${ending}`.replace(/[^\x20-\x7e]/g, "_");
   const encoded = encodeURIComponent(`${safe}${ending}`).replace(/['()*]/g, (letter) => `%${hex(letter)}`);
   return `attachment; filename="${plain}"; filename*=UTF-8''${encoded}`;

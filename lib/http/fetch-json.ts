@@ -37,17 +37,6 @@ export async function fetchJson<Answer>(
   throw new FetchProblem(response.status, "unexpected", `The server answered ${response.status}. Try again.`);
 }
 
-/** The same with a JSON body: POST unless `method` says otherwise. */
-export function sendJson<Answer>(
-  url: string,
-  schema: z.ZodType<Answer>,
-  body: unknown,
-  init: RequestInit = {},
-): Promise<Answer> {
-  const headers = { "content-type": "application/json" };
-  return fetchJson(url, schema, { method: "POST", headers, body: JSON.stringify(body), ...init });
-}
-
 async function send(url: string, init: RequestInit): Promise<Response> {
   try {
     return await fetch(url, { ...init, headers: { accept: "application/json", ...init.headers } });

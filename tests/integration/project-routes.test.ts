@@ -17,7 +17,7 @@ import { GET as getManifest } from "@/app/api/projects/[projectId]/manifest/rout
 import { GET as getProgressRoute } from "@/app/api/projects/[projectId]/progress/route";
 import { accessForJob } from "@/lib/auth/gate";
 import { getBoard } from "@/lib/board/reads";
-import { boardSchema } from "@/lib/board/schema";
+import { boardSchema, boardSinceSchema } from "@/lib/board/schema";
 import { intakeListSchema, progressSchema } from "@/lib/frames/schema";
 import { createAnalysisPool } from "@/lib/imaging/analysis-pool";
 import type { ProjectId } from "@/lib/ids";
@@ -132,8 +132,10 @@ describe("answers", () => {
   test("a board that is known already costs no body", async () => {
     const first = await ask(getBoardRoute);
     const etag = first.headers.get("etag") ?? "";
-    expect(await (await ask(getBoardRoute, "?since=1")).json()).toEqual({ unchanged: true, revision: 1 });
-    expect(await (await ask(getBoardRoute, "?since=0")).json()).toMatchObject({ full: true, revision: 1 });
+    const since = async (revision: number) =>
+      boardSinceSchema.parse(await (await ask(getBoardRoute, `?since=${revision}`)).json());
+    expect(await since(1)).toEqual({ unchanged: true, revision: 1 });
+    expect(await since(0)).toMatchObject({ full: true, revision: 1 });
     const same = await ask(getBoardRoute, "", { "if-none-match": etag });
     expect([same.status, await same.text()]).toEqual([304, ""]);
     expect((await ask(getBoardRoute, "?since=yesterday")).status).toBe(400);

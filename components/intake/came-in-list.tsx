@@ -7,7 +7,7 @@ import type { IntakeFile } from "@/lib/frames/schema";
 
 const ROW_PX = 37;
 
-/** The files, newest first. Only rows in view are drawn. */
+/** The files in the order given. Only rows in view are drawn. */
 export function CameInList({ files }: { readonly files: readonly IntakeFile[] }) {
   const [topPx, setTopPx] = useState(0);
   const virtualizer = useWindowVirtualizer({
@@ -42,7 +42,7 @@ export function CameInList({ files }: { readonly files: readonly IntakeFile[] })
             <State file={file} />
             {file.sha256 !== null && (
               <span className="figures text-quiet max-lg:hidden" title={`SHA-256 ${file.sha256}`}>
-                {file.sha256.slice(0, 12)}…
+                SHA-256 {file.sha256.slice(0, 12)}…
               </span>
             )}
           </li>

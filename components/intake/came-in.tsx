@@ -39,14 +39,16 @@ export function CameIn({ list, canEdit }: CameInProps) {
     );
   }
   const counts = countStates(files);
+  const states = CHOICES.filter(({ choice: of }) => of !== "all" && counts[of] > 0);
   const shown = choice === "all" ? files : files.filter((file) => file.state === choice);
   const bytes = files.reduce((sum, file) => sum + file.bytes, 0);
   return (
     <section aria-label="What came in" className="space-y-3">
       <div className="flex flex-wrap items-baseline gap-x-6 gap-y-1">
         <h2 className="text-lg font-bold">What came in</h2>
-        <p className="figures text-sm text-quiet">
-          {countOf(files.length, "file")} {bytesText(bytes)}
+        <p className="figures flex gap-x-5 text-sm text-quiet">
+          <span>{countOf(files.length, "file")}</span>
+          <span>{bytesText(bytes)}</span>
         </p>
       </div>
       {list.sortError !== null && (
@@ -55,7 +57,7 @@ export function CameIn({ list, canEdit }: CameInProps) {
         </Notice>
       )}
       <div role="group" aria-label="Which files are listed" className="flex flex-wrap gap-x-5 border-b border-hairline">
-        {CHOICES.filter(({ choice: of }) => of === "all" || counts[of] > 0).map(({ choice: of, label }) => (
+        {[...CHOICES.slice(0, 1), ...(states.length > 1 ? states : [])].map(({ choice: of, label }) => (
           <button
             key={of}
             type="button"
@@ -71,9 +73,16 @@ export function CameIn({ list, canEdit }: CameInProps) {
           </button>
         ))}
       </div>
-      <CameInList files={shown} />
+      <CameInList files={[...shown].sort(byPlace)} />
     </section>
   );
+}
+
+const collator = new Intl.Collator("en", { numeric: true });
+
+/** As a folder lists them: the camera's counter as a number. */
+function byPlace(a: IntakeFile, b: IntakeFile): number {
+  return collator.compare(a.folder ?? "", b.folder ?? "") || collator.compare(a.name, b.name);
 }
 
 function countStates(files: readonly IntakeFile[]): Record<IntakeFile["state"], number> {

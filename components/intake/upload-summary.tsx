@@ -26,7 +26,11 @@ export function UploadSummary({ queue, snapshot, known }: UploadSummaryProps) {
     <div className="space-y-3">
       <div className="flex flex-wrap items-center gap-x-6 gap-y-2">
         <h2 className="text-lg font-bold">{isUnfinished ? "On the way" : "Sent"}</h2>
-        <p className="figures text-sm">{[text, bytesOf(snapshot), ...rateOf(snapshot)].join("   ")}</p>
+        <p className="figures flex flex-wrap gap-x-5 text-sm">
+          {[text, bytesOf(snapshot), ...rateOf(snapshot)].map((fact) => (
+            <span key={fact}>{fact}</span>
+          ))}
+        </p>
         <span className="ml-auto flex flex-wrap gap-2">
           {counts.failed > 0 && (
             <Button size="slim" onClick={() => queue.retryAll()}>

@@ -28,7 +28,7 @@ export function openPoints(index: BoardIndex): OpenPoint[] {
       kind: "questions",
       text: countOf(board.questions.length, "open question"),
       meaning: "The computation is not sure; its best guess is in the manifest.",
-      tile: board.questions[0]?.tile ?? null,
+      tile: board.questions.find(({ tile }) => tile !== null && index.tiles.has(tile))?.tile ?? null,
     }),
     point(unplaced.length, {
       kind: "unplaced",

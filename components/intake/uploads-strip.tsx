@@ -17,7 +17,7 @@ export function UploadsStrip({ projectId }: { readonly projectId: string }) {
   return (
     <p className="flex flex-wrap gap-x-4 border-b border-hairline bg-tray px-4 py-1.5 text-sm">
       <Link href={href} className="link figures inline-flex min-h-6 items-center">
-        {groupDigits(counts.done)} of {countOf(given, "file")} in
+        Sending from this tab: {groupDigits(counts.done)} of {countOf(given, "file")} in
       </Link>
       {hold && <span className="font-semibold text-ochre">{hold.message}</span>}
       {counts.failed > 0 && <span className="font-semibold text-madder">{countOf(counts.failed, "file")} failed</span>}

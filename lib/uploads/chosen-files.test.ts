@@ -33,7 +33,7 @@ test("pictures are sent, others are listed as not taken with the reason", async 
     ],
     NOTHING,
   );
-  expect(chosen.outgoing.map(({ name }) => name)).toEqual(["HARB0001.JPG", "HARB0001.CR3", "noname"]);
+  expect(chosen.outgoing.map(({ name }) => name)).toEqual(["HARB0001.CR3", "HARB0001.JPG", "noname"]);
   expect(chosen.notTaken).toEqual([
     { name: "notes.txt", folder: "shoot", reason: "not a picture" },
     { name: ".hidden.jpg", folder: "shoot", reason: "hidden file" },
@@ -79,8 +79,8 @@ test("what is in already is not sent twice unless it was changed since, what bro
   );
   expect(chosen.alreadyIn).toBe(1);
   expect(chosen.outgoing.map(({ folder, name, uploadUrl }) => [folder, name, uploadUrl])).toEqual([
-    ["shoot", "a.jpg", null],
-    ["other", "a.jpg", null],
     ["", "b.jpg", "/api/uploads/upload-1"],
+    ["other", "a.jpg", null],
+    ["shoot", "a.jpg", null],
   ]);
 });

@@ -53,7 +53,14 @@ export async function sortChosenFiles(files: readonly File[], known: IntakeList)
       uploadUrl: unfinished.get(key) ?? null,
     });
   }
-  return { outgoing, notTaken, alreadyIn };
+  return { outgoing: outgoing.sort(byPlace), notTaken, alreadyIn };
+}
+
+const collator = new Intl.Collator("en", { numeric: true });
+
+/** Browsers give a folder's files in any order; sent in the camera's, they can be followed. */
+function byPlace(a: OutgoingFile, b: OutgoingFile): number {
+  return collator.compare(a.folder, b.folder) || collator.compare(a.name, b.name);
 }
 
 /** Folder of a chosen file, "/"-separated, relative to what was dropped; "" at the root. */

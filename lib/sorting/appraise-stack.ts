@@ -22,10 +22,13 @@ export interface AppraisalInput {
 /** A stack is a bracket where its settings span this much light or more. Our own. */
 const LEAST_BRACKET_EV = 0.6;
 
+/** Settings closer than this are one level of a bracket: a third of a stop, the finest step of most cameras. */
+const BRACKET_LEVEL_EV = 1 / 3;
+
 /** Judges the frames of one stack against each other and chooses its reference. */
 export function appraiseStack(input: AppraisalInput): StackDraft {
   const { frames, store } = input;
-  const sharpness = frameSharpness(frames, input.softLimit);
+  const sharpness = input.isBracketed ? bracketSharpness(input) : frameSharpness(frames, input.softLimit);
   const chain = chainShifts(frames, store);
   const deviations = findDeviations(frames, chain).map((deviation) =>
     input.isBracketed && deviation?.kind === "exposure" ? null : deviation,
@@ -47,6 +50,20 @@ export function appraiseStack(input: AppraisalInput): StackDraft {
     };
   });
   return { index: input.index, id: input.id, fixed: input.fixed, frames: drafts, hub, reference };
+}
+
+/** Frames of unlike exposure differ in sharpness by their light alone, so each is compared with its equals only. */
+function bracketSharpness({ frames, softLimit }: AppraisalInput): FrameSharpness[] {
+  const levels = frames.map((frame) => Math.round((lightOf(frame) ?? 0) / BRACKET_LEVEL_EV));
+  const judged = new Map<SortFrame, FrameSharpness>();
+  for (const level of new Set(levels)) {
+    const equals = frames.filter((_, at) => levels[at] === level);
+    frameSharpness(equals, softLimit).forEach((sharpness, at) => {
+      const frame = equals[at];
+      if (frame) judged.set(frame, sharpness);
+    });
+  }
+  return frames.map((frame) => judged.get(frame) ?? { score: 0, verdict: "cannot tell", relative: null });
 }
 
 function reasonFor(

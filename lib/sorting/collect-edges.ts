@@ -1,7 +1,8 @@
-import type { StackDraft } from "./draft";
+import { isFew, usualSizeOf, type StackDraft } from "./draft";
 import { makeEdge, type Edge } from "./edges";
 import { labelStacks, type Component, type Label } from "./lattice";
 import { LARGEST_SAME_PLACE } from "./vector";
+import { boxOf } from "./walks";
 import { inSteps, proposeSteps, type Steps } from "./lattice-steps";
 import type { PairStore } from "./pair-store";
 
@@ -64,10 +65,13 @@ function readGraph(stacks: readonly StackDraft[], pairs: readonly IndexPair[], s
     return edge ? [edge] : [];
   });
   const all = [...edges, ...fixedEdges(stacks)].sort((p, q) => p.a - q.a || p.b - q.b);
-  const graphs = proposeSteps(all, usualAspect(stacks)).map((steps): GridGraph => {
+  // What few frames show may be none of the scene: the lattice is made by whole stacks.
+  const few = new Set(stacks.filter((stack) => isFew(stack, usualSizeOf(stacks))).map((stack) => stack.index));
+  const whole = all.filter((edge) => !few.has(edge.a) && !few.has(edge.b));
+  const graphs = proposeSteps(whole, usualAspect(stacks)).map((steps): GridGraph => {
     return { edges: all, steps, components: labelStacks(stacks.length, all, steps) };
   });
-  const rated = graphs.map((graph) => ({ graph, rating: rateGraph(graph) }));
+  const rated = graphs.map((graph) => ({ graph, rating: rateGraph(graph, few) }));
   const best = rated.reduce((a, b) => (b.rating > a.rating + 1e-9 ? b : a));
   return best.graph;
 }
@@ -77,8 +81,12 @@ const CLASH_WEIGHT = 8;
 /** Most stacks follow each other by one step; each that does speaks for a lattice like a weak edge. Our own. */
 const SINGLE_STEP_WEIGHT = 4;
 
+/** A place within a piece that no stack has is rarer than a step too fine. Our own. */
+const HOLE_WEIGHT = 2;
+
 /** How well a lattice explains edges, order and places: higher is better. */
-function rateGraph({ edges, steps, components }: GridGraph): number {
+function rateGraph({ edges, steps, components: pieces }: GridGraph, few: ReadonlySet<number>): number {
+  const components = pieces.map((piece) => new Map([...piece].filter(([index]) => !few.has(index))));
   let rating = 0;
   const labels = new Map(
     components.flatMap((component, piece) =>
@@ -94,6 +102,11 @@ function rateGraph({ edges, steps, components }: GridGraph): number {
     if (isSame) samePlace.add(`${edge.a} ${edge.b}`);
     if (b.column - a.column !== columns || b.row - a.row !== rows) continue;
     rating += edge.weight * Math.exp(-((misfit / RATED_MISFIT) ** 2));
+  }
+  for (const component of components) {
+    const box = boxOf([...component.values()]);
+    const area = box ? (box.bottom - box.top + 1) * (box.right - box.left + 1) : 0;
+    rating -= HOLE_WEIGHT * Math.max(0, area - component.size);
   }
   const at = new Map<string, number>();
   for (const [index, { column, row, piece }] of [...labels].sort(([a], [b]) => a - b)) {

@@ -1,5 +1,6 @@
 import type { Deviation } from "./frame-deviations";
 import type { FrameSharpness } from "./frame-sharpness";
+import { mode } from "./robust";
 import type { FixedStack, SetAsideReason, SortFrame } from "./types";
 
 export interface Shift {
@@ -32,4 +33,15 @@ export interface StackDraft {
 
 export function framesInUse(stack: StackDraft): FrameDraft[] {
   return stack.frames.filter((entry) => entry.setAside === null);
+}
+
+/** Usual number of frames of a stack; 1 where there is none. */
+export function usualSizeOf(stacks: readonly StackDraft[]): number {
+  // Frames, not stacks, are counted: a handful of single strays must not outvote a few whole stacks.
+  return mode(stacks.flatMap((stack) => stack.frames.map(() => stack.frames.length))) ?? 1;
+}
+
+/** True for a stack of half the usual frames or less, where that means something. */
+export function isFew(stack: StackDraft, usualSize: number): boolean {
+  return usualSize >= 3 && stack.frames.length * 2 <= usualSize;
 }

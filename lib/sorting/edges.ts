@@ -30,6 +30,8 @@ const SURE_PEAK_RATIO = 1.08;
 /** Source: analysis.md, step 5. */
 const LEAST_NCC_WHERE_PLAIN = 0.6;
 const LEAST_CONTRAST = 1;
+/** Where chance begins to be frequent; edges up to two deviations above it count only in part. */
+const CHANCE = 4;
 /** Beyond this an edge is as sure as any. */
 const HIGHEST_WEIGHT = 30;
 
@@ -46,7 +48,7 @@ export function makeEdge(
   const isPlain = !isTextured(a.frame) || !isTextured(b.frame) || measure.contrast < LEAST_CONTRAST;
   if (isPlain && measure.ncc < LEAST_NCC_WHERE_PLAIN) return null;
   const longSidePx = Math.max(a.frame.measurements.widthPx, a.frame.measurements.heightPx);
-  const clearness = Math.min(1, (measure.peakRatio - 1) / 0.5);
+  const clearness = Math.min(1, (measure.peakRatio - 1) / 0.5) * Math.min(1, (significance - CHANCE) / 2);
   return {
     a: a.index,
     b: b.index,

@@ -1,11 +1,10 @@
 import type { GridGraph } from "./collect-edges";
-import type { StackDraft } from "./draft";
+import { isFew, usualSizeOf, type StackDraft } from "./draft";
 import type { Edge } from "./edges";
 import { isTextured } from "./judge-pair";
 import type { Component, Label } from "./lattice";
 import { inSteps } from "./lattice-steps";
 import { placeByWalk, type WalkPlacement, type WalkStop } from "./place-by-walk";
-import { mode } from "./robust";
 import type { SortOptions } from "./types";
 
 /** Where a stack lies and how we know. Labels have no origin yet. */
@@ -30,6 +29,8 @@ export interface Layout {
 
 /** A stack this far off the lattice, in steps, shows something between two tiles. Our own. */
 const STRAY_MISFIT = 0.3;
+/** Edges with whole stacks that weigh less than this together may be chance. Our own. */
+const LEAST_FEW_WEIGHT = 6;
 /** Cost of leaving an unmatched textured stack of usual size out, relative to one hole. Our own. */
 const FULL_STACK_COST = 1.2;
 const SINGLE_FRAME_COST = 0.4;
@@ -49,7 +50,7 @@ export function placeStacks(
   bodies: readonly (readonly number[])[],
   options: SortOptions,
 ): Layout {
-  const usualSize = findUsualSize(stacks, graph);
+  const usualSize = usualSizeOf(stacks);
   const main = graph.components[0] ?? new Map<number, Label>();
   const strays = findStrays(stacks, graph, usualSize);
   const labels = new Map([...main].filter(([index]) => !strays.has(index) && (main.size > 1 || stacks.length === 1)));
@@ -79,33 +80,24 @@ export function placeStacks(
   return { spots, usualSize, walk };
 }
 
-function findUsualSize(stacks: readonly StackDraft[], graph: GridGraph): number {
-  const main = graph.components[0];
-  const sizes = stacks
-    .filter((stack) => main && main.size > 1 && main.has(stack.index))
-    .map((stack) => stack.frames.length);
-  return mode(sizes) ?? mode(stacks.map((stack) => stack.frames.length)) ?? 1;
-}
-
-export function isFew(stack: StackDraft, usualSize: number): boolean {
-  return usualSize >= 2 && stack.frames.length * 2 <= usualSize;
-}
-
 /** Few frames that match nothing although they could, or that lie between the tiles. */
 function findStrays(stacks: readonly StackDraft[], graph: GridGraph, usualSize: number): Map<number, boolean> {
   const strays = new Map<number, boolean>();
   const edges = edgesByStack(stacks.length, graph.edges);
+  const few = new Set(stacks.filter((stack) => isFew(stack, usualSize)).map((stack) => stack.index));
   for (const stack of stacks) {
-    if (stack.fixed || !isFew(stack, usualSize) || usualSize < 3) continue;
-    const own = edges[stack.index] ?? [];
-    if (own.length === 0 && isTextured(stack.hub)) strays.set(stack.index, false);
-    if (own.length > 0 && misfitOf(own, graph) > STRAY_MISFIT) strays.set(stack.index, false);
+    if (stack.fixed || !few.has(stack.index)) continue;
+    const own = (edges[stack.index] ?? []).filter((edge) => !few.has(edge.a) || !few.has(edge.b));
+    const weight = own.reduce((sum, edge) => sum + edge.weight, 0);
+    if (weight < LEAST_FEW_WEIGHT ? isTextured(stack.hub) : misfitOf(own, graph) > STRAY_MISFIT) {
+      strays.set(stack.index, false);
+    }
   }
   // Several frames of the ground before the feet match each other, and nothing of the scene.
   for (const piece of graph.components.slice(1)) {
     const members = [...piece.keys()].flatMap((index) => stacks[index] ?? []);
     const isOther = members.every((stack) => !stack.fixed && isFew(stack, usualSize) && isTextured(stack.hub));
-    if (isOther && usualSize >= 3) for (const stack of members) strays.set(stack.index, false);
+    if (isOther) for (const stack of members) strays.set(stack.index, false);
   }
   return strays;
 }

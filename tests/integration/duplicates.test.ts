@@ -2,6 +2,7 @@ import { beforeEach, expect, test } from "vitest";
 import { eq } from "drizzle-orm";
 import { useDatabase } from "../support/database";
 import { makePerson, makeProject, signInAs } from "../support/people";
+import { pictureResult } from "../support/analysis-results";
 import { uploadFile } from "../support/uploads";
 import { database, writeTransaction } from "@/db/client";
 import { frames } from "@/db/schema/frames";
@@ -21,32 +22,6 @@ beforeEach(async () => {
   const lead = await makePerson("Lena Lead");
   projectId = await makeProject(lead);
   await signInAs(lead);
-});
-
-const picture = (sha256: string): AnalysisResult => ({
-  type: "picture",
-  sha256,
-  mediaType: "image/jpeg",
-  metadata: {
-    takenAt: null,
-    make: null,
-    model: null,
-    serial: null,
-    lens: null,
-    exposureSeconds: null,
-    aperture: null,
-    iso: null,
-    focalLengthMm: null,
-    orientation: 1,
-  },
-  measurements: {
-    widthPx: 600,
-    heightPx: 400,
-    laplacianVariance: 100,
-    meanBrightness: 100,
-    texture: 1,
-    patches: { columns: 1, rows: 1, full: [1], half: [1], brightness: [100] },
-  },
 });
 
 async function bringIn(...names: string[]): Promise<IntakeFile[]> {
@@ -69,7 +44,7 @@ test.each([
   ["the middle one first", [1, 2, 0]],
 ])("the one received first stays: %s", async (_how, order) => {
   const brought = await bringIn("a.jpg", "b.jpg", "c.jpg");
-  for (const at of order) await record(brought[at], picture("same"));
+  for (const at of order) await record(brought[at], pictureResult("same"));
   expect(await states()).toEqual([
     ["a.jpg", "analysed", null],
     ["b.jpg", "duplicate", "a.jpg"],
@@ -80,17 +55,17 @@ test.each([
 
 test("analyses that end at once leave one", async () => {
   const brought = await bringIn("a.jpg", "b.jpg", "c.jpg", "d.jpg");
-  await Promise.all([...brought].reverse().map((file) => record(file, picture("same"))));
+  await Promise.all([...brought].reverse().map((file) => record(file, pictureResult("same"))));
   expect((await states()).filter(([, state]) => state === "analysed")).toEqual([["a.jpg", "analysed", null]]);
 });
 
 test("a later file that has its place on the board already keeps it", async () => {
   const [early, late] = await bringIn("a.jpg", "b.jpg");
-  await record(late, picture("same"));
+  await record(late, pictureResult("same"));
   const frameId = late?.frameId;
   if (!frameId) throw new Error("no frame");
   await writeTransaction((tx) => tx.update(frames).set({ orderTaken: 0 }).where(eq(frames.id, frameId)));
-  await record(early, picture("same"));
+  await record(early, pictureResult("same"));
   expect(await states()).toEqual([
     ["a.jpg", "duplicate", "b.jpg"],
     ["b.jpg", "analysed", null],
@@ -99,7 +74,7 @@ test("a later file that has its place on the board already keeps it", async () =
 
 test("recording twice changes nothing more", async () => {
   const [only] = await bringIn("a.jpg");
-  await record(only, picture("one"));
+  await record(only, pictureResult("one"));
   const before = await list();
   await record(only, { type: "unreadable", sha256: null, reason: "late news" });
   expect(await list()).toEqual(before);
@@ -114,14 +89,14 @@ test("the raw file of a picture that fails waits alone, and goes to the next pic
     ["a.jpg", null],
   ]);
   const again = (await bringIn("a.jpg")).at(-1);
-  await record(again, picture("good"));
+  await record(again, pictureResult("good"));
   const adopted = (await list()).find(({ name }) => name === "a.NEF");
   expect([adopted?.frameId, adopted?.reason]).toEqual([again?.frameId, null]);
 });
 
 test("a file named raw that holds a picture is shown, and one named picture that is raw is kept beside", async () => {
   const [raw, jpeg] = await bringIn("a.NEF", "b.jpg");
-  await record(raw, picture("one"));
+  await record(raw, pictureResult("one"));
   await record(jpeg, { type: "raw", sha256: "two", mediaType: "image/x-raw" });
   const now = (await list()).reverse();
   expect(now.map(({ isRaw, frameId }) => [isRaw, frameId !== null])).toEqual([

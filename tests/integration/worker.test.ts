@@ -2,7 +2,7 @@ import { createHash } from "node:crypto";
 import { mkdtempSync, readFileSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import path from "node:path";
-import { afterAll, afterEach, beforeAll, beforeEach, expect, test } from "vitest";
+import { afterAll, afterEach, beforeAll, beforeEach, expect, test, vi } from "vitest";
 import { eq } from "drizzle-orm";
 import { useDatabase } from "../support/database";
 import { makePerson, makeProject, signInAs } from "../support/people";
@@ -24,6 +24,8 @@ import { getHealth } from "@/lib/jobs/health";
 
 // The worker as it really runs: its own process, its own pool of readers, killed and stopped as processes are.
 const storageDir = useDatabase();
+// Each test waits for processes that share the machine with all other tests.
+vi.setConfig({ testTimeout: 180_000 });
 let shootDir = "";
 let shoot: ShootTruth;
 let projectId: ProjectId;

@@ -24,10 +24,10 @@ async function findSerious(page: Page): Promise<string[]> {
 async function expectAccessible(page: Page, address: string, settled: (page: Page) => Promise<void>): Promise<void> {
   for (const size of SIZES) {
     await page.setViewportSize(size);
+    await page.goto(address);
+    await settled(page);
     for (const colorScheme of SCHEMES) {
       await page.emulateMedia({ colorScheme, reducedMotion: "reduce" });
-      await page.goto(address);
-      await settled(page);
       expect.soft(await findSerious(page), `${address}, ${colorScheme}, ${size.name}`).toEqual([]);
       const overflowPx = await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth);
       expect.soft(overflowPx, `${address} scrolls sideways, ${size.name}`).toBeLessThanOrEqual(0);

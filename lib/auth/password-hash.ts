@@ -1,5 +1,5 @@
 import "server-only";
-import { Algorithm, hash, verify } from "@node-rs/argon2";
+import { type Algorithm, hash, verify } from "@node-rs/argon2";
 
 /** OWASP Password Storage Cheat Sheet (from memory): argon2id, 19 MiB, 2 passes, 1 lane. */
 const OPTIONS = { algorithm: 2 satisfies Algorithm.Argon2id, memoryCost: 19_456, timeCost: 2, parallelism: 1 };

@@ -1,5 +1,5 @@
 import { parseArgs } from "node:util";
-import { z } from "zod";
+import type { z } from "zod";
 import { migrateDatabase } from "@/db/migrate";
 import { AppError } from "@/lib/errors/app-error";
 import { listAccounts, type AccountSummary } from "@/lib/people/reads";

@@ -1,6 +1,6 @@
 import { isFew, usualSizeOf, type StackDraft } from "./draft";
 import { makeEdge, type Edge } from "./edges";
-import { labelStacks, type Component, type Label } from "./lattice";
+import { CLASH_WEIGHT, labelStacks, misfitScale, type Component, type Label } from "./lattice";
 import { LARGEST_SAME_PLACE } from "./vector";
 import { boxOf } from "./walks";
 import { inSteps, proposeSteps, type Steps } from "./lattice-steps";
@@ -72,12 +72,36 @@ function readGraph(stacks: readonly StackDraft[], pairs: readonly IndexPair[], s
     return { edges: all, steps, components: labelStacks(stacks.length, all, steps) };
   });
   const rated = graphs.map((graph) => ({ graph, rating: rateGraph(graph, few) }));
+    for (const r of rated)
+      console.log(
+        r.rating.toFixed(1),
+        JSON.stringify(r.graph.steps),
+        r.graph.components
+          .map((c) =>
+            [...c]
+              .sort((a, b) => a[0] - b[0])
+              .map(([i, l]) => i + ":" + l.row + "," + l.column)
+              .join(" "),
+          )
+          .join(" | "),
+      );
+    for (const e of all)
+      console.log(
+        e.a,
+        e.b,
+        e.x.toFixed(3),
+        e.y.toFixed(3),
+        "w",
+        e.weight.toFixed(1),
+        "z",
+        e.significance.toFixed(1),
+        "ncc",
+        e.ncc.toFixed(2),
+      );
   const best = rated.reduce((a, b) => (b.rating > a.rating + 1e-9 ? b : a));
   return best.graph;
 }
 
-/** Two stacks on one place that do not show the same weigh against a lattice as much as a clear edge. Our own. */
-const CLASH_WEIGHT = 8;
 /** Most stacks follow each other by one step; each that does speaks for a lattice like a weak edge. Our own. */
 const SINGLE_STEP_WEIGHT = 4;
 
@@ -87,6 +111,7 @@ const HOLE_WEIGHT = 2;
 /** How well a lattice explains edges, order and places: higher is better. */
 function rateGraph({ edges, steps, components: pieces }: GridGraph, few: ReadonlySet<number>): number {
   const components = pieces.map((piece) => new Map([...piece].filter(([index]) => !few.has(index))));
+  const scale = misfitScale(edges, steps);
   let rating = 0;
   const labels = new Map(
     components.flatMap((component, piece) =>
@@ -101,7 +126,7 @@ function rateGraph({ edges, steps, components: pieces }: GridGraph, few: Readonl
     const { columns, rows, misfit } = isSame ? { columns: 0, rows: 0, misfit: 0 } : inSteps(edge, steps);
     if (isSame) samePlace.add(`${edge.a} ${edge.b}`);
     if (b.column - a.column !== columns || b.row - a.row !== rows) continue;
-    rating += edge.weight * Math.exp(-((misfit / RATED_MISFIT) ** 2));
+    rating += edge.weight * Math.exp(-((misfit / scale) ** 2));
   }
   for (const component of components) {
     const box = boxOf([...component.values()]);
@@ -120,9 +145,6 @@ function rateGraph({ edges, steps, components: pieces }: GridGraph, few: Readonl
   }
   return rating;
 }
-
-/** Misfit in steps at which an edge speaks 1/e for a lattice. Our own. */
-const RATED_MISFIT = 0.3;
 
 function usualAspect(stacks: readonly StackDraft[]): number {
   const aspects = stacks.map(({ hub }) => hub.measurements.heightPx / hub.measurements.widthPx).sort((a, b) => a - b);

@@ -11,9 +11,18 @@ export interface Label {
 /** Stacks connected by edges, each with its label, in the order of the stacks' indices. */
 export type Component = ReadonlyMap<number, Label>;
 
-/** Misfit in steps at which an edge's word counts 1/e. Our own. */
-const MISFIT_SCALE = 0.35;
+/**
+ * Misfit in steps at which an edge's word counts 1/e: four times what is usual among the edges, within these bounds.
+ * On a tripod true edges fit to a few hundredths and what a row of windows feigns does not; a flown grid is looser.
+ */
+const LEAST_MISFIT_SCALE = 0.1;
+const LARGEST_MISFIT_SCALE = 0.35;
+const USUAL_MISFITS = 4;
+/** Two stacks on one place that do not show the same weigh against it as much as a clear edge. Our own. */
+export const CLASH_WEIGHT = 8;
 const MOST_SWEEPS = 12;
+/** A branch moves only for this share more. */
+const CLEARLY_BETTER = 0.01;
 /** Bounds the time on large grids. */
 const MOST_CUTS = 150;
 
@@ -33,11 +42,12 @@ interface StepEdge {
  * @returns components, the largest first; stacks without edges are components of their own
  */
 export function labelStacks(count: number, edges: readonly Edge[], steps: Steps): Component[] {
+  const scale = misfitScale(edges, steps);
   const stepEdges = edges.map((edge): StepEdge => {
     if (edge.steps) return { a: edge.a, b: edge.b, ...edge.steps, weight: edge.weight };
     if (Math.hypot(edge.x, edge.y) < LARGEST_SAME_PLACE) return { ...edge, columns: 0, rows: 0 };
     const { columns, rows, misfit } = inSteps(edge, steps);
-    return { a: edge.a, b: edge.b, columns, rows, weight: edge.weight * Math.exp(-((misfit / MISFIT_SCALE) ** 2)) };
+    return { a: edge.a, b: edge.b, columns, rows, weight: edge.weight * Math.exp(-((misfit / scale) ** 2)) };
   });
   const tree = spanningTree(count, stepEdges);
   const incident = listIncident(count, stepEdges);
@@ -49,6 +59,16 @@ export function labelStacks(count: number, edges: readonly Edge[], steps: Steps)
   return components
     .map((members) => new Map(members.map((index) => [index, all.get(index) ?? { column: 0, row: 0 }])))
     .sort((a, b) => b.size - a.size || Math.min(...a.keys()) - Math.min(...b.keys()));
+}
+
+/** Misfit in steps at which an edge counts 1/e, from the median misfit of the edges by weight. */
+export function misfitScale(edges: readonly Edge[], steps: Steps): number {
+  const moving = edges.filter((edge) => !edge.steps && Math.hypot(edge.x, edge.y) >= LARGEST_SAME_PLACE);
+  const misfits = moving.map((edge) => ({ misfit: inSteps(edge, steps).misfit, weight: edge.weight }));
+  misfits.sort((a, b) => a.misfit - b.misfit);
+  let left = misfits.reduce((sum, { weight }) => sum + weight, 0) / 2;
+  const usual = misfits.find(({ weight }) => (left -= weight) <= 0)?.misfit ?? LARGEST_MISFIT_SCALE;
+  return Math.min(LARGEST_MISFIT_SCALE, Math.max(LEAST_MISFIT_SCALE, USUAL_MISFITS * usual));
 }
 
 function spanningTree(count: number, edges: readonly StepEdge[]): StepEdge[] {
@@ -118,6 +138,9 @@ function moveBranches(
   count: number,
 ): void {
   const incident = listIncident(count, tree);
+  const samePlace = new Set(
+    edges.filter(({ columns, rows }) => columns === 0 && rows === 0).map(({ a, b }) => pairKey(a, b)),
+  );
   // The weakest tree edges are the likeliest to be wrong; the strongest need no second look.
   for (const cut of [...tree].reverse().slice(0, MOST_CUTS)) {
     const branch = branchOf(cut, incident);
@@ -133,14 +156,41 @@ function moveBranches(
       const key = `${columns} ${rows}`;
       votes.set(key, { columns, rows, weight: (votes.get(key)?.weight ?? 0) + edge.weight });
     }
-    const best = [...votes.values()].sort((p, q) => q.weight - p.weight)[0];
-    const stay = votes.get("0 0")?.weight ?? 0;
-    if (!best || best.weight <= stay * 1.01) continue;
+    const offsets = [{ columns: 0, rows: 0, weight: 0 }, ...votes.values()].map((vote) => {
+      return { ...vote, score: vote.weight - CLASH_WEIGHT * countClashes(labels, branch, vote, samePlace) };
+    });
+    const stay = Math.max(
+      ...offsets.filter(({ columns, rows }) => columns === 0 && rows === 0).map(({ score }) => score),
+    );
+    const best = offsets.reduce((p, q) => (q.score > p.score ? q : p));
+    if (best.score <= stay + CLEARLY_BETTER * Math.abs(stay)) continue;
     for (const index of branch) {
       const label = labels.get(index);
       if (label) labels.set(index, { column: label.column + best.columns, row: label.row + best.rows });
     }
   }
+}
+
+/** Places that a branch, moved by an offset, would share with stacks outside it without showing the same. */
+function countClashes(
+  labels: ReadonlyMap<number, Label>,
+  branch: ReadonlySet<number>,
+  offset: { columns: number; rows: number },
+  samePlace: ReadonlySet<string>,
+): number {
+  const outside = new Map<string, number>();
+  for (const [index, label] of labels) if (!branch.has(index)) outside.set(`${label.column} ${label.row}`, index);
+  let clashes = 0;
+  for (const index of branch) {
+    const label = labels.get(index);
+    const other = label && outside.get(`${label.column + offset.columns} ${label.row + offset.rows}`);
+    if (other !== undefined && !samePlace.has(pairKey(index, other))) clashes++;
+  }
+  return clashes;
+}
+
+function pairKey(a: number, b: number): string {
+  return `${Math.min(a, b)} ${Math.max(a, b)}`;
 }
 
 function branchOf(cut: StepEdge, incident: readonly (readonly StepEdge[])[]): Set<number> {

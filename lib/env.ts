@@ -77,7 +77,7 @@ export function environment(): Environment {
 
 /** Where the command was given: npm runs scripts in the project's folder and says in INIT_CWD where it was called. */
 export function callerFolder(): string {
-  return path.resolve(process.env.INIT_CWD ?? process.cwd());
+  return path.resolve(/* turbopackIgnore: true */ process.env.INIT_CWD ?? process.cwd());
 }
 
 /** next-auth reads its own address from the environment only; it is always APP_URL. */

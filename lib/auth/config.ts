@@ -17,7 +17,8 @@ export function authOptions(): NextAuthOptions {
     secret: authSecret(),
     session: { strategy: "jwt", maxAge: SESSION_SECONDS },
     useSecureCookies: environment().appUrl.startsWith("https://"),
-    pages: { signIn: "/sign-in", error: "/sign-in" },
+    // signOut: only where somebody types next-auth's own address of it; the account page has the button.
+    pages: { signIn: "/sign-in", error: "/sign-in", signOut: "/account" },
     providers: [
       CredentialsProvider({
         credentials: { email: { type: "email" }, password: { type: "password" } },

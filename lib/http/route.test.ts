@@ -11,7 +11,7 @@ const call = (handler: () => Promise<Response>, params: object = { projectId: "p
 
 // interfaces.md: Origin, if sent, must be APP_URL's or the request's own Host; without it, allowed unless
 // Sec-Fetch-Site says cross-site. APP_URL is http://127.0.0.1:3000 here.
-test.each([
+test.each<Record<string, string>>([
   {},
   { origin: "http://127.0.0.1:3000" },
   { origin: "http://yard:8080", host: "yard:8080" },
@@ -20,17 +20,17 @@ test.each([
   // A proxy may speak HTTPS to the browser: the host is what counts.
   { origin: "https://yard.example", host: "yard.example" },
 ])("a change with %j is let through", (headers) => {
-  expect(() => checkOrigin(new Headers(headers as Record<string, string>))).not.toThrow();
+  expect(() => checkOrigin(new Headers(headers))).not.toThrow();
 });
 
-test.each([
+test.each<Record<string, string>>([
   { origin: "https://elsewhere.example", host: "yard.example" },
   { origin: "http://127.0.0.1:3001" },
   { origin: "null", host: "yard.example" },
   { origin: "", host: "yard.example" },
   { "sec-fetch-site": "cross-site" },
 ])("a change with %j is refused", (headers) => {
-  const check = () => checkOrigin(new Headers(headers as Record<string, string>));
+  const check = () => checkOrigin(new Headers(headers));
   expect(check).toThrow(expect.objectContaining({ code: "cross_site", status: 403 }));
 });
 

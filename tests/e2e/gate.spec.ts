@@ -12,6 +12,8 @@ interface PageRule {
   readonly path: string;
   /** What a person who may gets: 200, or where the page leads on to. */
   readonly answer: 200 | RegExp;
+  /** Where it leads somebody who is signed in; absent: the same. */
+  readonly signedIn?: RegExp;
   /** product.md: view for every member, manage for leads only. everybody: no session is asked for. */
   readonly audience: "everybody" | "signed in" | "view" | "manage";
 }
@@ -21,7 +23,12 @@ const SIGN_IN = /\/sign-in(\?|$)/;
 /** Every page of the product; a new one without an entry fails. PROJECT stands for the project's id. */
 const PAGES: Readonly<Record<string, PageRule>> = {
   "(public)/first-account/page.tsx": { path: "/first-account", answer: SIGN_IN, audience: "everybody" },
-  "(public)/sign-in/page.tsx": { path: "/sign-in", answer: 200, audience: "everybody" },
+  "(public)/sign-in/page.tsx": {
+    path: "/sign-in",
+    answer: 200,
+    signedIn: /\/projects$/,
+    audience: "everybody",
+  },
   "(signed-in)/account/page.tsx": { path: "/account", answer: 200, audience: "signed in" },
   "(signed-in)/projects/page.tsx": { path: "/projects", answer: 200, audience: "signed in" },
   "(signed-in)/projects/new/page.tsx": { path: "/projects/new", answer: 200, audience: "signed in" },
@@ -52,10 +59,14 @@ const PAGES: Readonly<Record<string, PageRule>> = {
 /** Statuses of the table of rights; undefined: may. */
 function refusal(audience: PageRule["audience"], asker: Asker): 307 | 403 | 404 | undefined {
   if (audience === "everybody") return undefined;
-  if (asker === "nobody" || asker === "forger" || asker === "editor whose session has ended") return 307;
+  if (!hasSession(asker)) return 307;
   if (audience === "signed in") return undefined;
   if (asker === "lead of another project" || asker === "administrator who is no member") return 404;
   return audience === "manage" && asker !== "lead" ? 403 : undefined;
+}
+
+function hasSession(asker: Asker): boolean {
+  return asker !== "nobody" && asker !== "forger" && asker !== "editor whose session has ended";
 }
 
 const PROJECT_NAME = "Quiet estuary 7391";
@@ -77,8 +88,9 @@ async function expectAnswer(response: APIResponse, rule: PageRule, asker: Asker)
     if (refused !== 403) expect.soft(text.includes(PROJECT_NAME), `${what} names the project`).toBe(false);
     return;
   }
-  expect.soft(response.status(), what).toBe(rule.answer === 200 ? 200 : 307);
-  if (rule.answer !== 200) expect.soft(response.headers().location, what).toMatch(rule.answer);
+  const answer = hasSession(asker) ? (rule.signedIn ?? rule.answer) : rule.answer;
+  expect.soft(response.status(), what).toBe(answer === 200 ? 200 : 307);
+  if (answer !== 200) expect.soft(response.headers().location, what).toMatch(answer);
 }
 
 test("every page of the product is in the list", () => {

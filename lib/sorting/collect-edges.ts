@@ -72,32 +72,6 @@ function readGraph(stacks: readonly StackDraft[], pairs: readonly IndexPair[], s
     return { edges: all, steps, components: labelStacks(stacks.length, all, steps) };
   });
   const rated = graphs.map((graph) => ({ graph, rating: rateGraph(graph, few) }));
-    for (const r of rated)
-      console.log(
-        r.rating.toFixed(1),
-        JSON.stringify(r.graph.steps),
-        r.graph.components
-          .map((c) =>
-            [...c]
-              .sort((a, b) => a[0] - b[0])
-              .map(([i, l]) => i + ":" + l.row + "," + l.column)
-              .join(" "),
-          )
-          .join(" | "),
-      );
-    for (const e of all)
-      console.log(
-        e.a,
-        e.b,
-        e.x.toFixed(3),
-        e.y.toFixed(3),
-        "w",
-        e.weight.toFixed(1),
-        "z",
-        e.significance.toFixed(1),
-        "ncc",
-        e.ncc.toFixed(2),
-      );
   const best = rated.reduce((a, b) => (b.rating > a.rating + 1e-9 ? b : a));
   return best.graph;
 }

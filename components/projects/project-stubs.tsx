@@ -31,12 +31,15 @@ export function ProjectStubs({ project }: ProjectStubsProps) {
             className="block h-full px-4 py-2 -outline-offset-4 hover:bg-tray max-sm:px-2"
           >
             <span className="block text-sm font-semibold">{title}</span>
-            <span className={classNames("figures block text-sm", isOchre ? "font-semibold text-ochre" : "text-quiet")}>
+            <span
+              className={classNames(
+                "figures flex flex-wrap gap-x-[1ch] text-sm",
+                isOchre ? "font-semibold text-ochre" : "text-quiet",
+              )}
+            >
               {/* On a phone the line breaks between the counts before it breaks inside one. */}
               {texts.map((text) => (
-                <span key={text} className="inline-block pr-[1ch]">
-                  {text}
-                </span>
+                <span key={text}>{text}</span>
               ))}
             </span>
           </Link>

@@ -1,7 +1,7 @@
 "use client";
 
 import { useVirtualizer } from "@tanstack/react-virtual";
-import { useEffect, useMemo, useRef, useState, type KeyboardEvent } from "react";
+import { useCallback, useEffect, useMemo, useRef, useState, type KeyboardEvent } from "react";
 import { Bench, LooseBench } from "@/components/board/bench";
 import { ColumnNumbers } from "@/components/board/column-numbers";
 import { gridLines, neighbourTile, type GridLine } from "@/components/board/grid-rows";
@@ -34,11 +34,11 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked }: TileGri
   }, [index]);
   const { projectId, grid } = index.board;
   const widthPx = (size?.width ?? 0) - WELL_PADDING_PX;
-  const layout = layoutBoard({
-    columns: grid.columns,
-    widthPx,
-    aspect: geometry.steps.acrossPx / geometry.steps.downPx,
-  });
+  const layout = useMemo(() => {
+    const aspect = geometry.steps.acrossPx / geometry.steps.downPx;
+    return layoutBoard({ columns: grid.columns, widthPx, aspect });
+  }, [grid.columns, widthPx, geometry]);
+  const partOf = useCallback((tile: BoardTile) => picturePart(tile, geometry.steps, geometry.origin), [geometry]);
   const lines = useMemo(() => gridLines(index, chosen), [index, chosen]);
   const seams = useMemo(() => seamMarksByRow(index, isAllSeams), [index, isAllSeams]);
   const rowHeightPx = layout.pictureHeightPx + layout.captionHeightPx + layout.gapPx;
@@ -53,6 +53,15 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked }: TileGri
   });
   useEffect(() => virtualizer.measure(), [virtualizer, rowHeightPx]);
   useShowChosen({ lines, chosen, scroller, scrollTo: (at) => virtualizer.scrollToIndex(at, { align: "auto" }) });
+
+  const scrollerRef = useCallback(
+    (element: HTMLDivElement | null) => {
+      scroller.current = element;
+      setScrollerElement(element);
+      return sizeRef(element);
+    },
+    [sizeRef],
+  );
 
   const items = virtualizer.getVirtualItems();
   const tabStop = findTabStop({ index, chosen, lines: items.flatMap((item) => lines[item.index] ?? []) });
@@ -75,11 +84,7 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked }: TileGri
 
   return (
     <div
-      ref={(element) => {
-        scroller.current = element;
-        setScrollerElement(element);
-        return sizeRef(element);
-      }}
+      ref={scrollerRef}
       role="group"
       aria-label="Board: arrow keys move from tile to tile, Enter opens a tile"
       onKeyDown={onKeyDown}
@@ -99,15 +104,14 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked }: TileGri
             <div
               key={item.key}
               data-index={item.index}
-              ref={virtualizer.measureElement}
+              // The height of a row is known; measuring every row would draw the sheet anew for each.
+              ref={line.kind === "row" ? undefined : virtualizer.measureElement}
               className={line.kind === "row" ? "absolute top-0 left-0" : "absolute top-0 left-0 z-20 w-full"}
               style={{ transform: `translateY(${item.start}px)` }}
             >
               <Line
-                {...{ line, index, layout, chosen, onChoose, asked, tabStop, widthPx }}
-                marks={line.kind === "row" ? (seams.get(line.row) ?? []) : []}
-                partOf={(tile) => picturePart(tile, geometry.steps, geometry.origin)}
-                projectId={projectId}
+                {...{ line, index, layout, chosen, onChoose, asked, tabStop, widthPx, partOf, projectId }}
+                marks={(line.kind === "row" && seams.get(line.row)) || NO_MARKS}
               />
             </div>
           ) : null;
@@ -116,6 +120,8 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked }: TileGri
     </div>
   );
 }
+
+const NO_MARKS: Parameters<typeof TileRow>[0]["marks"] = [];
 
 interface LineProps extends Omit<TileGridProps, "isAllSeams"> {
   readonly line: GridLine;
@@ -148,8 +154,17 @@ function Line({ line, widthPx, ...rest }: LineProps) {
       />
     );
   }
-  if (line.kind === "row") return <TileRow row={line.row} {...rest} />;
-  return <TileRow tiles={line.tiles} isFirst={line.isFirst} {...rest} />;
+  if (line.kind === "unplaced") return <TileRow tiles={line.tiles} isFirst={line.isFirst} {...rest} />;
+  // A row is told only what concerns it, so that choosing a tile draws two rows anew and not all of them.
+  const isHere = (name: string | null) => name !== null && index.tiles.get(name)?.row === line.row;
+  return (
+    <TileRow
+      row={line.row}
+      {...rest}
+      chosen={isHere(rest.chosen) ? rest.chosen : null}
+      tabStop={isHere(rest.tabStop) ? rest.tabStop : null}
+    />
+  );
 }
 
 /** The chosen tile where it is drawn, else the first tile that is: one of the grid is always in the tab order. */

@@ -1,3 +1,4 @@
+import { memo } from "react";
 import { Hole } from "@/components/board/hole";
 import { SeamChips } from "@/components/board/seam-chips";
 import { Tile } from "@/components/board/tile";
@@ -26,7 +27,7 @@ interface TileRowProps {
 }
 
 /** One row of places: its letter, its tiles and holes, the overlaps on its seams. */
-export function TileRow({ row, tiles = [], isFirst = false, ...rest }: TileRowProps) {
+export const TileRow = memo(function TileRow({ row, tiles = [], isFirst = false, ...rest }: TileRowProps) {
   const { index, layout, projectId } = rest;
   const names =
     row === undefined
@@ -84,4 +85,4 @@ export function TileRow({ row, tiles = [], isFirst = false, ...rest }: TileRowPr
       </div>
     </>
   );
-}
+});

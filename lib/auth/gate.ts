@@ -35,14 +35,6 @@ export async function requireUser(): Promise<SignedInUser> {
   return user;
 }
 
-/** @throws AppError unauthenticated or forbidden */
-export async function requireAdministrator(): Promise<SignedInUser> {
-  const user = await requireUser();
-  if (!user.isAdministrator)
-    throw new AppError("forbidden", "Only the administrator of this installation may do this.");
-  return user;
-}
-
 /**
  * The one authorisation gate of projects. The role comes from the database, never from the cookie.
  * A project in the archive can only be looked at, unless `evenArchived` (taking it out, deleting it).

@@ -1,5 +1,5 @@
 // @vitest-environment jsdom
-import { cleanup, render, screen } from "@testing-library/react";
+import { cleanup, configure, render, screen } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { afterEach, beforeEach, expect, test, vi } from "vitest";
 import { SignInForm } from "@/components/account/sign-in-form";
@@ -19,6 +19,9 @@ async function signIn(): Promise<void> {
   await user.type(screen.getByLabelText("Password"), "not the right words");
   await user.click(screen.getByRole("button", { name: "Sign in" }));
 }
+
+// A loaded machine takes its time; what is waited for comes or the test fails.
+configure({ asyncUtilTimeout: 20_000 });
 
 beforeEach(() => {
   render(<SignInForm returnPath="/projects" />);

@@ -1,11 +1,14 @@
 // @vitest-environment jsdom
-import { cleanup, render, screen } from "@testing-library/react";
+import { cleanup, configure, render, screen } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { afterEach, expect, test, vi } from "vitest";
 import { DeleteDialog } from "@/components/projects/delete-dialog";
 import type { FormState } from "@/lib/http/form-state";
 
 const PROJECT = { id: "p1", name: "Harbour front", frames: 108, bytes: 3_100_000_000 };
+
+// A loaded machine takes its time; what is waited for comes or the test fails.
+configure({ asyncUtilTimeout: 20_000 });
 
 afterEach(cleanup);
 

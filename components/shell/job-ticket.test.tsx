@@ -1,6 +1,6 @@
 // @vitest-environment jsdom
 import { QueryClient, QueryClientProvider } from "@tanstack/react-query";
-import { cleanup, render, screen } from "@testing-library/react";
+import { cleanup, configure, render, screen } from "@testing-library/react";
 import { afterEach, beforeEach, expect, test, vi } from "vitest";
 import { JobTicket } from "@/components/shell/job-ticket";
 
@@ -8,6 +8,9 @@ vi.mock("next/navigation", () => ({ usePathname: () => "/projects/p1/board" }));
 
 const PROGRESS = { received: 108, analysed: 108, failed: 0, total: 108, sorted: true };
 const STATUS = { tiles: 17, openQuestions: 3, rows: 3, columns: 6 };
+
+// A loaded machine takes its time; what is waited for comes or the test fails.
+configure({ asyncUtilTimeout: 20_000 });
 
 beforeEach(() => {
   // jsdom has no event streams; nothing arrives on this one.

@@ -1,0 +1,170 @@
+import * as fc from "fast-check";
+import { describe, expect, test } from "vitest";
+import { applyChanges, ChangeConflict, invertChanges, type Change } from "@/lib/board/changes";
+import { boardCommandSchema, type PlannedCommand } from "@/lib/board/command-schema";
+import type { Board } from "@/lib/board/model";
+import { planCommand } from "@/lib/board/plan-command";
+import { makeEventfulBoard } from "@/tests/support/make-board";
+
+const START: Board = canonical(withSecondTake(makeEventfulBoard()));
+const FRAME_IDS = START.frames.map(({ id }) => id);
+const STACK_IDS = START.stacks.map(({ id }) => id);
+
+/** Any command on the board's own frames and stacks, most of them possible, some not. */
+function anyCommand(): fc.Arbitrary<PlannedCommand> {
+  const frameIds = fc.uniqueArray(fc.constantFrom(...FRAME_IDS), { minLength: 1, maxLength: 4 });
+  const stackId = fc.constantFrom(...STACK_IDS, "new-1", "new-2");
+  const place = fc.record({ row: fc.integer({ min: 1, max: 5 }), column: fc.integer({ min: 1, max: 8 }) });
+  const axis = fc.constantFrom("row", "column");
+  const at = fc.integer({ min: 1, max: 7 });
+  const newId = fc.constantFrom("new-1", "new-2", "new-3");
+  const body: fc.Arbitrary<Record<string, unknown>> = fc.oneof(
+    fc.record({ type: fc.constant("move-frames"), frameIds, to: fc.record({ kind: fc.constant("stack"), stackId }) }),
+    fc.record({ type: fc.constant("move-frames"), frameIds, to: fc.constant({ kind: "loose" }) }),
+    fc.record({
+      type: fc.constant("move-frames"),
+      frameIds,
+      to: fc.record({ kind: fc.constant("new-stack"), stackId: newId, place: fc.option(place) }),
+    }),
+    fc.record({
+      type: fc.constant("split-stack"),
+      stackId,
+      atFrameId: fc.constantFrom(...FRAME_IDS),
+      newStackId: newId,
+      place: fc.option(place),
+    }),
+    fc.record({
+      type: fc.constant("merge-stacks"),
+      intoStackId: stackId,
+      stackIds: fc.uniqueArray(stackId, { minLength: 1, maxLength: 2 }),
+    }),
+    fc.record({
+      type: fc.constant("place-stack"),
+      stackId,
+      place: fc.option(place),
+      occupied: fc.constantFrom("refuse", "swap", "push", "take"),
+    }),
+    fc.record({ type: fc.constant("set-aside"), frameIds, reason: fc.constantFrom("soft", "by hand") }),
+    fc.record({ type: fc.constant("bring-back"), frameIds }),
+    fc.record({ type: fc.constant("choose-reference"), stackId, frameId: fc.constantFrom(...FRAME_IDS) }),
+    fc.record({ type: fc.constant("choose-take"), stackId }),
+    fc.record({ type: fc.constant("add-line"), axis, at }),
+    fc.record({ type: fc.constant("remove-line"), axis, at }),
+    fc.record({
+      type: fc.constant("settle"),
+      target: fc.record({
+        kind: fc.constant("question"),
+        questionId: fc.constantFrom(...START.questions.map(({ id }) => id)),
+        answer: fc.constantFrom(null, 0, 1),
+        newStackId: newId,
+      }),
+    }),
+    fc.record({
+      type: fc.constant("assign"),
+      stackIds: fc.constant([STACK_IDS[0]]),
+      userId: fc.constantFrom(null, "u1"),
+    }),
+  );
+  return body.map((fields) => {
+    const command = boardCommandSchema.parse({ id: crypto.randomUUID(), revision: 0, ...fields });
+    if (command.type === "undo") throw new Error("not made here");
+    return command;
+  });
+}
+
+interface Step {
+  readonly before: Board;
+  readonly changes: readonly Change[];
+  readonly after: Board;
+}
+
+/** Applies commands one after another as the server would: refused ones change nothing. */
+function run(commands: readonly PlannedCommand[]): Step[] {
+  const steps: Step[] = [];
+  let board = START;
+  for (const command of commands) {
+    try {
+      const changes = planCommand(board, command);
+      const after = applyChanges(board, changes);
+      steps.push({ before: board, changes, after });
+      board = after;
+    } catch (error) {
+      if (!(error instanceof ChangeConflict)) throw error;
+    }
+  }
+  return steps;
+}
+
+describe("any sequence of commands", () => {
+  test("taken back in reverse gives the board that it started from", () => {
+    fc.assert(
+      fc.property(fc.array(anyCommand(), { maxLength: 12 }), (commands) => {
+        for (const { before, changes, after } of run(commands)) {
+          expect(applyChanges(after, invertChanges(changes))).toEqual(before);
+        }
+      }),
+      { numRuns: 300 },
+    );
+  });
+
+  test("leaves every frame in exactly one place, every place with one stack a take and one chosen take", () => {
+    fc.assert(
+      fc.property(fc.array(anyCommand(), { maxLength: 12 }), (commands) => {
+        for (const { after } of run(commands)) expectWhole(after);
+      }),
+      { numRuns: 300 },
+    );
+  });
+
+  test("changes neither the board that it is applied to nor the record", () => {
+    fc.assert(
+      fc.property(anyCommand(), (command) => {
+        const frozen = JSON.stringify(START);
+        run([command]);
+        expect(JSON.stringify(START)).toBe(frozen);
+      }),
+    );
+  });
+});
+
+function expectWhole(board: Board): void {
+  expect(board.frames.map(({ id }) => id).sort()).toEqual([...FRAME_IDS].sort());
+  const stackIds = new Set(board.stacks.map(({ id }) => id));
+  const held = new Set(board.frames.map(({ stackId }) => stackId));
+  for (const { stackId } of board.frames) if (stackId !== null) expect(stackIds).toContain(stackId);
+  const places = new Map<string, number>();
+  const takes = new Set<string>();
+  for (const stack of board.stacks) {
+    expect(held, `stack ${stack.id} has frames`).toContain(stack.id);
+    expect(stack.row === null).toBe(stack.column === null);
+    if (stack.row === null || stack.column === null) continue;
+    expect(stack.row).toBeLessThanOrEqual(board.grid.rows);
+    expect(stack.column).toBeLessThanOrEqual(board.grid.columns);
+    const place = `${stack.row}/${stack.column}`;
+    expect(takes).not.toContain(`${place}/${stack.take}`);
+    takes.add(`${place}/${stack.take}`);
+    places.set(place, (places.get(place) ?? 0) + Number(stack.isChosenTake));
+  }
+  for (const [place, chosen] of places) expect(chosen, `chosen takes at ${place}`).toBe(1);
+  for (const stack of board.stacks) {
+    if (stack.referenceId === null) continue;
+    const reference = board.frames.find(({ id }) => id === stack.referenceId);
+    expect(reference?.stackId).toBe(stack.id);
+  }
+}
+
+/** The second take gets two frames of its own: a stack on the board holds at least one. */
+function withSecondTake(board: Board): Board {
+  const second = board.stacks.find(({ take }) => take === 2);
+  const [reference, other] = board.frames.filter(({ stackId }) => stackId === null);
+  if (!second || !reference || !other) throw new Error("the eventful board has a second take and loose frames");
+  const stacks = board.stacks.map((stack) => (stack === second ? { ...stack, referenceId: reference.id } : stack));
+  const frames = board.frames.map((frame) =>
+    frame === reference || frame === other ? { ...frame, stackId: second.id } : frame,
+  );
+  return { ...board, stacks, frames };
+}
+
+function canonical(board: Board): Board {
+  return applyChanges(board, []);
+}

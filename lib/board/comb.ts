@@ -1,8 +1,7 @@
 import { median } from "@/lib/board/board-index";
 import type { BoardFrame } from "@/lib/board/model";
+import { SOFT_LIMIT } from "@/lib/sorting/types";
 
-/** Log ratio to the stack's median under which a frame is soft (analysis.md, method 7). */
-const SOFT_LIMIT_LOG = -0.2;
 /** A bar that can still be seen, share of the comb's height. */
 const STUB = 0.12;
 
@@ -23,7 +22,7 @@ export function combBars(frames: readonly BoardFrame[]): CombBar[] {
     relativeSharpness !== null && setAside === null ? [relativeSharpness] : [],
   );
   const best = Math.max(0, ...known);
-  const limit = (median(known) ?? 0) * Math.exp(SOFT_LIMIT_LOG);
+  const limit = (median(known) ?? 0) * Math.exp(SOFT_LIMIT);
   return frames.map(({ id, relativeSharpness, setAside }) => ({
     frameId: id,
     isSetAside: setAside !== null,

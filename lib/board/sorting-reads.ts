@@ -7,10 +7,14 @@ import { projects } from "@/db/schema/projects";
 import type { ProjectAccess } from "@/lib/auth/gate";
 import type { FileId } from "@/lib/ids";
 import { stemOf } from "@/lib/intake/picture-files";
-import type { FixedStack, SortFacts, SortFrame, SortInput, SortOptions } from "@/lib/sorting/types";
-
-/** Log ratio to the stack's median sharpness under which a frame is soft. Source: analysis.md, Method, 7. */
-const SOFT_LIMIT = -0.2;
+import {
+  type FixedStack,
+  SOFT_LIMIT,
+  type SortFacts,
+  type SortFrame,
+  type SortInput,
+  type SortOptions,
+} from "@/lib/sorting/types";
 
 /** What a sorting works on, and the state of the project that it was read at. */
 export interface SortBasis {

@@ -65,13 +65,17 @@ export function streamEvents(access: ProjectAccess, options: StreamOptions): Rea
         controller.close();
       };
       options.signal.addEventListener("abort", close, { once: true });
-      const seen = { id: options.afterId ?? (await findNewestId()) };
+      const afterId = options.afterId ?? (await findNewestId());
+      const seen = { id: afterId };
       const tell: Listener = ({ id, projectId, event }) => {
         if (projectId !== access.projectId || id <= seen.id) return;
         seen.id = id;
         send(format(id, event));
       };
-      releases.push(await subscribe(tell));
+      // What happens while the backlog is read waits: told first, it would make the older events count as seen.
+      let held: EventRow[] | null = [];
+      const hear: Listener = (row) => (held ? void held.push(row) : tell(row));
+      releases.push(await subscribe(hear));
       const keepAlive = setInterval(() => {
         send(": still here\n\n");
         void options.mayListen().then((may) => may || close(), close);
@@ -82,7 +86,10 @@ export function streamEvents(access: ProjectAccess, options: StreamOptions): Rea
       if (isOver) return end();
       // The id goes out at once: a page whose connection breaks before the first event resumes from here.
       send(`id: ${seen.id}\n: open\n\n`);
-      if (options.afterId !== null) await sendBacklog(access.projectId, options.afterId, tell);
+      await sendBacklog(access.projectId, afterId, tell);
+      const waiting = held;
+      held = null;
+      waiting.forEach(tell);
     },
     cancel: end,
   });

@@ -106,13 +106,13 @@ export async function renewLeases(workerId: string, tokens: readonly string[], n
 
 /** Marks a job done; one asked for again while it ran waits for its next run. Only the holder of the lease can. */
 export async function finishJob(job: ClaimedJob, nowMs: number): Promise<void> {
-  const wasAskedAgain = sql`${jobs.runAfterMs} <> ${job.runAfterMs}`;
+  const isAskedAgain = wasAskedAgain(job);
   await writeTransaction((tx) =>
     tx
       .update(jobs)
       .set({
-        state: sql`case when ${wasAskedAgain} then 'waiting' else 'done' end`,
-        attempts: sql`case when ${wasAskedAgain} then 0 else ${jobs.attempts} end`,
+        state: sql`case when ${isAskedAgain} then 'waiting' else 'done' end`,
+        attempts: sql`case when ${isAskedAgain} then 0 else ${jobs.attempts} end`,
         leaseToken: null,
         leaseUntilMs: null,
         error: null,
@@ -138,15 +138,21 @@ export async function giveBackJob(job: ClaimedJob, runAfterMs: number): Promise<
   );
 }
 
-/** Records a failed try: it waits twice as long each time, and after the last is given up. */
+/**
+ * Records a failed try: it waits twice as long each time, and after the last is given up. One asked for again while it
+ * ran begins anew instead: what it was asked for is no longer what failed.
+ */
 export async function failJob(job: ClaimedJob, error: string, nowMs: number): Promise<void> {
   const isLast = job.attempts >= MOST_ATTEMPTS;
+  const isAskedAgain = wasAskedAgain(job);
+  const retryAtMs = nowMs + FIRST_RETRY_MS * 2 ** (job.attempts - 1);
   await writeTransaction((tx) =>
     tx
       .update(jobs)
       .set({
-        state: isLast ? "failed" : "waiting",
-        runAfterMs: nowMs + FIRST_RETRY_MS * 2 ** (job.attempts - 1),
+        state: sql`case when ${isAskedAgain} then 'waiting' else ${isLast ? "failed" : "waiting"} end`,
+        attempts: sql`case when ${isAskedAgain} then 0 else ${jobs.attempts} end`,
+        runAfterMs: sql`case when ${isAskedAgain} then ${jobs.runAfterMs} else ${retryAtMs} end`,
         error,
         leaseToken: null,
         leaseUntilMs: null,
@@ -172,6 +178,10 @@ export async function findWorkerSeenAtMs(): Promise<number | null> {
     .select({ seenAtMs: sql<number | null>`max(${workers.seenAtMs})` })
     .from(workers);
   return row?.seenAtMs ?? null;
+}
+
+function wasAskedAgain(job: ClaimedJob) {
+  return sql`${jobs.runAfterMs} <> ${job.runAfterMs}`;
 }
 
 function isHeld(job: ClaimedJob) {

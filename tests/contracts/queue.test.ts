@@ -116,6 +116,19 @@ test("a failing job is tried again, later each time, and given up in the end", a
   expect(await claim(nowMs)).toMatchObject({ attempts: 1 });
 });
 
+test("asking while the last try fails begins anew", async () => {
+  await ask("a");
+  let job = await claim();
+  for (let attempt = 1; attempt < MOST_ATTEMPTS; attempt += 1) {
+    await failJob(job, "no luck", NOW);
+    job = await claim(NOW + 60_000);
+  }
+  expect(job.attempts).toBe(MOST_ATTEMPTS);
+  await ask("a", 10, NOW + 60_000);
+  await failJob(job, "no luck", NOW + 60_020);
+  expect(await claim(NOW + 60_020)).toMatchObject({ id: job.id, attempts: 1 });
+});
+
 test("a job given back untried keeps its tries", async () => {
   await ask("a");
   await giveBackJob(await claim(), NOW + 50);

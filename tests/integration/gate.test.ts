@@ -1,6 +1,5 @@
 // Before anything that reads cookies.
 import { makeProject } from "../support/people";
-import { setTimeout as delay } from "node:timers/promises";
 import { eq } from "drizzle-orm";
 import { describe, expect, test } from "vitest";
 import { writeTransaction } from "@/db/client";
@@ -32,19 +31,10 @@ const REFUSALS: Record<Audience, Partial<Record<Asker, number>>> = {
 };
 const CODES: Record<number, string> = { 401: "unauthenticated", 403: "forbidden", 404: "not_found" };
 
-const POLLER_RESTS_MS = 300;
-
 type RouteModule = Record<string, (request: Request, context: { params: Promise<object> }) => Promise<Response>>;
 
 async function loadRoute(file: string): Promise<RouteModule> {
   return (await import(`../../app/${file}`)) as RouteModule;
-}
-
-/** Of an answer whose body is of no interest. */
-async function letGo(response: Response): Promise<void> {
-  await response.body?.cancel();
-  // The stream's poller looks at the database once more, which the next test replaces.
-  if (response.headers.get("content-type") === "text/event-stream") await delay(POLLER_RESTS_MS);
 }
 
 async function makeCall(file: string, call: GateCall, target: Target): Promise<Response> {
@@ -73,7 +63,7 @@ describe.each(CALLS)("$call.method $file", ({ file, call }) => {
     const refusal = REFUSALS[call.audience][asker];
     expect(response.status).toBe(refusal ?? call.status);
     if (refusal === undefined) {
-      await letGo(response);
+      await response.body?.cancel();
       return;
     }
     expect(response.headers.get("content-type")).toContain("application/problem+json");
@@ -111,7 +101,7 @@ test.each(LOOKS)("a project in the archive still answers $call.method $file to i
   await writeTransaction((tx) => tx.update(projects).set({ archivedAtMs: 1 }).where(eq(projects.id, yard.projectId)));
   const response = await makeCall(file, call, yard);
   expect(response.status).toBe(call.status);
-  await letGo(response);
+  await response.body?.cancel();
 });
 
 test.each(LOOKS)("an id that is none answers 404 to $call.method $file", async ({ file, call }) => {

@@ -1,6 +1,7 @@
 import { copyFileSync, mkdirSync, mkdtempSync, readdirSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import path from "node:path";
+import { setTimeout as delay } from "node:timers/promises";
 import { sql } from "drizzle-orm";
 import { afterAll, beforeAll, beforeEach } from "vitest";
 import { closeDatabase, database } from "@/db/client";
@@ -25,6 +26,7 @@ export function useDatabase(): string {
     copyFileSync(path.join(storageDir, "stackyard.db"), base);
   });
   beforeEach(async () => {
+    await letPollerRest();
     await closeDatabase();
     mkdirSync(storageDir, { recursive: true });
     // Folders stay: the upload store makes its own in the background and must not meet their going.
@@ -34,8 +36,17 @@ export function useDatabase(): string {
     copyFileSync(base, path.join(storageDir, "stackyard.db"));
   });
   afterAll(async () => {
+    await letPollerRest();
     await closeDatabase();
     rmSync(root, { recursive: true });
   });
   return storageDir;
+}
+
+const holder: { stackyardPoller?: { readonly timer: NodeJS.Timeout | null } } = globalThis as object;
+
+/** After its last page the poller of events looks at the database once more; not while that is being replaced. */
+async function letPollerRest(): Promise<void> {
+  const untilMs = Date.now() + 1000;
+  while (holder.stackyardPoller?.timer && Date.now() < untilMs) await delay(20);
 }

@@ -31,7 +31,8 @@ export function Tile({ projectId, tile, part, layout, isChosen, isTabStop, isAsk
       onClick={() => onChoose(tile.name)}
       style={{ width: layout.tileWidthPx }}
       className={classNames(
-        "relative block shrink-0 text-left outline-offset-0 focus-visible:z-10 focus-visible:outline-3 focus-visible:outline-ink focus-visible:ring-6 focus-visible:ring-paper",
+        // The numbers stay above: what is scrolled to must not end up under them.
+        "relative block shrink-0 scroll-mt-12 scroll-mb-3 text-left outline-offset-0 focus-visible:z-10 focus-visible:outline-3 focus-visible:outline-ink focus-visible:ring-6 focus-visible:ring-paper",
         isChosen && "z-20 outline-3 outline-petrol ring-5 ring-paper",
         !isChosen && isAsked && "z-10 outline-2 outline-dashed outline-ochre ring-4 ring-ochre-wash",
       )}

@@ -1,5 +1,5 @@
 import "server-only";
-import { mkdtemp, readdir, rm } from "node:fs/promises";
+import { mkdtemp, rm } from "node:fs/promises";
 import { tmpdir } from "node:os";
 import path from "node:path";
 import { z } from "zod";
@@ -20,11 +20,16 @@ export const DEMO_PROJECT_NAME = "Harbour front at low tide";
 const UPLOADS_AT_ONCE = 3;
 const POLL_MS = 500;
 
+interface WrittenFrame {
+  readonly file: string;
+  readonly total: number;
+}
+
 export interface DemoMaking {
   /** Where the product answers on this machine. */
   readonly address: string;
-  /** Writes the demo's frames into a folder. */
-  readonly makeShoot: (folder: string) => Promise<unknown>;
+  /** Writes the demo's frames into a folder and tells of each one that is there ("/" between names). */
+  readonly makeShoot: (folder: string, onWritten: (frame: WrittenFrame) => void) => Promise<unknown>;
   readonly say: (sentence: string) => void;
   /** Called once people can sign in with them. */
   readonly onAccounts: () => void;
@@ -41,9 +46,8 @@ export async function makeDemo({ address, makeShoot, say, onAccounts }: DemoMaki
   const projectId = await findOrMakeProject(session);
   const folder = await mkdtemp(path.join(tmpdir(), "stackyard-demo-"));
   try {
-    say("drawing its frames");
-    await makeShoot(folder);
-    await bringIn({ session, projectId, folder, say });
+    say("drawing its frames, and bringing them in as they come");
+    await bringIn({ session, projectId, folder, makeShoot, say });
   } finally {
     await rm(folder, { recursive: true, force: true });
   }
@@ -83,45 +87,52 @@ async function makeProject(session: HttpSession): Promise<ProjectId> {
   return (await callJson(session, "/api/projects", { schema: z.object({ id: projectIdSchema }), body })).id;
 }
 
-interface BringIn {
+interface BringIn extends Pick<DemoMaking, "makeShoot" | "say"> {
   readonly session: HttpSession;
   readonly projectId: ProjectId;
   readonly folder: string;
-  readonly say: (sentence: string) => void;
 }
 
-async function bringIn({ session, projectId, folder, say }: BringIn): Promise<void> {
+async function bringIn({ session, projectId, folder, makeShoot, say }: BringIn): Promise<void> {
   const earlier = await listDemoUploads(projectId);
   for (const upload of earlier) if (!upload.isFinished) await terminateUpload(session, upload.id);
-  const isIn = new Set(earlier.filter((upload) => upload.isFinished).map((upload) => relativeName(upload)));
-  const all = await listFiles(folder);
-  const waiting = all.filter((name) => !isIn.has(name));
-  let done = all.length - waiting.length;
-  const step = Math.max(1, Math.ceil(all.length / 4));
-  async function uploadNext(): Promise<void> {
-    for (let name = waiting.shift(); name !== undefined; name = waiting.shift()) {
-      await uploadFile(session, { projectId, root: folder, name });
-      done++;
-      if (done % step === 0 || done === all.length) say(`${done} of ${all.length} frames brought in`);
-    }
+  const isIn = new Set(earlier.filter((upload) => upload.isFinished).map(relativeName));
+  let done = 0;
+  async function send({ file, total }: WrittenFrame): Promise<void> {
+    if (!isIn.has(file)) await uploadFile(session, { projectId, root: folder, name: file });
+    done++;
+    if (done % Math.ceil(total / 4) === 0 || done === total) say(`${done} of ${total} frames brought in`);
   }
-  await Promise.all(Array.from({ length: UPLOADS_AT_ONCE }, uploadNext));
+  const lanes = makeLanes(UPLOADS_AT_ONCE);
+  await makeShoot(folder, (frame) => lanes.add(() => send(frame)));
+  await lanes.finish();
 }
 
-/** Relative names, "/"-separated. */
-async function listFiles(folder: string): Promise<string[]> {
-  const entries = await readdir(folder, { recursive: true, withFileTypes: true });
-  return entries
-    .filter((entry) => entry.isFile())
-    .map((entry) => path.relative(folder, path.join(entry.parentPath, entry.name)).split(path.sep).join("/"))
-    .sort();
+/** Runs what is added, so many at once, in turn. */
+function makeLanes(count: number): { add(work: () => Promise<void>): void; finish(): Promise<unknown> } {
+  const lanes = Array.from({ length: count }, () => Promise.resolve());
+  let next = 0;
+  return {
+    add(work) {
+      const lane = (lanes[next % count] ?? Promise.resolve()).then(work);
+      // Told of in `finish`; until then a failed lane only stands still.
+      lane.catch(() => undefined);
+      lanes[next % count] = lane;
+      next++;
+    },
+    finish: () => Promise.all(lanes),
+  };
 }
 
 function relativeName({ folder, name }: { readonly folder: string | null; readonly name: string }): string {
   return folder ? `${folder}/${name}` : name;
 }
 
-async function waitUntilSorted({ session, projectId, say }: Omit<BringIn, "folder">): Promise<void> {
+async function waitUntilSorted({
+  session,
+  projectId,
+  say,
+}: Pick<BringIn, "session" | "projectId" | "say">): Promise<void> {
   let said = -1;
   for (;;) {
     const progress = await callJson(session, `/api/projects/${projectId}/progress`, { schema: progressSchema });

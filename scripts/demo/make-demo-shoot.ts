@@ -5,14 +5,14 @@ import { drawHarbour } from "./harbour/draw-harbour";
 import { mixSeeds } from "./seeded-random";
 import { writeFrame } from "./write-frame";
 
-export interface DemoProgress {
-  readonly step: "scene" | "frames";
-  readonly done: number;
+/** A frame that is on the disk, whole. */
+export interface WrittenFrame {
+  /** Below the shoot's directory, "/" between names. */
+  readonly file: string;
   readonly total: number;
 }
 
 const DEFAULT_SEED = 1;
-const SCENE_STEPS = 4;
 const SHADING_EV = 0.22;
 const NOISE_LEVELS = 2.4;
 
@@ -20,16 +20,17 @@ const NOISE_LEVELS = 2.4;
  * Makes the demo's shoot: 108 JPEG files of an invented harbour, as a camera would have left them on its card.
  * 3 rows of 6 tiles with one hole, one thin seam, a few soft frames, a stray, and the counter rolling over.
  * @param directory - made where it is missing; files go into two DCF folders below it
+ * @param onWritten - called for each frame as it is there
  * @returns what the files show, in the order taken
  */
 export async function makeDemoShoot(
   directory: string,
-  onProgress: (progress: DemoProgress) => void = () => {},
+  onWritten: (frame: WrittenFrame) => void = () => {},
   seed: number = DEFAULT_SEED,
 ): Promise<DemoTruth> {
   const truth = planDemo(seed);
-  let steps = 0;
-  const scene = await drawHarbour(seed, () => onProgress({ step: "scene", done: ++steps, total: SCENE_STEPS }));
+  const total = truth.frames.length;
+  const scene = await drawHarbour(seed);
   const camera = makeCamera(scene, DEMO_FRAME_SIZE);
   const strayCamera = makeCamera(drawCobbles(DEMO_FRAME_SIZE, seed), DEMO_FRAME_SIZE);
   const writing: Promise<Buffer>[] = [];
@@ -37,8 +38,12 @@ export async function makeDemoShoot(
     // One frame is drawn while the two before it are encoded on sharp's own threads.
     await writing[writing.length - 2];
     const pixels = expose(frame.place ? camera : strayCamera, frame, mixSeeds(seed, 911, index));
-    writing.push(writeDemoFrame(directory, frame, pixels));
-    onProgress({ step: "frames", done: index + 1, total: truth.frames.length });
+    writing.push(
+      writeDemoFrame(directory, frame, pixels).then((bytes) => {
+        onWritten({ file: frame.file, total });
+        return bytes;
+      }),
+    );
   }
   await Promise.all(writing);
   return truth;

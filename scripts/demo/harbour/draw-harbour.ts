@@ -98,22 +98,19 @@ const SATURATION_LOSS = 0.27;
  * @param seed - whole number: same seed, same harbour
  * @returns a scene of `SCENE_SIZE`, as soft as a good lens would show it
  */
-export async function drawHarbour(seed: number, onStep?: (step: string) => void): Promise<Raster> {
+export async function drawHarbour(seed: number): Promise<Raster> {
   const { widthPx, heightPx } = SCENE_SIZE;
   const raster: Raster = { data: new Uint8Array(widthPx * heightPx * 3), widthPx, heightPx };
   const grain = makeGrain(seed);
   drawSky(raster, seed);
-  onStep?.("sky");
   await layDrawing(raster, drawBackground(seed), grain);
   hazeOver(raster);
   await layDrawing(raster, drawTown(seed), grain);
-  onStep?.("town");
   drawForeshore(raster, grain, seed);
   const ashore = new Drawing(SCENE_SIZE);
   drawForeshoreThings(ashore, seed);
   for (const boat of planStranded(seed)) drawBoat(ashore, boat, "whole");
   await layDrawing(raster, ashore, grain);
-  onStep?.("foreshore");
   const afloat = planAfloat(seed);
   const mirrored = new Drawing(SCENE_SIZE);
   for (const boat of afloat) drawBoat(mirrored, boat, "mirrored");
@@ -122,7 +119,6 @@ export async function drawHarbour(seed: number, onStep?: (step: string) => void)
   drawWaterMarks(upright, seed);
   for (const boat of afloat) drawBoat(upright, boat, "afloat");
   await layDrawing(raster, upright, grain);
-  onStep?.("water");
   light(raster, seed);
   softenLikeALens(raster);
   return raster;

@@ -11,6 +11,8 @@ export interface BodySequence {
 
 /** A counter that runs against the clock in more than this share of its steps is no counter. Our own. */
 const MOST_BACKWARD_SHARE = 0.3;
+/** Fewer steps back than this are clocks set in between. Our own. */
+const LEAST_BACKWARD_STEPS = 4;
 /** A clock step back of more than this is a step back and not rounding. Source: analysis.md, 1. */
 const BACKWARD_MS = -1000;
 
@@ -37,7 +39,7 @@ function orderBody(frames: readonly SortFrame[]): BodySequence {
     numbers,
   );
   const byCounter = mergeByClock(counted, frames.filter((frame) => !numbers.has(frame)).sort(compareByClock));
-  if (backwardShare(byCounter) > MOST_BACKWARD_SHARE) return orderByClock(frames);
+  if (runsAgainstClock(byCounter)) return orderByClock(frames);
   return { frames: byCounter, isOrderKnown: true };
 }
 
@@ -102,7 +104,7 @@ function mergeByClock(counted: readonly SortFrame[], others: readonly SortFrame[
   return merged;
 }
 
-function backwardShare(frames: readonly SortFrame[]): number {
+function runsAgainstClock(frames: readonly SortFrame[]): boolean {
   let known = 0;
   let backward = 0;
   frames.forEach((frame, index) => {
@@ -113,7 +115,7 @@ function backwardShare(frames: readonly SortFrame[]): number {
     known++;
     if (to - from < BACKWARD_MS) backward++;
   });
-  return known === 0 ? 0 : backward / known;
+  return backward >= LEAST_BACKWARD_STEPS && backward > known * MOST_BACKWARD_SHARE;
 }
 
 function timeMs(frame: SortFrame): number | null {

@@ -1,10 +1,11 @@
 import { tileName } from "@/lib/board/tile-name";
 import { framesInUse, type StackDraft } from "./draft";
+import { stemOf } from "./file-number";
 import { isKept, nameOf, percent, tileOf, type SortedDraft } from "./sorted-draft";
 import type { ProposedQuestion, QuestionKind } from "./types";
 
 /** Severities, higher is worse: what can only be mended by shooting again comes first. */
-const SEVERITY = { hole: 95, order: 85, retake: 65, "thin-seam": 45, "few-frames": 35 } as const;
+const SEVERITY = { hole: 95, order: 85, retake: 65, "two-stacks": 60, "thin-seam": 45, "few-frames": 35 } as const;
 /** More doubts of one kind than this are one question: the answer will be the same for all. Our own. */
 const MOST_SINGLE_QUESTIONS = 3;
 
@@ -19,6 +20,7 @@ export function questionsOfGrid(draft: SortedDraft): ProposedQuestion[] {
       return `${count} stacks have fewer than the ${draft.options.framesPerTile.least} frames wanted.`;
     }),
     ...retakeQuestions(draft),
+    ...doubledQuestions(draft),
     ...orderQuestions(draft),
   ];
 }
@@ -136,6 +138,31 @@ function retakeQuestions(draft: SortedDraft): ProposedQuestion[] {
       answers: [choose(a), choose(b)],
       severity: SEVERITY.retake,
     };
+  });
+}
+
+function doubledQuestions(draft: SortedDraft): ProposedQuestion[] {
+  return draft.split.doubled.flatMap(({ atFrameId, pauseS }) => {
+    const stack = draft.stacks.find((candidate) => candidate.frames.some(({ frame }) => frame.id === atFrameId));
+    if (!stack || !isKept(draft, stack) || stack.fixed?.byPerson) return [];
+    const where = nameOf(draft, stack.index);
+    const first = stemOf(stack.frames.find(({ frame }) => frame.id === atFrameId)?.frame.name ?? "");
+    return [
+      {
+        key: `two-stacks ${atFrameId}`,
+        kind: "two-stacks",
+        message: `Are the ${stack.frames.length} frames of ${where} one stack?`,
+        evidence: `${where} has twice the usual frames, with a pause of ${Math.round(pauseS)} s before ${first}.`,
+        frameIds: [atFrameId],
+        stackIds: [stack.id],
+        tile: tileOf(draft, stack.index),
+        answers: [
+          { label: "Keep them as one stack", action: ACCEPT },
+          { label: `Split at ${first}`, action: { type: "split-stack", stackId: stack.id, atFrameId } },
+        ],
+        severity: SEVERITY["two-stacks"],
+      } satisfies ProposedQuestion,
+    ];
   });
 }
 

@@ -8,6 +8,7 @@ import { numberPlaces } from "./number-places";
 import { orderFrames, type BodySequence } from "./order-frames";
 import { PairStore } from "./pair-store";
 import { placeStacks } from "./place-stacks";
+import { splitDoubles } from "./split-doubles";
 import { splitStacks } from "./split-stacks";
 import type { MeasurePair, Proposal, SortFrame, SortInput, SortProgress } from "./types";
 import { writeProposal } from "./write-proposal";
@@ -37,11 +38,13 @@ export async function sortFrames(
   const black = findBlack(order, new Set(facts.stacks.flatMap((stack) => stack.frameIds)));
   const left = new Set([...facts.looseFrameIds, ...black]);
   const sorted = sequences.map((sequence) => without(sequence, left));
-  const split = await splitStacks(
-    sorted,
-    store,
-    { longestPauseSeconds: options.longestPauseSeconds, isJoined: joinFacts(facts) },
-    (done, total) => onProgress({ step: "stacks", done, total }),
+  const split = splitDoubles(
+    await splitStacks(
+      sorted,
+      store,
+      { longestPauseSeconds: options.longestPauseSeconds, isJoined: joinFacts(facts) },
+      (done, total) => onProgress({ step: "stacks", done, total }),
+    ),
   );
   const seeds = gatherStacks(split.runs, facts, order);
   const stacks = appraiseAll(seeds, store, input);

@@ -6,6 +6,7 @@ import type { Seam } from "./find-seams";
 import { stemOf } from "./file-number";
 import type { Place } from "./number-places";
 import type { Layout } from "./place-stacks";
+import type { Doubled } from "./split-doubles";
 import type { SplitResult } from "./split-stacks";
 import type { SortFrame, SortOptions } from "./types";
 
@@ -22,7 +23,7 @@ export interface SortedDraft {
   readonly takeDoubts: readonly TakeDoubt[];
   readonly seams: readonly Seam[];
   readonly graph: GridGraph;
-  readonly split: SplitResult;
+  readonly split: SplitResult & { readonly doubled: readonly Doubled[] };
   /** Frames that are certainly none of the picture: black ones. */
   readonly black: ReadonlySet<string>;
   readonly options: SortOptions;

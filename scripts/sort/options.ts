@@ -34,7 +34,7 @@ Sorts the frames in DIR (sub-folders included) into stacks on a grid and writes 
   --frames-per-tile N-M  fewest and most frames of a tile (${DEFAULT_FRAMES_PER_TILE.least}-${DEFAULT_FRAMES_PER_TILE.most})
   --longest-pause S      longest pause inside a tile, seconds (found by itself)
   --rows N, --columns N  rows and columns expected (found by themselves)
-  --soft-limit N         log ratio of sharpness under which a frame is soft (${SOFT_LIMIT})
+  --soft-limit=-N        log ratio of sharpness under which a frame is soft (${SOFT_LIMIT})
   --jobs N               pictures read at once (number of processors)
   --explain NAME         say on standard error why this frame is where it is
   --help                 this text
@@ -84,7 +84,7 @@ function parse(args: readonly string[]) {
       },
     });
   } catch (error) {
-    const message = error instanceof Error ? error.message.split(". ")[0] : String(error);
+    const message = error instanceof Error ? error.message.split(/[.\n]/)[0] : String(error);
     throw new UsageError(`${message}. Options: npm run --silent sort -- --help`);
   }
 }

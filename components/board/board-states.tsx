@@ -121,10 +121,13 @@ export function UnsortedBoard({ projectId, sortError }: { readonly projectId: st
 }
 
 /** Files came in, none of them is a frame. */
-export function UnreadableBoard({ projectId, failed }: { readonly projectId: string; readonly failed: number }) {
+export function UnreadableBoard({ projectId, received }: { readonly projectId: string; readonly received: number }) {
   return (
-    <Place title="None of the files could be read">
-      <p>{countOf(failed, "file")} came in, and none is a picture that can be measured. The list says why for each.</p>
+    <Place title="No frame among the files">
+      <p>
+        {countOf(received, "file")} came in, and none is a picture that can be measured. The list says why for each; raw
+        files need the picture of the same name beside them.
+      </p>
       <LinkButton href={`/projects/${projectId}/intake`}>See what came in</LinkButton>
     </Place>
   );

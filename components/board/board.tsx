@@ -24,7 +24,7 @@ const WIDE = "(min-width: 1024px)";
 
 /** The one container of the board page: asks for the data, decides what stands there. */
 export function Board({ projectId, canEdit }: BoardProps) {
-  const { board, progress, sortError, retry, error } = useLiveBoard(projectId);
+  const { board, progress, isFetching, sortError, retry, error } = useLiveBoard(projectId);
   const index = useMemo(() => (board ? indexBoard(board) : null), [board]);
   const place = useBoardPlace();
   const isWide = useMedia(WIDE);
@@ -40,7 +40,7 @@ export function Board({ projectId, canEdit }: BoardProps) {
   if (index.board.frames.length === 0) {
     if (progress.total === 0) return <EmptyBoard projectId={projectId} canEdit={canEdit} />;
     if (sortError !== null) return <UnsortedBoard projectId={projectId} sortError={sortError} />;
-    if (progress.sorted) return <UnreadableBoard projectId={projectId} failed={progress.failed} />;
+    if (progress.sorted && !isFetching) return <UnreadableBoard projectId={projectId} received={progress.received} />;
     return <WorkingBoard progress={progress} />;
   }
   return (

@@ -14,6 +14,8 @@ const QUIET_MS = 10_000;
 interface LiveBoard {
   readonly board: Board | undefined;
   readonly progress: Progress | undefined;
+  /** The board is being asked for: what is known may be older than the progress. */
+  readonly isFetching: boolean;
   /** Why the last sorting failed, in plain words; null: it did not. */
   readonly sortError: string | null;
   /** What went wrong when asking, in plain words; null: nothing. */
@@ -47,6 +49,7 @@ export function useLiveBoard(projectId: string): LiveBoard {
   return {
     board: board.data,
     progress: counts,
+    isFetching: board.isFetching,
     sortError: isMeasured && !counts.sorted ? (intake.data?.sortError ?? null) : null,
     error: failure === null ? null : failure.message,
     retry: () => void Promise.all([board.refetch(), progress.refetch()]),

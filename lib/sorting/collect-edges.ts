@@ -1,6 +1,6 @@
 import { isFew, usualSizeOf, type StackDraft } from "./draft";
 import { makeEdge, type Edge } from "./edges";
-import { CLASH_WEIGHT, labelStacks, misfitScale, type Component, type Label } from "./lattice";
+import { CLASH_WEIGHT, labelStacks, misfitScale, trustIn, type Component, type Label } from "./lattice";
 import { LARGEST_SAME_PLACE } from "./vector";
 import { boxOf } from "./walks";
 import { inSteps, proposeSteps, type Steps } from "./lattice-steps";
@@ -100,7 +100,7 @@ function rateGraph({ edges, steps, components: pieces }: GridGraph, few: Readonl
     const { columns, rows, misfit } = isSame ? { columns: 0, rows: 0, misfit: 0 } : inSteps(edge, steps);
     if (isSame) samePlace.add(`${edge.a} ${edge.b}`);
     if (b.column - a.column !== columns || b.row - a.row !== rows) continue;
-    rating += edge.weight * Math.exp(-((misfit / scale) ** 2));
+    rating += edge.weight * trustIn(edge, misfit, scale);
   }
   for (const component of components) {
     const box = boxOf([...component.values()]);

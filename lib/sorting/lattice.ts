@@ -18,6 +18,11 @@ export type Component = ReadonlyMap<number, Label>;
 const LEAST_MISFIT_SCALE = 0.1;
 const LARGEST_MISFIT_SCALE = 0.35;
 const USUAL_MISFITS = 4;
+/**
+ * A match this good is feigned by no row of windows (repeating patterns reach 0.7: analysis.md, "Known to fail"): where
+ * it lies off the lattice, its tile was aimed so. Our own.
+ */
+const UNDOUBTED_NCC = 0.8;
 /** Two stacks on one place that do not show the same weigh against it as much as a clear edge. Our own. */
 export const CLASH_WEIGHT = 8;
 const MOST_SWEEPS = 12;
@@ -47,7 +52,7 @@ export function labelStacks(count: number, edges: readonly Edge[], steps: Steps)
     if (edge.steps) return { a: edge.a, b: edge.b, ...edge.steps, weight: edge.weight };
     if (Math.hypot(edge.x, edge.y) < LARGEST_SAME_PLACE) return { ...edge, columns: 0, rows: 0 };
     const { columns, rows, misfit } = inSteps(edge, steps);
-    return { a: edge.a, b: edge.b, columns, rows, weight: edge.weight * Math.exp(-((misfit / scale) ** 2)) };
+    return { a: edge.a, b: edge.b, columns, rows, weight: edge.weight * trustIn(edge, misfit, scale) };
   });
   const tree = spanningTree(count, stepEdges);
   const incident = listIncident(count, stepEdges);
@@ -69,6 +74,17 @@ export function misfitScale(edges: readonly Edge[], steps: Steps): number {
   let left = misfits.reduce((sum, { weight }) => sum + weight, 0) / 2;
   const usual = misfits.find(({ weight }) => (left -= weight) <= 0)?.misfit ?? LARGEST_MISFIT_SCALE;
   return Math.min(LARGEST_MISFIT_SCALE, Math.max(LEAST_MISFIT_SCALE, USUAL_MISFITS * usual));
+}
+
+/**
+ * How much an edge's word still counts for its misfit.
+ * @param misfit - in steps
+ * @param scale - of the grid, from `misfitScale`
+ * @returns 0 to 1
+ */
+export function trustIn(edge: Pick<Edge, "ncc">, misfit: number, scale: number): number {
+  const own = edge.ncc >= UNDOUBTED_NCC ? LARGEST_MISFIT_SCALE : scale;
+  return Math.exp(-((misfit / own) ** 2));
 }
 
 function spanningTree(count: number, edges: readonly StepEdge[]): StepEdge[] {

@@ -13,9 +13,12 @@ const MOST_SINGLE_QUESTIONS = 3;
 export function questionsOfGrid(draft: SortedDraft): ProposedQuestion[] {
   return [
     ...gather(holeQuestions(draft), "hole", (count) => `${count} places of the grid have no stack.`),
-    ...gather(thinQuestions(draft), "thin-seam", (count) => {
-      return `${count} seams overlap by less than the ${percent(draft.options.overlapWanted)} wanted.`;
-    }),
+    ...gather(
+      thinQuestions(draft),
+      "thin-seam",
+      (count) => `${count} seams overlap by less than the ${percent(draft.options.overlapWanted)} wanted.`,
+      ({ stackIds }) => stackIds.map((id) => nameById(draft, id)).join("–"),
+    ),
     ...gather(fewQuestions(draft), "few-frames", (count) => {
       return `${count} stacks have fewer than the ${draft.options.framesPerTile.least} frames wanted.`;
     }),
@@ -29,21 +32,27 @@ function gather(
   questions: readonly ProposedQuestion[],
   kind: QuestionKind,
   messageFor: (count: number) => string,
+  nameOne: (question: ProposedQuestion) => string = ({ tile, message }) => tile ?? message,
 ): ProposedQuestion[] {
   if (questions.length <= MOST_SINGLE_QUESTIONS) return [...questions];
   const first = questions[0];
   if (!first) return [];
-  const tiles = questions.map((question) => question.tile ?? question.message);
+  const names = questions.map(nameOne);
   return [
     {
       ...first,
       key: `${kind} several`,
       message: messageFor(questions.length),
-      evidence: `${tiles.slice(0, 12).join(", ")}${tiles.length > 12 ? " and more" : ""}.`,
+      evidence: `${names.slice(0, 12).join(", ")}${names.length > 12 ? " and more" : ""}.`,
       frameIds: questions.flatMap((question) => question.frameIds),
       stackIds: [...new Set(questions.flatMap((question) => question.stackIds))],
     },
   ];
+}
+
+function nameById(draft: SortedDraft, id: string): string {
+  const stack = draft.stacks.find((candidate) => candidate.id === id);
+  return stack ? nameOf(draft, stack.index) : "";
 }
 
 /** Names of the places within the grid that no stack has. */
@@ -88,7 +97,7 @@ function thinQuestions(draft: SortedDraft): ProposedQuestion[] {
       evidence: `It is ${percent(seam.overlap ?? 0)}; ${percent(draft.options.overlapWanted)} are wanted.`,
       frameIds: [],
       stackIds: ids,
-      tile: `${a}–${b}`,
+      tile: tileOf(draft, seam.a),
       answers: [{ label: "Accept the small overlap", action: ACCEPT }],
       severity: SEVERITY["thin-seam"],
     } satisfies ProposedQuestion;

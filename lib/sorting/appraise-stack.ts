@@ -33,7 +33,10 @@ export function appraiseStack(input: AppraisalInput): StackDraft {
   const deviations = findDeviations(frames, chain).map((deviation) =>
     input.isBracketed && deviation?.kind === "exposure" ? null : deviation,
   );
-  const setAside = keepSome(frames.map((frame, at) => reasonFor(frame, sharpness[at], deviations[at], input)));
+  const setAside = keepSome(
+    frames.map((frame, at) => reasonFor(frame, sharpness[at], deviations[at], input)),
+    frames.map((frame) => Object.hasOwn(input.settled, frame.id)),
+  );
   const reference = chooseReference(frames, sharpness, setAside);
   const hub = reference ?? frames[0];
   if (!hub) throw new RangeError("a stack needs one frame or more");
@@ -77,11 +80,13 @@ function reasonFor(
   return sharpness?.verdict === "soft" ? "soft" : null;
 }
 
-/** Never empties a stack by computation. */
-function keepSome(reasons: readonly (SetAsideReason | null)[]): (SetAsideReason | null)[] {
-  return reasons.length > 0 && reasons.every((reason) => reason !== null && reason !== "by hand")
-    ? reasons.map(() => null)
-    : [...reasons];
+/** Never empties a stack by computation; what a person set aside stays so. */
+function keepSome(
+  reasons: readonly (SetAsideReason | null)[],
+  areSettled: readonly boolean[],
+): (SetAsideReason | null)[] {
+  if (reasons.some((reason) => reason === null)) return [...reasons];
+  return reasons.map((reason, at) => (areSettled[at] ? reason : null));
 }
 
 /** The sharpest frame in use; where sharpness cannot be told, the one with the largest Laplacian variance. */

@@ -136,6 +136,18 @@ describe("what goes wrong at a shoot", () => {
     expect(proposal.questions.map(({ kind, tile }) => [kind, tile])).toEqual([["hole", "B2"]]);
   });
 
+  test("a small overlap is asked about at the tile that it begins at", async () => {
+    const shoot = pretendShoot({ ...PLAN, rows: 1 });
+    // The last tile was aimed too far right, by so much that a fifth of the side is left.
+    const frames = shoot.map((frame, at) => {
+      const isLast = at >= shoot.length - PLAN.framesPerTile;
+      return isLast && frame.at ? { ...frame, at: { ...frame.at, xPx: frame.at.xPx + 400 } } : frame;
+    });
+    const proposal = await sort(frames);
+    expect(proposal.questions.map(({ kind, tile }) => [kind, tile])).toEqual([["thin-seam", "A3"]]);
+    expect(proposal.questions[0]?.message).toContain("A3 and A4");
+  });
+
   test("a row of plain sky takes its places from the order shot", async () => {
     for (const order of WALKS) {
       const proposal = await sort(pretendShoot({ ...PLAN, order, isBlank: (row) => row === 1 }));
@@ -224,6 +236,17 @@ describe("facts", () => {
     const proposal = await sortFrames({ ...input, facts }, measurePair);
     expect(proposal.frames[7]?.setAside).toBeNull();
     expect(proposal.frames[8]?.setAside).toBe("by hand");
+  });
+
+  test("a stack that a person set aside as a whole stays so", async () => {
+    const { input, measurePair } = pretendInput(pretendShoot(PLAN));
+    const first = input.frames.slice(0, PLAN.framesPerTile);
+    const setAside = Object.fromEntries(first.map(({ id }) => [id, "exposure" as const]));
+    const proposal = await sortFrames({ ...input, facts: { ...input.facts, setAside } }, measurePair);
+    const ids = new Set(first.map(({ id }) => id));
+    expect(proposal.frames.filter(({ id }) => ids.has(id)).map((frame) => frame.setAside)).toEqual(
+      Array(PLAN.framesPerTile).fill("exposure"),
+    );
   });
 });
 

@@ -1,14 +1,14 @@
-import { Picture } from "@/components/board/picture";
+import { Crop } from "@/components/board/crop";
 import { classNames } from "@/components/ui/class-names";
 import type { CropCentre } from "@/lib/board/layout";
 import type { BoardFrame } from "@/lib/board/model";
 import { distanceText, percent } from "@/lib/board/words";
-import { cropUrl } from "@/lib/frames/picture-urls";
 
 interface BenchFrameProps {
   readonly projectId: string;
   readonly frame: BoardFrame;
-  readonly centre: CropCentre;
+  /** Null: the whole frame. */
+  readonly centre: CropCentre | null;
   readonly size: { readonly widthPx: number; readonly heightPx: number };
   readonly isReference: boolean;
   readonly isAsked: boolean;
@@ -17,17 +17,9 @@ interface BenchFrameProps {
   readonly onCompare: (() => void) | null;
 }
 
-/** One frame on the bench: its crop at 100 % and what was measured. */
+/** One frame on the bench: its crop at 100 %, or all of it, and what was measured. */
 export function BenchFrame(props: BenchFrameProps) {
   const { projectId, frame, centre, size, isReference, isAsked, isWhy, onCompare } = props;
-  const src = cropUrl(projectId, frame.id, {
-    widthPx: frame.widthPx,
-    heightPx: frame.heightPx,
-    centreXPx: centre.centreXPx,
-    centreYPx: centre.centreYPx,
-    cropWidthPx: size.widthPx,
-    cropHeightPx: size.heightPx,
-  });
   const crop = (
     <span
       style={{ width: size.widthPx, height: size.heightPx }}
@@ -37,10 +29,10 @@ export function BenchFrame(props: BenchFrameProps) {
         frame.setAside !== null && !isAsked && "outline-2 -outline-offset-2 outline-dashed outline-paper",
       )}
     >
-      <Picture src={src} alt="" widthPx={size.widthPx} heightPx={size.heightPx} className="object-none" />
+      <Crop projectId={projectId} frame={frame} centre={centre} size={size} alt="" />
       {isReference && <Label className="bg-ink text-paper">reference</Label>}
       {frame.setAside !== null && <Label className="bg-paper text-ink">set aside: {frame.setAside}</Label>}
-      {!centre.isSameSpot && (
+      {centre?.isSameSpot === false && (
         <span className="absolute right-0 bottom-0 bg-paper px-1 text-[0.8125rem] leading-5">another spot</span>
       )}
     </span>

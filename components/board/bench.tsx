@@ -106,7 +106,7 @@ interface LooseBenchProps {
   readonly onClose: (() => void) | null;
 }
 
-/** The frames that are in no stack, at 100 % in their middle. */
+/** The frames that are in no stack, whole: the question is what they show. */
 export function LooseBench({ index, widthPx, onClose }: LooseBenchProps) {
   const crops = benchCrops(index.loose.length, widthPx - SHEET_PX);
   return (
@@ -127,7 +127,7 @@ export function LooseBench({ index, widthPx, onClose }: LooseBenchProps) {
               key={frame.id}
               projectId={index.board.projectId}
               frame={frame}
-              centre={{ centreXPx: frame.widthPx / 2, centreYPx: frame.heightPx / 2, isSameSpot: true }}
+              centre={null}
               size={crops}
               isReference={false}
               isAsked={index.askedFrames.has(frame.id)}
@@ -148,7 +148,7 @@ function Sheet({ label, mouth, children }: { label: string; mouth: Mouth | null;
       data-bench
       aria-label={label}
       className={classNames(
-        "relative border-3 border-petrol bg-paper p-3.5 ring-2 ring-paper ring-inset",
+        "relative scroll-mt-12 scroll-mb-3 border-3 border-petrol bg-paper p-3.5 ring-2 ring-paper ring-inset",
         mouth && "my-1",
       )}
     >
@@ -183,8 +183,9 @@ function spotPx(stack: BoardStack, reference: BoardFrame): { x: number; y: numbe
   return { x: stack.spot.x * reference.widthPx, y: stack.spot.y * reference.heightPx };
 }
 
-/** The doubtful frame first: the comparison is for it. */
+/** The most doubtful frame first, in its place or in its sharpness: the comparison is for it. */
 function firstToCompare(frames: readonly BoardFrame[], reference: BoardFrame | null): string | null {
   const others = frames.filter((frame) => frame.id !== reference?.id);
-  return [...others].sort((a, b) => a.confidence - b.confidence)[0]?.id ?? null;
+  const trust = (frame: BoardFrame) => Math.min(frame.confidence, frame.relativeSharpness ?? 1);
+  return [...others].sort((a, b) => trust(a) - trust(b))[0]?.id ?? null;
 }

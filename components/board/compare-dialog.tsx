@@ -2,16 +2,16 @@
 
 import { ArrowDown, ArrowLeft, ArrowRight, ArrowUp } from "lucide-react";
 import { useState, type KeyboardEvent } from "react";
-import { Picture } from "@/components/board/picture";
+import { Crop } from "@/components/board/crop";
 import { SpotMap } from "@/components/board/spot-map";
 import { useElementSize } from "@/components/board/use-element-size";
+import { useScreenDensity } from "@/components/board/use-screen-density";
 import { Button } from "@/components/ui/button";
 import { Dialog } from "@/components/ui/dialog";
 import type { BoardIndex } from "@/lib/board/board-index";
-import { spotInFrame } from "@/lib/board/layout";
+import { spotInFrame, spotInView } from "@/lib/board/layout";
 import type { BoardFrame, BoardStack } from "@/lib/board/model";
 import { distanceText, percent } from "@/lib/board/words";
-import { cropUrl } from "@/lib/frames/picture-urls";
 import { CROP_MOST_PX } from "@/lib/frames/schema";
 
 interface CompareDialogProps {
@@ -31,8 +31,9 @@ const TALLEST_PX = 560;
 
 /** A frame and its reference side by side at 100 %, at the same spot; arrows or the small picture move the spot of both. */
 export function CompareDialog({ index, name, stack, frames, reference, frameId, onChange }: CompareDialogProps) {
-  const [spot, setSpot] = useState({ x: stack.spot.x * reference.widthPx, y: stack.spot.y * reference.heightPx });
+  const [wished, setWished] = useState({ x: stack.spot.x * reference.widthPx, y: stack.spot.y * reference.heightPx });
   const [paneRef, paneSize] = useElementSize();
+  const density = useScreenDensity();
   const others = frames.filter((frame) => frame.id !== reference.id);
   const at = Math.max(
     0,
@@ -41,7 +42,11 @@ export function CompareDialog({ index, name, stack, frames, reference, frameId, 
   const frame = others[at];
   if (!frame) return null;
 
-  const moveTo = (x: number, y: number) => setSpot({ x: clamp(x, reference.widthPx), y: clamp(y, reference.heightPx) });
+  const widthPx = Math.min(Math.floor(CROP_MOST_PX / density), paneSize?.width ?? 0);
+  const size = { widthPx, heightPx: Math.min(TALLEST_PX, Math.round(widthPx * 0.8)) };
+  const seen = { widthPx: size.widthPx * density, heightPx: size.heightPx * density };
+  const spot = spotInView(wished, seen, [reference, frame]);
+  const moveTo = (x: number, y: number) => setWished(spotInView({ x, y }, seen, [reference, frame]));
   const move = (dx: number, dy: number) => moveTo(spot.x + dx * STEP_PX, spot.y + dy * STEP_PX);
   const onKeyDown = (event: KeyboardEvent) => {
     const step = ARROWS[event.key];
@@ -49,8 +54,6 @@ export function CompareDialog({ index, name, stack, frames, reference, frameId, 
     event.preventDefault();
     move(step[0], step[1]);
   };
-  const widthPx = Math.min(CROP_MOST_PX, paneSize?.width ?? 0);
-  const size = { widthPx, heightPx: Math.min(TALLEST_PX, Math.round(widthPx * 0.8)) };
   return (
     <Dialog
       isOpen
@@ -59,7 +62,7 @@ export function CompareDialog({ index, name, stack, frames, reference, frameId, 
       title={`${name}: ${frame.name} beside the reference`}
       description={
         <p className="text-sm text-quiet">
-          The same spot of both at 100 %: one pixel of the picture is one pixel here. Arrow keys move the spot.
+          The same spot of both at 100 %: one pixel of the picture is one pixel of the screen. Arrow keys move the spot.
         </p>
       }
     >
@@ -87,7 +90,7 @@ export function CompareDialog({ index, name, stack, frames, reference, frameId, 
         />
       </div>
       <div className="mt-4 flex flex-wrap items-end gap-x-8 gap-y-3">
-        <SpotMap projectId={index.board.projectId} reference={reference} spot={spot} size={size} onMove={moveTo} />
+        <SpotMap projectId={index.board.projectId} reference={reference} spot={spot} size={seen} onMove={moveTo} />
         <div role="group" aria-label="Move the spot" className="flex gap-1">
           <Button size="slim" aria-label="Spot left" onClick={() => move(-1, 0)}>
             <ArrowLeft aria-hidden size={16} />
@@ -132,15 +135,6 @@ interface PaneProps {
 
 function Pane({ projectId, frame, spot, size, note, paneRef }: PaneProps) {
   const centre = spotInFrame(frame, spot);
-  const { centreXPx, centreYPx } = centre;
-  const url = cropUrl(projectId, frame.id, {
-    widthPx: frame.widthPx,
-    heightPx: frame.heightPx,
-    centreXPx,
-    centreYPx,
-    cropWidthPx: size.widthPx,
-    cropHeightPx: size.heightPx,
-  });
   return (
     <figure className="min-w-0">
       <div
@@ -148,7 +142,9 @@ function Pane({ projectId, frame, spot, size, note, paneRef }: PaneProps) {
         className="flex items-center justify-center overflow-hidden bg-well"
         style={{ height: size.heightPx }}
       >
-        {size.widthPx > 0 && <Picture src={url} alt={`${frame.name} at 100 %`} className="object-none" />}
+        {size.widthPx > 0 && (
+          <Crop projectId={projectId} frame={frame} centre={centre} size={size} alt={`${frame.name} at 100 %`} />
+        )}
       </div>
       <figcaption className="mt-1 flex flex-wrap gap-x-4 text-sm">
         <span className="figures font-bold">{frame.name}</span>
@@ -175,7 +171,3 @@ const ARROWS: Readonly<Record<string, readonly [number, number]>> = {
   ArrowUp: [0, -1],
   ArrowDown: [0, 1],
 };
-
-function clamp(value: number, most: number): number {
-  return Math.min(Math.max(0, value), most);
-}

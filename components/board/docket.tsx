@@ -1,12 +1,12 @@
 "use client";
 
-import { Picture } from "@/components/board/picture";
+import { Crop } from "@/components/board/crop";
+import { LOOSE } from "@/components/board/use-board-place";
 import { Button } from "@/components/ui/button";
 import type { BoardIndex } from "@/lib/board/board-index";
 import type { BoardQuestion } from "@/lib/board/model";
 import { questionPictures, type QuestionPicture } from "@/lib/board/question-pictures";
 import { countOf } from "@/lib/board/words";
-import { cropUrl } from "@/lib/frames/picture-urls";
 
 interface DocketProps {
   readonly index: BoardIndex;
@@ -19,7 +19,6 @@ interface DocketProps {
 /** One open question at a time, worst first: the pictures that decide it, the question, the evidence. */
 export function Docket({ index, question, at, onTurn, onShowTile }: DocketProps) {
   const count = index.board.questions.length;
-  const { tile } = question;
   return (
     <section
       aria-label={countOf(count, "question")}
@@ -34,11 +33,11 @@ export function Docket({ index, question, at, onTurn, onShowTile }: DocketProps)
         <p className="max-w-[75ch] text-sm text-quiet">{question.evidence}</p>
       </div>
       <div className="flex flex-wrap gap-2">
-        {tile !== null && index.tiles.has(tile) && (
-          <Button size="slim" onClick={() => onShowTile(tile)}>
-            Show {tile}
+        {placesOf(index, question).map((place) => (
+          <Button key={place} size="slim" onClick={() => onShowTile(place)}>
+            Show {place === LOOSE ? "loose frames" : place}
           </Button>
-        )}
+        ))}
         {count > 1 && (
           <>
             <Button size="slim" tone="bare" onClick={() => onTurn((at + count - 1) % count)}>
@@ -54,31 +53,27 @@ export function Docket({ index, question, at, onTurn, onShowTile }: DocketProps)
   );
 }
 
-const CROP = { cropWidthPx: 104, cropHeightPx: 66 };
+/** What can be opened on the board for a question: the tiles it names, at most two, or the loose frames. */
+function placesOf(index: BoardIndex, { tile, stackIds, frameIds }: BoardQuestion): string[] {
+  if (tile !== null && index.tiles.has(tile)) return [tile];
+  const names = new Set(stackIds.flatMap((id) => index.tileOfStack.get(id)?.name ?? []));
+  if (names.size > 0) return [...names].slice(0, 2);
+  return index.loose.some(({ id }) => frameIds.includes(id)) ? [LOOSE] : [];
+}
+
+const CROP = { widthPx: 104, heightPx: 66 };
 
 function QuestionPictures({ projectId, pictures }: { projectId: string; pictures: readonly QuestionPicture[] }) {
   if (pictures.length === 0) return null;
+  const isWhole = pictures.every(({ centre }) => centre === null);
   return (
-    <ul aria-label="Pictures that decide it, at 100 %" className="flex gap-1.5">
+    <ul aria-label={`Pictures that decide it, ${isWhole ? "whole" : "at 100 %"}`} className="flex gap-1.5">
       {pictures.map(({ frame, label, centre }) => (
         <li key={frame.id} className="figures text-[0.8125rem] leading-4">
-          <span className="block bg-well" style={{ width: CROP.cropWidthPx, height: CROP.cropHeightPx }}>
-            <Picture
-              src={cropUrl(projectId, frame.id, {
-                widthPx: frame.widthPx,
-                heightPx: frame.heightPx,
-                centreXPx: centre.centreXPx,
-                centreYPx: centre.centreYPx,
-                ...CROP,
-              })}
-              alt=""
-              widthPx={CROP.cropWidthPx}
-              heightPx={CROP.cropHeightPx}
-              className="object-none"
-            />
+          <span className="block bg-well" style={{ width: CROP.widthPx, height: CROP.heightPx }}>
+            <Crop projectId={projectId} frame={frame} centre={centre} size={CROP} alt="" />
           </span>
           <span className="mt-0.5 block max-w-26 truncate">{label}</span>
-          {!centre.isSameSpot && <span className="block text-quiet">another spot</span>}
         </li>
       ))}
     </ul>

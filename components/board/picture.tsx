@@ -7,6 +7,8 @@ interface PictureProps {
   readonly src: string;
   /** Empty where a name stands beside it. */
   readonly alt: string;
+  /** Pixels of the file for each CSS pixel. */
+  readonly density?: number;
   readonly widthPx?: number;
   readonly heightPx?: number;
   readonly className?: string;
@@ -14,7 +16,7 @@ interface PictureProps {
 }
 
 /** A picture from the server; says so in words where it cannot be shown. */
-export function Picture({ src, alt, widthPx, heightPx, className, style }: PictureProps) {
+export function Picture({ src, alt, density = 1, widthPx, heightPx, className, style }: PictureProps) {
   const [failedSrc, setFailedSrc] = useState<string | null>(null);
   if (failedSrc === src) {
     return (
@@ -30,6 +32,7 @@ export function Picture({ src, alt, widthPx, heightPx, className, style }: Pictu
     // eslint-disable-next-line @next/next/no-img-element -- the server already sends it at the size it is shown
     <img
       src={src}
+      srcSet={density === 1 ? undefined : `${src} ${density}x`}
       alt={alt}
       width={widthPx}
       height={heightPx}

@@ -8,6 +8,9 @@ interface SeamChipsProps {
   readonly layout: BoardLayout;
 }
 
+/** Where on the edge to the row above a chip stands, part of the tile's width: clear of the notch at the left. */
+const ABOVE_AT = 0.72;
+
 /** Overlaps on the seams of one row: on the edge to the right neighbour, or to the row above. */
 export function SeamChips({ marks, layout }: SeamChipsProps) {
   return marks.map((mark) => <SeamChip key={mark.key} mark={mark} layout={layout} />);
@@ -16,7 +19,9 @@ export function SeamChips({ marks, layout }: SeamChipsProps) {
 function SeamChip({ mark, layout }: { readonly mark: SeamMark; readonly layout: BoardLayout }) {
   const stepPx = layout.tileWidthPx + layout.gapPx;
   const isSideways = mark.side === "right";
-  const left = layout.lettersWidthPx + (mark.column - (isSideways ? 0 : 0.5)) * stepPx - layout.gapPx / 2;
+  // A mark on the map is as long as the edge itself.
+  const at = layout.size === "map" ? 0.5 : ABOVE_AT;
+  const left = layout.lettersWidthPx + (mark.column - (isSideways ? 0 : 1 - at)) * stepPx - layout.gapPx / 2;
   const top = isSideways ? layout.pictureHeightPx / 2 : 0;
   const said = `Overlap of ${mark.names[0]} and ${mark.names[1]}: ${percent(mark.overlap)}${mark.isSmall ? ", small" : ""}`;
   if (layout.size === "map") {

@@ -42,7 +42,10 @@ export function Sheet({ index, chosen, onChoose, view, onShow, isWide }: SheetPr
           {docketLine}
           <BoardBar view={view} onShow={onShow} isAllSeams={isAllSeams} onAllSeams={setIsAllSeams} />
           {view === "grid" ? (
-            <TileGrid index={index} chosen={chosen} onChoose={onChoose} isAllSeams={isAllSeams} asked={asked} />
+            <TileGrid
+              {...{ index, chosen, onChoose, isAllSeams, asked }}
+              askedPlace={question?.tile ?? [...asked][0] ?? null}
+            />
           ) : (
             <TableWithBench index={index} chosen={chosen} onChoose={onChoose} />
           )}

@@ -18,13 +18,15 @@ interface TileGridProps {
   readonly isAllSeams: boolean;
   /** Tiles that the docket's question names. */
   readonly asked: ReadonlySet<string>;
+  /** The place the docket's question is about: brought into view when the docket turns; null: none. */
+  readonly askedPlace: string | null;
 }
 
 /** The padding of the well, both sides, px. */
 const WELL_PADDING_PX = 32;
 
 /** The sheet: tiles in their rows on the well, the bench unfolded between them. Only rows in view are drawn. */
-export function TileGrid({ index, chosen, onChoose, isAllSeams, asked }: TileGridProps) {
+export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlace }: TileGridProps) {
   const [sizeRef, size] = useElementSize();
   const scroller = useRef<HTMLDivElement | null>(null);
   const [scrollerElement, setScrollerElement] = useState<HTMLDivElement | null>(null);
@@ -52,6 +54,11 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked }: TileGri
     paddingStart: 6,
   });
   useEffect(() => virtualizer.measure(), [virtualizer, rowHeightPx]);
+  useShowAsked(askedPlace, (name) => {
+    const row = index.tiles.get(name)?.row ?? index.holes.get(name)?.row;
+    const at = lines.findIndex((line) => line.kind === "row" && line.row === row);
+    if (at >= 0) virtualizer.scrollToIndex(at, { align: "auto" });
+  });
   useShowChosen({ lines, chosen, scroller, scrollTo: (at) => virtualizer.scrollToIndex(at, { align: "auto" }) });
 
   const scrollerRef = useCallback(
@@ -123,7 +130,7 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked }: TileGri
 
 const NO_MARKS: Parameters<typeof TileRow>[0]["marks"] = [];
 
-interface LineProps extends Omit<TileGridProps, "isAllSeams"> {
+interface LineProps extends Omit<TileGridProps, "isAllSeams" | "askedPlace"> {
   readonly line: GridLine;
   readonly layout: BoardLayout;
   readonly projectId: string;
@@ -183,6 +190,15 @@ function estimateLine(line: GridLine | undefined, rowHeightPx: number): number {
   return line.kind === "unplaced" ? rowHeightPx + 40 : 220;
 }
 
+/** Shows the place of the docket's question when it turns to another; a board just opened stays at its top. */
+function useShowAsked(place: string | null, show: (place: string) => void) {
+  const shown = useRef(place);
+  useEffect(() => {
+    if (place !== null && place !== shown.current) show(place);
+    shown.current = place;
+  });
+}
+
 /** Brings a newly chosen tile's row and bench into view, without moving anything that is in view already. */
 function useShowChosen(input: {
   readonly lines: readonly GridLine[];
@@ -198,12 +214,20 @@ function useShowChosen(input: {
   useEffect(() => {
     const { lines, chosen, scroller, scrollTo } = latest.current;
     if (chosen === null || !isReady) return;
-    const bench = lines.findIndex((line) => line.kind === "bench" || line.kind === "loose");
-    if (bench < 0) return;
-    scrollTo(bench);
+    const benchAt = lines.findIndex((line) => line.kind === "bench" || line.kind === "loose");
+    if (benchAt < 0) return;
+    scrollTo(benchAt);
+    const line = lines[benchAt];
+    const isBenchAbove = line?.kind === "bench" && line.opens === "down";
     const timer = setTimeout(() => {
-      scroller.current?.querySelector("[data-bench]")?.scrollIntoView({ block: "nearest" });
-      scroller.current?.querySelector(`[data-tile="${CSS.escape(chosen)}"]`)?.scrollIntoView({ block: "nearest" });
+      const well = scroller.current;
+      const bench = well?.querySelector<HTMLElement>("[data-bench]");
+      const tile = well?.querySelector<HTMLElement>(`[data-tile="${CSS.escape(chosen)}"]`);
+      // The upper of the two last: where both have no room, the head of what is read first stays in view.
+      for (const part of isBenchAbove ? [tile, bench] : [bench, tile]) {
+        const isTall = well && part && part.offsetHeight > well.clientHeight;
+        part?.scrollIntoView({ block: isTall ? "start" : "nearest" });
+      }
     }, 60);
     return () => clearTimeout(timer);
   }, [input.chosen, isReady]);

@@ -18,7 +18,7 @@ const COLUMNS: readonly { readonly column: TableColumn; readonly label: string; 
   { column: "takenAtMs", label: "Taken", isWide: true },
   { column: "inUse", label: "In use", isWide: false },
   { column: "softest", label: "Softest in use", isWide: true },
-  { column: "noise", label: "Noise", isWide: true },
+  { column: "noise", label: "Noise down to", isWide: true },
   { column: "leastOverlap", label: "Least overlap", isWide: false },
   { column: "questions", label: "Questions", isWide: false },
 ];

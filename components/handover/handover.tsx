@@ -30,7 +30,7 @@ export function Handover({ projectId, canEdit }: HandoverProps) {
   }
   const isEmpty = index.board.frames.length === 0;
   return (
-    <div className="mx-auto w-full max-w-5xl space-y-8 px-4 py-8 sm:px-5">
+    <div className="mx-auto w-full max-w-6xl space-y-8 px-4 py-8 sm:px-5">
       <div>
         <h1 className="text-2xl font-bold">Hand over</h1>
         <p className="mt-1 max-w-[75ch] text-quiet">
@@ -48,8 +48,10 @@ export function Handover({ projectId, canEdit }: HandoverProps) {
       ) : (
         <>
           <OpenPoints projectId={projectId} points={openPoints(index)} />
-          <Counts index={index} />
-          <Downloads projectId={projectId} />
+          <div className="grid gap-x-16 gap-y-8 lg:grid-cols-[minmax(0,22rem)_minmax(0,1fr)]">
+            <Counts index={index} />
+            <Downloads projectId={projectId} />
+          </div>
         </>
       )}
     </div>

@@ -21,7 +21,11 @@ test("an empty project says that nothing came in", () => {
 });
 
 test("while files come in, the first stub counts them and the board waits", () => {
-  expect(texts({ total: 108, received: 54, analysed: 20 })).toEqual(["54 of 108 files in", "sorting", "not yet"]);
+  expect(texts({ total: 108, received: 54, analysed: 20 })).toEqual([
+    "54 files in, more to come",
+    "sorting",
+    "not yet",
+  ]);
 });
 
 test("once all are in, the first stub counts what is measured", () => {
@@ -30,7 +34,7 @@ test("once all are in, the first stub counts what is measured", () => {
 
 test("an upload that never finishes does not stop the board and the handover", () => {
   const status = { total: 109, received: 108, analysed: 108, sorted: true, tiles: 18 };
-  expect(texts(status)).toEqual(["108 of 109 files in", "18 tiles, no questions", "ready"]);
+  expect(texts(status)).toEqual(["108 files in, more to come", "18 tiles, no questions", "ready"]);
 });
 
 test("open questions are ochre on the board and named at the handover", () => {

@@ -24,7 +24,9 @@ export function ticketLines(status: TicketStatus): Record<"intake" | "board" | "
 
 function intakeLine({ received, analysed, failed, total }: TicketStatus): TicketLine {
   if (total === 0) return { text: "nothing yet", tone: "quiet" };
-  if (received < total) return { text: `${received} of ${countOf(total, "file")} in`, tone: "ink" };
+  // How many more wait in the browser is not known here.
+  if (received < total)
+    return { text: received === 0 ? "on the way" : `${countOf(received, "file")} in, more to come`, tone: "ink" };
   if (analysed + failed < received)
     return { text: `${analysed + failed} of ${countOf(received, "file")} measured`, tone: "ink" };
   if (failed > 0) return { text: `${countOf(received, "file")}, ${failed} unreadable`, tone: "madder" };

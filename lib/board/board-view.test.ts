@@ -1,7 +1,16 @@
 import { expect, test } from "vitest";
 import { indexBoard, lostShare } from "@/lib/board/board-index";
 import { combBars } from "@/lib/board/comb";
-import { benchCrops, gridOrigin, layoutBoard, picturePart, spotInFrame, tileSteps } from "@/lib/board/layout";
+import {
+  benchCrops,
+  gridOrigin,
+  layoutBoard,
+  picturePart,
+  spotInFrame,
+  spotInView,
+  tileSteps,
+} from "@/lib/board/layout";
+import { questionPictures } from "@/lib/board/question-pictures";
 import { railRuns } from "@/lib/board/rail";
 import { boardStatus, noiseOfMean, stackFacts } from "@/lib/board/summary";
 import { makeBoard, makeEventfulBoard } from "@/tests/support/make-board";
@@ -41,7 +50,7 @@ test("the status line says what the board holds", () => {
     "17 of 18 tiles",
     "5 frames set aside",
     "4 loose frames",
-    "overlap at least 18 %",
+    "smallest overlap 18 %",
     "3 to 6 frames a tile",
   ]);
 });
@@ -53,7 +62,7 @@ test("the bench's head gives settings, brightness and the noise of the mean", ()
     "6 of 6 in use",
     "1/250 s f/8 ISO 100 105 mm",
     expect.stringMatching(/^brightness varies 0\.0\d EV$/),
-    "noise 41 %",
+    "noise down to 41 %",
   ]);
   // check-values.md, table 2.3: the mean of 7 frames has 1 / sqrt(7) = 0.378 of the noise of one.
   expect(noiseOfMean(7)).toBeCloseTo(0.378, 3);
@@ -93,6 +102,33 @@ test("a crop shows the same spot of a shifted frame, and says where it cannot", 
   expect(spotInFrame(frame, { x: 700, y: 500 })).toEqual({ centreXPx: 690, centreYPx: 520, isSameSpot: true });
   const far = spotInFrame({ ...frame, shift: { xPx: 3790, yPx: 0 } }, { x: 700, y: 500 });
   expect(far).toEqual({ centreXPx: 750, centreYPx: 500, isSameSpot: false });
+});
+
+test("what is compared stays inside both frames, so that it stays the same spot", () => {
+  const reference = { widthPx: 1500, heightPx: 1000, shift: null };
+  const frame = { widthPx: 1500, heightPx: 1000, shift: { xPx: 40, yPx: -20 } };
+  const seen = { widthPx: 600, heightPx: 400 };
+  // By hand: the frame begins 40 px further right and ends 20 px higher than the reference.
+  expect(spotInView({ x: 0, y: 0 }, seen, [reference, frame])).toEqual({ x: 340, y: 200 });
+  expect(spotInView({ x: 1500, y: 1000 }, seen, [reference, frame])).toEqual({ x: 1200, y: 780 });
+  expect(spotInView({ x: 0, y: 0 }, seen, [reference, { ...frame, shift: { xPx: 3790, yPx: 0 } }])).toEqual({
+    x: 300,
+    y: 200,
+  });
+});
+
+test("a seam's question shows both tiles at the middle of what they share", () => {
+  const index = indexBoard(makeBoard({ rows: 1, columns: 2, framesPerTile: 4 }));
+  const [left, right] = ["A1", "A2"].map((name) => index.tiles.get(name)?.stack);
+  if (!left?.position || !right?.position) throw new Error("the recipe places its tiles");
+  const asked = { frameIds: [], stackIds: [left.id, right.id] };
+  const [question] = makeEventfulBoard().questions;
+  if (!question) throw new Error("the recipe has questions");
+  const [first, second] = questionPictures(index, { ...question, ...asked });
+  const scene = (corner: { xPx: number }, centre: { centreXPx: number } | null | undefined) =>
+    corner.xPx + (centre?.centreXPx ?? NaN);
+  expect(first?.centre?.isSameSpot && second?.centre?.isSameSpot).toBe(true);
+  expect(scene(left.position, first?.centre)).toBeCloseTo(scene(right.position, second?.centre), 6);
 });
 
 test("the bench wraps evenly: 12 frames are two rows of 6, 7 are one", () => {

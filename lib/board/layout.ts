@@ -150,6 +150,35 @@ export function spotInFrame(
   return { centreXPx: frame.widthPx / 2, centreYPx: frame.heightPx / 2, isSameSpot };
 }
 
+/**
+ * The spot nearest to a wished one that leaves what is seen around it inside every frame that shows it: crops that
+ * were pushed in at one frame's edge would no longer lie at the same spot.
+ * @param spotPx - the spot, reference's full-size px
+ * @param seen - size of what is seen around it, full-size px
+ * @param frames - the reference first; a frame that has no such spot is passed over
+ */
+export function spotInView(
+  spotPx: { readonly x: number; readonly y: number },
+  seen: { readonly widthPx: number; readonly heightPx: number },
+  frames: readonly Pick<BoardFrame, "widthPx" | "heightPx" | "shift">[],
+): { x: number; y: number } {
+  const across = frames.map((frame) => ({ from: frame.shift?.xPx ?? 0, side: frame.widthPx }));
+  const down = frames.map((frame) => ({ from: frame.shift?.yPx ?? 0, side: frame.heightPx }));
+  return { x: inside(spotPx.x, seen.widthPx, across), y: inside(spotPx.y, seen.heightPx, down) };
+}
+
+function inside(wished: number, seen: number, spans: readonly { readonly from: number; readonly side: number }[]) {
+  let least = -Infinity;
+  let most = Infinity;
+  for (const { from, side } of spans) {
+    const half = Math.min(seen, side) / 2;
+    if (from + half > most || from + side - half < least) continue;
+    least = Math.max(least, from + half);
+    most = Math.min(most, from + side - half);
+  }
+  return clamp(wished, least, most);
+}
+
 const BENCH_GAP_PX = 12;
 /** Narrowest and widest crop on the bench. */
 const CROP_LEAST_PX = 148;

@@ -6,7 +6,8 @@ export interface QuestionPicture {
   readonly frame: BoardFrame;
   /** The frame's name, or the tile whose reference it is. */
   readonly label: string;
-  readonly centre: CropCentre;
+  /** Null: the whole frame, because the pictures of the question share no spot. */
+  readonly centre: CropCentre | null;
 }
 
 /** More would not fit beside the question. */
@@ -20,19 +21,34 @@ interface Placed {
 }
 
 /**
- * The pictures that decide a question, at the same spot of the scene: the frames it is about and the references of
- * the tiles it names. The spot is that of the named tiles which most of the pictures show.
+ * The pictures that decide a question: the frames it is about and the references of the tiles it names. At the same
+ * spot of the scene where all of them show one (that of a named tile, else the middle of what two share), else whole.
  */
 export function questionPictures(index: BoardIndex, question: BoardQuestion): QuestionPicture[] {
   const placed = [...askedFrames(index, question), ...references(index, question)].slice(0, MOST_PICTURES);
-  const spots = question.stackIds.flatMap((id) => sceneSpot(index, id));
-  const counts = spots.map((spot) => placed.filter((picture) => centreAt(picture, spot).isSameSpot).length);
-  const best = spots[counts.indexOf(Math.max(...counts))];
+  const spots = [...question.stackIds.flatMap((id) => sceneSpot(index, id)), ...sharedSpots(placed)];
+  const spot = spots.find((candidate) => placed.every((picture) => centreAt(picture, candidate).isSameSpot));
   return placed.map((picture) => ({
     frame: picture.frame,
     label: picture.label,
-    centre: best ? centreAt(picture, best) : spotInFrame(picture.frame, { x: -1, y: -1 }),
+    centre: spot ? centreAt(picture, spot) : null,
   }));
+}
+
+/** The middle of what each two of the pictures both show: where a seam is judged. */
+function sharedSpots(placed: readonly Placed[]): { x: number; y: number }[] {
+  const boxes = placed.flatMap(({ frame, corner }) =>
+    corner ? [{ ...corner, right: corner.x + frame.widthPx, bottom: corner.y + frame.heightPx }] : [],
+  );
+  return boxes.flatMap((box, at) =>
+    boxes.slice(at + 1).flatMap((other) => {
+      const left = Math.max(box.x, other.x);
+      const top = Math.max(box.y, other.y);
+      const right = Math.min(box.right, other.right);
+      const bottom = Math.min(box.bottom, other.bottom);
+      return left < right && top < bottom ? [{ x: (left + right) / 2, y: (top + bottom) / 2 }] : [];
+    }),
+  );
 }
 
 function askedFrames(index: BoardIndex, question: BoardQuestion): Placed[] {

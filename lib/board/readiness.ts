@@ -1,4 +1,5 @@
 import type { BoardIndex } from "@/lib/board/board-index";
+import type { BoardSeam } from "@/lib/board/model";
 import { countOf, percent } from "@/lib/board/words";
 import { SET_ASIDE_REASONS, type SetAsideReason } from "@/lib/sorting/types";
 
@@ -28,7 +29,8 @@ export function openPoints(index: BoardIndex): OpenPoint[] {
       kind: "questions",
       text: countOf(board.questions.length, "open question"),
       meaning: "The computation is not sure; its best guess is in the manifest.",
-      tile: board.questions.find(({ tile }) => tile !== null && index.tiles.has(tile))?.tile ?? null,
+      // The board's docket walks through all of them.
+      tile: null,
     }),
     point(unplaced.length, {
       kind: "unplaced",
@@ -44,7 +46,7 @@ export function openPoints(index: BoardIndex): OpenPoint[] {
     }),
     point(small.length, {
       kind: "seams",
-      text: `${countOf(small.length, "small overlap")}`,
+      text: `${countOf(small.length, "small overlap")}: ${listed(small.map((seam) => seamName(index, seam)))}`,
       meaning: `Under the ${percent(board.grid.overlapWanted)} that the project wants.`,
       tile: index.tileOfStack.get(small[0]?.stackId ?? "")?.name ?? null,
     }),
@@ -70,6 +72,11 @@ export function setAsideCounts(index: BoardIndex): { readonly reason: SetAsideRe
     reason,
     count: index.board.frames.filter((frame) => frame.setAside === reason).length,
   })).filter(({ count }) => count > 0);
+}
+
+function seamName(index: BoardIndex, seam: BoardSeam): string {
+  const names = [seam.stackId, seam.neighbourId].map((id) => index.tileOfStack.get(id)?.name ?? "no place");
+  return `${names.join("–")} ${percent(seam.overlap)}`;
 }
 
 const MOST_LISTED = 8;

@@ -16,7 +16,7 @@ export function boardStatus(index: BoardIndex): string[] {
     ...(unplaced.length > 0 ? [`${countOf(unplaced.length, "stack")} without a place`] : []),
     `${countOf(setAside, "frame")} set aside`,
     countOf(loose.length, "loose frame"),
-    ...(overlaps.length > 0 ? [`overlap at least ${percent(Math.min(...overlaps))}`] : []),
+    ...(overlaps.length > 0 ? [`smallest overlap ${percent(Math.min(...overlaps))}`] : []),
     ...(sizes.length > 0 ? [`${rangeText(Math.min(...sizes), Math.max(...sizes))} a tile`] : []),
   ];
 }
@@ -29,7 +29,7 @@ export function stackFacts(tile: BoardTile, frames: readonly BoardFrame[]): stri
     `${inUse.length} of ${frames.length} in use`,
     ...settingsText(tile.reference ?? frames[0] ?? null),
     ...(spread === null ? [] : [`brightness varies ${spread.toFixed(2)} EV`]),
-    ...(inUse.length === 0 ? [] : [`noise ${percent(noiseOfMean(inUse.length))}`]),
+    ...(inUse.length === 0 ? [] : [`noise down to ${percent(noiseOfMean(inUse.length))}`]),
   ];
 }
 

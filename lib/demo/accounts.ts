@@ -10,9 +10,9 @@ export interface DemoAccount {
 }
 
 export const DEMO_ACCOUNTS: readonly DemoAccount[] = [
-  { email: "mona@stackyard.example", name: "Mona Harl", role: "lead", task: "plans, invites and hands over" },
-  { email: "jonas@stackyard.example", name: "Jonas Treve", role: "editor", task: "settles and merges" },
-  { email: "ines@stackyard.example", name: "Ines Okell", role: "viewer", task: "looks and comments" },
+  { email: "mona@stackyard.example", name: "Mona Harl", role: "lead", task: "brings in, sets the limits, hands over" },
+  { email: "jonas@stackyard.example", name: "Jonas Treve", role: "editor", task: "brings in frames and merges" },
+  { email: "ines@stackyard.example", name: "Ines Okell", role: "viewer", task: "looks at everything, changes nothing" },
 ];
 
 /** Public on purpose: printed at launch and offered on the sign-in page while the demo exists. */

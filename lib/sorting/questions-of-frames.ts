@@ -67,7 +67,7 @@ function questionOfStray(draft: SortedDraft, stack: StackDraft): ProposedQuestio
       message: isOne
         ? `Does ${first} belong to the picture?`
         : `Do ${ids.length} frames from ${first} on belong to it?`,
-      evidence: `${isOne ? "It overlaps" : "They overlap"} no tile as ${isOne ? "a neighbour" : "neighbours"} would.`,
+      evidence: `${isOne ? "It does" : "They do"} not overlap any tile the way neighbours do.`,
       frameIds: ids,
       stackIds: [],
       tile: null,

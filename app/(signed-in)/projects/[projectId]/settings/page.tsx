@@ -11,8 +11,8 @@ export const metadata: Metadata = { title: "Settings" };
 export default async function SettingsPage({ params }: { readonly params: Promise<{ projectId: string }> }) {
   const project = await getProject(await openProject((await params).projectId, "manage", true));
   return (
-    <div className="w-full max-w-5xl px-4 py-8 sm:px-5">
-      <h1 className="text-3xl font-bold">Settings</h1>
+    <div className="mx-auto w-full max-w-6xl px-4 py-8 sm:px-5">
+      <h1 className="text-2xl font-bold">Settings</h1>
       <div className="mt-2 grid gap-x-16 md:grid-cols-2">
         {!project.isArchived && <SettingsForm project={project} action={saveSettingsForm} />}
         <div>

@@ -3,7 +3,7 @@ import { createHash } from "node:crypto";
 import { readdir, readFile, rm } from "node:fs/promises";
 import path from "node:path";
 import { promisify } from "node:util";
-import { expect, test, type APIRequestContext, type Playwright } from "@playwright/test";
+import { expect, test, type APIRequestContext, type PlaywrightWorkerArgs } from "@playwright/test";
 import { DEMO_ACCOUNTS, DEMO_PASSWORD } from "@/lib/demo/accounts";
 import { getManifest } from "./support/manifest";
 import { signInByHttp } from "./support/people";
@@ -29,7 +29,7 @@ interface DemoView {
 }
 
 /** The demo as one of its people sees it. */
-async function openDemo(playwright: Playwright, baseURL: string, role: string): Promise<DemoView> {
+async function openDemo(playwright: PlaywrightWorkerArgs["playwright"], baseURL: string, role: string): Promise<DemoView> {
   const request = await playwright.request.newContext({ baseURL });
   const { email = "", name = "" } = DEMO_ACCOUNTS.find((account) => account.role === role) ?? {};
   await signInByHttp(request, { email, name, password: DEMO_PASSWORD });

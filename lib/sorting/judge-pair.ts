@@ -12,8 +12,13 @@ const LEAST_SHIFT_BETWEEN = 0.13;
 const LEAST_TEXTURE = 0.06;
 /** Contrast of the overlap, in units of what counts as texture, under which a match may be vignetting. Our own. */
 const LEAST_CONTRAST = 1;
-/** A match between different tiles rests on a part of the picture only, so it must be clearer. analysis.md, step 5. */
-const LEAST_PEAK_RATIO = 1.15;
+/**
+ * A match between different tiles rests on a part of the picture only, so it must be clearer: rows of windows in
+ * frames turned against each other match at many shifts alike. Our own, after analysis.md, step 5.
+ */
+const CLEAR_NCC = 0.6;
+const LEAST_PEAK_RATIO = 1.3;
+const LEAST_PEAK_RATIO_WEAK = 2;
 /**
  * A frame turned by 2 degrees correlates with its neighbour by 0.2 to 0.35 only, yet 12 and more standard deviations
  * above chance, which stays under 5. Our own, from generated handheld shoots.
@@ -61,7 +66,8 @@ export function judgePair(a: SortFrame, b: SortFrame, measure: PairMeasure): Ver
     if (shift < LARGEST_SHIFT_WITHIN) return "same";
     if (shift <= LEAST_SHIFT_BETWEEN) return "unknown";
     if (isPlain && measure.peakRatio < FAINT_PEAK_RATIO) return "unknown";
-    if (measure.peakRatio >= LEAST_PEAK_RATIO) return "different";
+    const isClear = measure.peakRatio >= (measure.ncc >= CLEAR_NCC ? LEAST_PEAK_RATIO : LEAST_PEAK_RATIO_WEAK);
+    if (isClear) return "different";
   }
   return isPlain ? "unknown" : "probably different";
 }

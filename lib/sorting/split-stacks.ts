@@ -37,7 +37,8 @@ export interface SplitOptions {
 
 /** Time may overrule "probably different" only where it errs on fewer of the decided pairs. Source: analysis.md, 4. */
 const MOST_TIME_ERRORS = 0.03;
-/** A picture verdict that time contradicts is believed only down to this correlation. Our own. */
+/** Fewer moves seen for sure say too little about how long a move takes. Our own. */
+const LEAST_SURE_MOVES = 3;
 const LONGEST_ODD_RUN = 2;
 /** Where neither texture nor time decide, plain frames this much alike are taken together. Our own. */
 const LEANING_NCC = 0.4;
@@ -86,15 +87,17 @@ function judgeLink(before: SortFrame, after: SortFrame, store: PairStore): Link 
   return { before, after, measure, pauseS: pauseSeconds(before, after), verdict };
 }
 
+/** From the pairs that the pictures decide for sure; from the probable ones too where those are too few. */
 function findLimit(links: readonly Link[]): PauseLimit | null {
   const timed = links.flatMap((link) => (link.pauseS === null ? [] : [{ ...link, seconds: link.pauseS }]));
-  const decided = timed
-    .filter((link) => link.verdict !== "unknown")
-    .map((link) => ({ seconds: link.seconds, isSame: link.verdict === "same" }));
-  return findPauseLimit(
-    decided,
-    timed.map((link) => link.seconds),
-  );
+  const pausesOf = (verdicts: readonly Verdict[]) =>
+    timed
+      .filter(({ verdict }) => verdicts.includes(verdict))
+      .map(({ seconds, verdict }) => ({ seconds, isSame: verdict === "same" }));
+  const all = timed.map((link) => link.seconds);
+  const sure = pausesOf(["same", "different"]);
+  if (sure.filter(({ isSame }) => !isSame).length >= LEAST_SURE_MOVES) return findPauseLimit(sure, all);
+  return findPauseLimit(pausesOf(["same", "different", "probably different"]), all);
 }
 
 /** Marks one or two frames in a row that match neither neighbour while the neighbours match each other. */

@@ -86,7 +86,14 @@ describe("a generated shoot with truth through the command", { timeout: 600_000 
 
   test("overlaps are right within 0.5 % of the side", () => {
     // analysis.md, targets; 750 px frames are measured at 256.
-    for (const { row, column, side, overlap } of truth.seams) {
+    // The truth is that of the first takes; a tile shot again was aimed a little differently the second time.
+    const again = new Set(truth.stacks.filter(({ take }) => take > 1).map((stack) => `${stack.row} ${stack.column}`));
+    const seams = truth.seams.filter(({ row, column, side }) => {
+      const other = side === "right" ? `${row} ${column + 1}` : `${row + 1} ${column}`;
+      return !again.has(`${row} ${column}`) && !again.has(other);
+    });
+    expect(seams.length).toBeGreaterThan(10);
+    for (const { row, column, side, overlap } of seams) {
       const stack = manifest.stacks.find((other) => other.row === row && other.column === column && other.chosenTake);
       expect(Math.abs((stack?.overlap[side] ?? -1) - overlap)).toBeLessThan(0.005);
     }

@@ -1,6 +1,7 @@
 import { describe, expect, test } from "vitest";
 
 import { createPairMeasurer } from "@/lib/analysis/pair-measurer";
+import { turnImage } from "@/lib/analysis/turn-image";
 import type { RegistrationImage } from "@/lib/analysis/types";
 import { makeRandom } from "@/tests/support/random";
 
@@ -61,5 +62,17 @@ describe("createPairMeasurer", () => {
     });
     await expect(measure("0,0", "0,0")).rejects.toThrow("gone");
     await expect(measure("0,0", "0,0")).resolves.toMatchObject({ xPx: 0, yPx: 0 });
+  });
+
+  test("frames turned by 3 degrees match when turning is tried, at the same shift", async () => {
+    const turned = turnImage(imageAt("108,104"), (3 * Math.PI) / 180);
+    const measure = createPairMeasurer({
+      load: (id) => Promise.resolve({ image: id === "turned" ? turned : imageAt(id), widthPx: 240, heightPx: 160 }),
+      measureSsim: () => 0,
+    });
+    const plain = await measure("100,100", "turned");
+    const found = await measure("100,100", "turned", "turned");
+    expect(found.ncc).toBeGreaterThan(plain.ncc + 0.2);
+    expect(Math.hypot(found.xPx - 8, found.yPx - 4)).toBeLessThan(1);
   });
 });

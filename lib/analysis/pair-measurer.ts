@@ -1,4 +1,5 @@
 import { measureShift, prepareRegistration, type ImageShift, type PreparedImage } from "@/lib/analysis/shift";
+import { turnImage } from "@/lib/analysis/turn-image";
 import type { PairMeasure, RegistrationImage } from "@/lib/analysis/types";
 
 /** What is loaded of one frame to register it. */
@@ -26,6 +27,17 @@ export interface PairMeasurerOptions {
   readonly preparedKept?: number;
 }
 
+/** Turns of the second frame that are tried: handheld frames of one tile lie up to 4 degrees to each other. Our own. */
+const TURNS_DEGREES = [-3.2, -1.6, 1.6, 3.2];
+/** Then half a step to either side of the best. */
+const FINER_DEGREES = [-0.8, 0.8];
+const RADIANS = Math.PI / 180;
+
+/** "turned" looks for frames turned against each other as well, at seven times the cost. */
+export type PairEffort = "plain" | "turned";
+
+export type PairMeasurer = (aId: string, bId: string, effort?: PairEffort) => Promise<PairMeasure>;
+
 /**
  * Measures pairs of frames on demand, as the sorting asks for them.
  * @param options - where the registration images come from
@@ -34,21 +46,49 @@ export interface PairMeasurerOptions {
  * Method and accuracy: see `measureShift`; prepared images are kept, the least recently used let go.
  * Edges: rejects with the error of `load` when that fails.
  */
-export function createPairMeasurer(options: PairMeasurerOptions): (aId: string, bId: string) => Promise<PairMeasure> {
+export function createPairMeasurer(options: PairMeasurerOptions): PairMeasurer {
   const fetchPrepared = keepRecent(options.preparedKept ?? PREPARED_KEPT, async (id: string): Promise<Prepared> => {
     const source = await options.load(id);
     return { source, prepared: prepareRegistration(source.image) };
   });
-  return async (aId, bId) => {
+  return async (aId, bId, effort = "plain") => {
     const [a, b] = await Promise.all([fetchPrepared(aId), fetchPrepared(bId)]);
     await options.giveWay?.();
     // One order for both ways round: rounding then cannot make the two differ.
     const isSwapped = aId > bId;
     const [first, second] = isSwapped ? [b, a] : [a, b];
-    const shift = measureShift(first.prepared, second.prepared);
+    const plain = measureShift(first.prepared, second.prepared);
+    const shift = effort === "turned" ? await measureTurned(first, second, plain, options.giveWay) : plain;
     const ssim = options.measureSsim(first.source.image, second.source.image);
     return toPairMeasure(a.source, isSwapped ? -1 : 1, shift, ssim);
   };
+}
+
+/** The best of the plain shift and those of the second frame turned; about the middle, so the shift is that of it. */
+async function measureTurned(
+  first: Prepared,
+  second: Prepared,
+  plain: ImageShift,
+  giveWay: (() => Promise<void>) | undefined,
+): Promise<ImageShift> {
+  let best = { degrees: 0, shift: plain };
+  const tryTurn = async (degrees: number): Promise<void> => {
+    await giveWay?.();
+    const turned = prepareRegistration(turnImage(second.source.image, degrees * RADIANS));
+    const shift = measureShift(first.prepared, turned);
+    if (scoreOf(shift, first) > scoreOf(best.shift, first)) best = { degrees, shift };
+  };
+  for (const degrees of TURNS_DEGREES) await tryTurn(degrees);
+  const middle = best.degrees;
+  for (const degrees of FINER_DEGREES) await tryTurn(middle + degrees);
+  return best.shift;
+}
+
+/** As `measureShift` chooses among its peaks: a small overlap must correlate better. */
+function scoreOf({ x, y, ncc }: ImageShift, { source }: Prepared): number {
+  const { widthPx, heightPx } = source.image;
+  const share = Math.max(0, 1 - Math.abs(x) / widthPx) * Math.max(0, 1 - Math.abs(y) / heightPx);
+  return Math.atanh(Math.min(ncc, 0.999999)) * Math.sqrt(share);
 }
 
 function toPairMeasure(a: RegistrationSource, sign: number, shift: ImageShift, ssim: number): PairMeasure {

@@ -24,6 +24,8 @@ const LEAST_PEAK_RATIO_WEAK = 2;
  * above chance, which stays under 5. Our own, from generated handheld shoots.
  */
 const SURE_SIGNIFICANCE = 8;
+/** Rows of windows match at small shifts too, but never as well as the same tile. Our own. */
+const SURE_SAME_NCC = 0.8;
 /** Chance seldom falls among the few small shifts. */
 const SURE_SIGNIFICANCE_WITHIN = 6;
 /** Limits for a match in plain sky. Our own, from generated shoots. */
@@ -63,7 +65,10 @@ export function judgePair(a: SortFrame, b: SortFrame, measure: PairMeasure): Ver
   const isPlain = !isTextured(a) || !isTextured(b) || measure.contrast < LEAST_CONTRAST;
   const shift = shiftFraction(measure, a);
   if (isMatch(measure, a)) {
-    if (shift < LARGEST_SHIFT_WITHIN) return "same";
+    if (shift < LARGEST_SHIFT_WITHIN) {
+      const isDoubtful = !isPlain && measure.ncc < SURE_SAME_NCC && measure.peakRatio < SURE_PEAK_RATIO;
+      return isDoubtful ? "unknown" : "same";
+    }
     if (shift <= LEAST_SHIFT_BETWEEN) return "unknown";
     if (isPlain && measure.peakRatio < FAINT_PEAK_RATIO) return "unknown";
     const isClear = measure.peakRatio >= (measure.ncc >= CLEAR_NCC ? LEAST_PEAK_RATIO : LEAST_PEAK_RATIO_WEAK);

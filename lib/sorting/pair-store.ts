@@ -12,6 +12,7 @@ export type Pair = readonly [string, string];
  */
 export class PairStore {
   private readonly known = new Map<string, PairMeasure>();
+  private readonly turned = new Set<string>();
   private readonly frames: ReadonlyMap<string, SortFrame>;
 
   constructor(
@@ -38,6 +39,22 @@ export class PairStore {
       }
     };
     queue.reverse();
+    await Promise.all(Array.from({ length: Math.min(ASKED_AT_ONCE, queue.length) }, next));
+  }
+
+  /** Looks at pairs once more, for frames turned against each other; what is found replaces what was known. */
+  async measureTurned(pairs: readonly Pair[]): Promise<void> {
+    const queue = pairs
+      .map(([a, b]): Pair => (a < b ? [a, b] : [b, a]))
+      .filter(([a, b]) => !this.turned.has(keyOf(a, b)));
+    queue.reverse();
+    const next = async (): Promise<void> => {
+      for (let pair = queue.pop(); pair; pair = queue.pop()) {
+        const [a, b] = pair;
+        this.turned.add(keyOf(a, b));
+        this.known.set(keyOf(a, b), await this.measurePair(a, b, "turned"));
+      }
+    };
     await Promise.all(Array.from({ length: Math.min(ASKED_AT_ONCE, queue.length) }, next));
   }
 

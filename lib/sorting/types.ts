@@ -80,8 +80,11 @@ export interface SortInput {
   readonly options: SortOptions;
 }
 
-/** Measures two frames on demand; the sorting decides which pairs it needs. Must be symmetric up to sign. */
-export type MeasurePair = (aId: string, bId: string) => Promise<PairMeasure>;
+/**
+ * Measures two frames on demand; the sorting decides which pairs it needs. Must be symmetric up to sign.
+ * "turned" asks to look for frames turned against each other as well, at several times the cost.
+ */
+export type MeasurePair = (aId: string, bId: string, effort?: "plain" | "turned") => Promise<PairMeasure>;
 
 export interface SortProgress {
   readonly step: "order" | "stacks" | "grid" | "frames" | "done";

@@ -13,14 +13,18 @@ export async function readJson<Body>(request: Request, schema: z.ZodType<Body>):
   if (type !== "application/json") {
     throw new AppError("unsupported_media_type", "Send this as application/json.");
   }
-  const parsed = schema.safeParse(parse(await readText(request)));
+  const parsed = schema.safeParse(parse(await readText(request, MAX_BODY_BYTES)));
   if (parsed.success) return parsed.data;
   const fields = parsed.error.issues.map((issue) => ({ field: issue.path.join("."), message: issue.message }));
   const sentence = fields.map(({ field, message }) => (field ? `${field}: ${message}` : message)).join("; ");
   throw new AppError("invalid", sentence, { fields });
 }
 
-async function readText(request: Request): Promise<string> {
+/**
+ * Reads a body as text, and no further than it may be long.
+ * @throws AppError too_large
+ */
+export async function readText(request: Request, mostBytes: number): Promise<string> {
   const reader = request.body?.getReader();
   if (!reader) return "";
   const chunks: Uint8Array[] = [];
@@ -29,9 +33,9 @@ async function readText(request: Request): Promise<string> {
     const { done, value } = await reader.read();
     if (done) return Buffer.concat(chunks).toString("utf8");
     bytes += value.byteLength;
-    if (bytes > MAX_BODY_BYTES) {
+    if (bytes > mostBytes) {
       await reader.cancel();
-      throw new AppError("too_large", "This is more than one call may carry (1 MiB). Send it in parts.");
+      throw new AppError("too_large", `This is more than one call may carry (${mostBytes} bytes). Send it in parts.`);
     }
     chunks.push(value);
   }

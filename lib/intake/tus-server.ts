@@ -29,6 +29,8 @@ function server(): Server {
     maxSize: UPLOAD_MOST_BYTES,
     relativeLocation: true,
     disableTerminationForFinishedUploads: true,
+    // Without it the last part of the whole address counts, query and all: not what the gate has looked at.
+    getFileIdFromRequest: (request) => new URL(request.url).pathname.split("/").at(-1),
     namingFunction: (request) => creationOf(request).id,
     onUploadCreate: async (request, upload) => {
       const lengthBytes = upload.size ?? 0;

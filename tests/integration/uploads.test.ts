@@ -14,6 +14,7 @@ import {
   tusMetadata,
   uploadFile,
 } from "../support/uploads";
+import { DELETE } from "@/app/api/uploads/[[...path]]/route";
 import { database } from "@/db/client";
 import { jobs } from "@/db/schema/jobs";
 import { accessForJob } from "@/lib/auth/gate";
@@ -236,6 +237,20 @@ describe("who may", () => {
     ]);
     await signInAs(lead);
     expect((await headUpload(location)).headers.get("upload-offset")).toBe("0");
+  });
+
+  test("the upload that is acted on is the one that the gate has looked at, whatever the query says", async () => {
+    const theirs = await begin();
+    const editor = await makePerson("Ed");
+    await addMember(projectId, editor, "editor");
+    await signInAs(editor);
+    const own = await begin("OWN.JPG");
+    const url = `http://localhost:3000${own}?x=/${idOf(theirs)}`;
+    const request = new Request(url, { method: "DELETE", headers: { "tus-resumable": "1.0.0" } });
+    expect((await DELETE(request, { params: Promise.resolve({ path: [idOf(own)] }) })).status).toBe(204);
+    expect((await headUpload(own)).status).toBe(404);
+    await signInAs(lead);
+    expect((await headUpload(theirs)).status).toBe(200);
   });
 
   test("another site's page cannot upload with a person's cookie", async () => {

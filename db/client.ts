@@ -29,12 +29,13 @@ function connection(): Connection {
 }
 
 function connect(url: string): Connection {
-  if (url.startsWith("file:")) mkdirSync(path.dirname(pathOf(url)), { recursive: true });
+  if (url.startsWith("file:")) mkdirSync(path.dirname(databaseFile(url)), { recursive: true });
   const client = createClient({ url, timeout: BUSY_TIMEOUT_MS });
   return { client, db: drizzle(client), tail: Promise.resolve() };
 }
 
-function pathOf(url: string): string {
+/** Where a `file:` database lies. */
+export function databaseFile(url: string): string {
   return url.startsWith("file://") ? fileURLToPath(url) : url.slice("file:".length);
 }
 

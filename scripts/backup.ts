@@ -1,14 +1,19 @@
 // `npm run --silent backup -- DIR`: copies database and storage into a new folder, while the product runs.
-import { mkdir, readdir } from "node:fs/promises";
+import { access, mkdir, readdir } from "node:fs/promises";
 import path from "node:path";
 import { copyDatabase } from "@/db/backup";
-import { closeDatabase } from "@/db/client";
+import { closeDatabase, databaseFile } from "@/db/client";
 import { environment } from "@/lib/env";
 import { copyStorage } from "@/lib/storage/backup";
 
 async function backUp(target: string): Promise<void> {
   const { databaseUrl, storageDir } = environment();
   if (!databaseUrl.startsWith("file:")) throw new Error("Only a file: database is copied by this command.");
+  // Opening would make an empty one, and the copy of it would look like a backup.
+  const database = databaseFile(databaseUrl);
+  await access(database).catch(() => {
+    throw new Error(`There is no database at ${database}. Give STORAGE_DIR as it was given to the product.`);
+  });
   if (target === storageDir || target.startsWith(storageDir + path.sep)) {
     throw new Error("A backup inside the storage folder would be lost with it. Choose another folder.");
   }
@@ -20,6 +25,8 @@ async function backUp(target: string): Promise<void> {
   console.log(`Copied the database and ${files} files to ${target}`);
 }
 
+// Originals, password hashes and the secret: for whoever makes the backup alone.
+process.umask(0o077);
 const [folder, ...more] = process.argv.slice(2);
 try {
   if (!folder || more.length > 0) throw new Error("Use: npm run --silent backup -- DIR");

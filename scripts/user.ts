@@ -18,6 +18,8 @@ async function readPassword(): Promise<string> {
     .replace(/\r?\n$/, "");
 }
 
+// It may be the first to come, and make the database.
+process.umask(0o077);
 try {
   console.log(await runUserCommand(process.argv.slice(2), readPassword));
 } catch (error) {

@@ -31,13 +31,15 @@ export async function launch(args: readonly string[]): Promise<number> {
   }
   const port = await claimPort(settings.port, settings.host);
   await ensureBuild();
+  // Web and worker inherit it: originals, previews and the database are for this account of the machine alone.
+  process.umask(0o077);
   await migrate();
   return runUntilStopped(settings, port, option === "launch");
 }
 
 async function prepareStorage({ storageDir }: Environment): Promise<void> {
   try {
-    await mkdir(storageDir, { recursive: true });
+    await mkdir(storageDir, { recursive: true, mode: 0o700 });
     await access(storageDir, constants.R_OK | constants.W_OK);
   } catch (cause) {
     throw new Error(`Cannot write to the storage folder ${storageDir} (STORAGE_DIR).`, { cause });

@@ -97,10 +97,10 @@ function rateGraph({ edges, steps, components: pieces }: GridGraph, few: Readonl
     const [a, b] = [labels.get(edge.a), labels.get(edge.b)];
     if (edge.steps || !a || !b) continue;
     const isSame = Math.hypot(edge.x, edge.y) < LARGEST_SAME_PLACE;
-    const { columns, rows, misfit } = isSame ? { columns: 0, rows: 0, misfit: 0 } : inSteps(edge, steps);
+    const found = isSame ? { columns: 0, rows: 0, misfit: 0 } : inSteps(edge, steps);
     if (isSame) samePlace.add(`${edge.a} ${edge.b}`);
-    if (b.column - a.column !== columns || b.row - a.row !== rows) continue;
-    rating += edge.weight * trustIn(edge, misfit, scale);
+    if (b.column - a.column !== found.columns || b.row - a.row !== found.rows) continue;
+    rating += edge.weight * trustIn(edge, found, scale);
   }
   for (const component of components) {
     const box = boxOf([...component.values()]);

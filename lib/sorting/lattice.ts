@@ -1,5 +1,5 @@
 import type { Edge } from "./edges";
-import { inSteps, type Steps } from "./lattice-steps";
+import { inSteps, type Steps, type WholeSteps } from "./lattice-steps";
 import { LARGEST_SAME_PLACE } from "./vector";
 
 /** A place relative to an origin that has no meaning: differences within one component do. */
@@ -18,11 +18,6 @@ export type Component = ReadonlyMap<number, Label>;
 const LEAST_MISFIT_SCALE = 0.1;
 const LARGEST_MISFIT_SCALE = 0.35;
 const USUAL_MISFITS = 4;
-/**
- * A match this good is feigned by no row of windows (repeating patterns reach 0.7: analysis.md, "Known to fail"): where
- * it lies off the lattice, its tile was aimed so. Our own.
- */
-const UNDOUBTED_NCC = 0.8;
 /** Two stacks on one place that do not show the same weigh against it as much as a clear edge. Our own. */
 export const CLASH_WEIGHT = 8;
 const MOST_SWEEPS = 12;
@@ -51,8 +46,9 @@ export function labelStacks(count: number, edges: readonly Edge[], steps: Steps)
   const stepEdges = edges.map((edge): StepEdge => {
     if (edge.steps) return { a: edge.a, b: edge.b, ...edge.steps, weight: edge.weight };
     if (Math.hypot(edge.x, edge.y) < LARGEST_SAME_PLACE) return { ...edge, columns: 0, rows: 0 };
-    const { columns, rows, misfit } = inSteps(edge, steps);
-    return { a: edge.a, b: edge.b, columns, rows, weight: edge.weight * trustIn(edge, misfit, scale) };
+    const found = inSteps(edge, steps);
+    const weight = edge.weight * trustIn(edge, found, scale);
+    return { a: edge.a, b: edge.b, columns: found.columns, rows: found.rows, weight };
   });
   const tree = spanningTree(count, stepEdges);
   const incident = listIncident(count, stepEdges);
@@ -77,14 +73,14 @@ export function misfitScale(edges: readonly Edge[], steps: Steps): number {
 }
 
 /**
- * How much an edge's word still counts for its misfit.
- * @param misfit - in steps
+ * How much an edge's word still counts for its misfit. Stacks shot one after the other are nearly always neighbours:
+ * where a single step between them lies off the lattice, the tile was aimed so.
  * @param scale - of the grid, from `misfitScale`
  * @returns 0 to 1
  */
-export function trustIn(edge: Pick<Edge, "ncc">, misfit: number, scale: number): number {
-  const own = edge.ncc >= UNDOUBTED_NCC ? LARGEST_MISFIT_SCALE : scale;
-  return Math.exp(-((misfit / own) ** 2));
+export function trustIn(edge: Pick<Edge, "a" | "b">, found: WholeSteps, scale: number): number {
+  const isNextShot = Math.abs(edge.b - edge.a) === 1 && Math.abs(found.columns) + Math.abs(found.rows) === 1;
+  return Math.exp(-((found.misfit / (isNextShot ? LARGEST_MISFIT_SCALE : scale)) ** 2));
 }
 
 function spanningTree(count: number, edges: readonly StepEdge[]): StepEdge[] {

@@ -20,7 +20,8 @@ interface CropProps {
 /** A piece of a frame at 100 %: one pixel of the frame is one pixel of the screen, however dense the screen. */
 export function Crop({ projectId, frame, centre, size, alt }: CropProps) {
   const density = useScreenDensity();
-  const room = { widthPx: size.widthPx, heightPx: size.heightPx };
+  // In the style too: the page gives pictures a height of their own otherwise.
+  const room = { ...size, style: { width: size.widthPx, height: size.heightPx } };
   if (centre === null) {
     return <Picture src={thumbnailUrl(projectId, frame.id)} alt={alt} {...room} className="object-contain" />;
   }

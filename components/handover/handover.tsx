@@ -114,7 +114,7 @@ function hrefOf(projectId: string, open: OpenPoint): string {
 }
 
 function placeText(tile: string): string {
-  return tile === "loose" ? "Show them" : `Show ${tile}`;
+  return tile === "loose" ? "Show loose frames" : `Show ${tile}`;
 }
 
 function Counts({ index }: { readonly index: BoardIndex }) {

@@ -13,7 +13,7 @@ interface FailureProps {
 /** A page that could not be shown, in words. */
 export function Failure({ title, children, action }: FailureProps) {
   return (
-    <div className="max-w-prose py-6">
+    <div className="max-w-prose py-8">
       <h1 className="text-3xl font-bold">{title}</h1>
       <div className="mt-4 space-y-3">{children}</div>
       <div className="mt-6 flex flex-wrap gap-3">

@@ -69,7 +69,7 @@ function references(index: BoardIndex, question: BoardQuestion): Placed[] {
     const frame = index.framesById.get(stack?.referenceId ?? "");
     if (!tile || !stack || !frame || question.frameIds.includes(frame.id)) return [];
     const corner = stack.position ? { x: stack.position.xPx, y: stack.position.yPx } : null;
-    return [{ frame, label: stack.take > 1 ? `${tile.name}, take ${stack.take}` : tile.name, corner }];
+    return [{ frame, label: tile.takes.length > 1 ? `${tile.name}, take ${stack.take}` : tile.name, corner }];
   });
 }
 

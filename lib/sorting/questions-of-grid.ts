@@ -113,7 +113,7 @@ function fewQuestions(draft: SortedDraft): ProposedQuestion[] {
   return few.map((stack) => ({
     key: `few-frames ${stack.id}`,
     kind: "few-frames",
-    message: `Are ${countOf(framesInUse(stack).length)} enough for ${nameOf(draft, stack.index)}?`,
+    message: `${framesInUse(stack).length === 1 ? "Is" : "Are"} ${countOf(framesInUse(stack).length)} enough for ${nameOf(draft, stack.index)}?`,
     evidence: `${countOf(stack.frames.length)}, ${framesInUse(stack).length} in use; ${least} or more are wanted.`,
     frameIds: [],
     stackIds: [stack.id],

@@ -10,7 +10,7 @@ interface ErrorInProjectProps {
 /** Header and job ticket stay: only the view below them failed. */
 export default function ErrorInProject({ error, reset }: ErrorInProjectProps) {
   return (
-    <div className="px-4 sm:px-5">
+    <div className="mx-auto w-full max-w-6xl px-4 sm:px-5">
       <UnexpectedFailure digest={error.digest} onRetry={reset} />
     </div>
   );

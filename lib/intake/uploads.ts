@@ -3,7 +3,7 @@ import { requireProject, requireUser } from "@/lib/auth/gate";
 import { AppError } from "@/lib/errors/app-error";
 import { newId, type UploadId, uploadIdSchema } from "@/lib/ids";
 import { finishIfComplete } from "@/lib/intake/finish";
-import { findOwnUpload, type UploadRecord } from "@/lib/intake/reads";
+import { findOwnUpload, findUpload, type UploadRecord } from "@/lib/intake/reads";
 import { answerByTus } from "@/lib/intake/tus-server";
 import { parseUploadMetadata } from "@/lib/intake/upload-metadata";
 import { cancelUpload } from "@/lib/intake/writes";
@@ -53,12 +53,20 @@ export async function continueUpload(request: Request, id: UploadId): Promise<Re
   if (offset === null) throw new AppError("invalid", "Upload-Offset is missing.");
   const declared = headers.get("content-length");
   await requireSpace(upload.finishedAtMs === null ? Number(declared ?? 0) : 0);
-  const response = await answerByTus(request);
+  const response = await takeBytes(request, id);
   const taken = Number(response.headers.get("upload-offset")) - Number(offset);
   if (declared !== null && taken !== Number(declared)) {
     throw new AppError("conflict", `${declared} bytes were announced, ${taken} arrived. Go on from what HEAD says.`);
   }
   return response;
+}
+
+/** An upload that was cancelled, or whose project was deleted, while bytes came in is gone, whatever became of them. */
+async function takeBytes(request: Request, id: UploadId): Promise<Response> {
+  const answer = await answerByTus(request).catch((error: unknown) => ({ error }));
+  if (!(await findUpload(id))) throw noSuchUpload();
+  if ("error" in answer) throw answer.error;
+  return answer;
 }
 
 /** tus termination: cancels an upload whose last byte is not in. What has arrived is never taken back. */
@@ -75,9 +83,12 @@ async function requireOwnUpload(request: Request, id: UploadId): Promise<UploadR
   const user = await requireUser();
   requireProtocol(request.headers);
   const upload = await findOwnUpload(user.id, id);
-  if (!upload || !(await mayEdit(upload)))
-    throw new AppError("not_found", "There is no such upload, or it is not yours.");
+  if (!upload || !(await mayEdit(upload))) throw noSuchUpload();
   return upload;
+}
+
+function noSuchUpload(): AppError {
+  return new AppError("not_found", "There is no such upload, or it is not yours.");
 }
 
 async function mayEdit(upload: UploadRecord): Promise<boolean> {

@@ -14,7 +14,7 @@ import {
   tusMetadata,
   uploadFile,
 } from "../support/uploads";
-import { DELETE } from "@/app/api/uploads/[[...path]]/route";
+import { DELETE, PATCH } from "@/app/api/uploads/[[...path]]/route";
 import { database } from "@/db/client";
 import { jobs } from "@/db/schema/jobs";
 import { accessForJob } from "@/lib/auth/gate";
@@ -23,6 +23,7 @@ import type { ProjectId } from "@/lib/ids";
 import { finishCompleteUploads } from "@/lib/intake/finish";
 import { getIntakeList } from "@/lib/intake/intake-list";
 import { environment } from "@/lib/env";
+import { deleteProject } from "@/lib/projects/writes";
 
 const storageDir = useDatabase();
 const BYTES = Buffer.from(Array.from({ length: 100 }, (_, i) => (i * 37) % 256));
@@ -268,6 +269,29 @@ describe("nothing is lost", () => {
     expect((await deleteUpload(location)).status).toBe(204);
     expect(await progress()).toMatchObject({ received: 0, total: 0 });
     expect((await headUpload(location)).status).toBe(404);
+    expect(existsSync(path.join(storageDir, "originals", idOf(location)))).toBe(false);
+  });
+
+  test("bytes for a project that is deleted while they come in find no upload", async () => {
+    const location = await begin();
+    const bytes = new ReadableStream<Uint8Array>({
+      async start(controller) {
+        controller.enqueue(BYTES.subarray(0, 50));
+        await expect.poll(() => stored(idOf(location)).length).toBe(50);
+        await deleteProject(accessForJob({ projectId }), "Harbour");
+        controller.enqueue(BYTES.subarray(50));
+        controller.close();
+      },
+    });
+    const headers = {
+      "tus-resumable": "1.0.0",
+      "content-type": "application/offset+octet-stream",
+      "upload-offset": "0",
+    };
+    const init = { method: "PATCH", headers, body: bytes, duplex: "half" };
+    const request = new Request(`http://localhost:3000${location}`, init as RequestInit);
+    const answer = await PATCH(request, { params: Promise.resolve({ path: [idOf(location)] }) });
+    expect([answer.status, await answer.json()]).toMatchObject([404, { code: "not_found" }]);
     expect(existsSync(path.join(storageDir, "originals", idOf(location)))).toBe(false);
   });
 

@@ -56,7 +56,7 @@ const IMPURE = {
 const PURE_FILES = [
   "lib/analysis/**/*.ts",
   "lib/sorting/**/*.ts",
-  "lib/board/{model,tile-name,commands}.ts",
+  "lib/board/!(*reads|*writes|*queries|schema|mutations|*.test).ts",
   "lib/handover/!(reads|writes|schema|queries).ts",
   "lib/auth/roles.ts",
 ];

@@ -81,13 +81,7 @@ export function CompareDialog({ index, name, stack, frames, reference, frameId, 
           paneRef={paneRef}
           note={frameNote(frame)}
         />
-        <Pane
-          projectId={index.board.projectId}
-          frame={reference}
-          spot={spot}
-          size={size}
-          note="reference, the sharpest in use"
-        />
+        <Pane projectId={index.board.projectId} frame={reference} spot={spot} size={size} note="reference" />
       </div>
       <div className="mt-4 flex flex-wrap items-end gap-x-8 gap-y-3">
         <SpotMap projectId={index.board.projectId} reference={reference} spot={spot} size={seen} onMove={moveTo} />

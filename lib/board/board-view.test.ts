@@ -12,7 +12,7 @@ import {
 } from "@/lib/board/layout";
 import { questionPictures } from "@/lib/board/question-pictures";
 import { railRuns } from "@/lib/board/rail";
-import { boardStatus, noiseOfMean, stackFacts } from "@/lib/board/summary";
+import { boardStatus, stackFacts } from "@/lib/board/summary";
 import { makeBoard, makeEventfulBoard } from "@/tests/support/make-board";
 
 const all = { left: true, right: true, above: true, below: true };
@@ -64,8 +64,6 @@ test("the bench's head gives settings, brightness and the noise of the mean", ()
     expect.stringMatching(/^brightness varies 0\.0\d EV$/),
     "noise down to 41 %",
   ]);
-  // check-values.md, table 2.3: the mean of 7 frames has 1 / sqrt(7) = 0.378 of the noise of one.
-  expect(noiseOfMean(7)).toBeCloseTo(0.378, 3);
 });
 
 test("the comb runs from the soft limit to the best frame", () => {

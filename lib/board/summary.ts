@@ -1,3 +1,4 @@
+import { expectedNoise } from "@/lib/board/expected-noise";
 import type { BoardIndex, BoardTile } from "@/lib/board/board-index";
 import { countOf, exposureText, percent, trimmed } from "@/lib/board/words";
 import type { BoardFrame } from "@/lib/board/model";
@@ -29,7 +30,7 @@ export function stackFacts(tile: BoardTile, frames: readonly BoardFrame[]): stri
     `${inUse.length} of ${frames.length} in use`,
     ...settingsText(tile.reference ?? frames[0] ?? null),
     ...(spread === null ? [] : [`brightness varies ${spread.toFixed(2)} EV`]),
-    ...(inUse.length === 0 ? [] : [`noise down to ${percent(noiseOfMean(inUse.length))}`]),
+    ...(inUse.length === 0 ? [] : [`noise down to ${percent(expectedNoise(inUse.length, "mean"))}`]),
   ];
 }
 
@@ -44,11 +45,6 @@ export function settingsText(frame: BoardFrame | null): string[] {
     focalLengthMm === null ? null : `${trimmed(focalLengthMm)} mm`,
   ].filter((part) => part !== null);
   return parts.length === 0 ? [] : [parts.join(" ")];
-}
-
-/** Noise of the mean of n equal frames against one frame: 1 / sqrt(n) (check-values.md 2.3). @param count - 1 or more */
-export function noiseOfMean(count: number): number {
-  return 1 / Math.sqrt(count);
 }
 
 /** From the darkest to the brightest frame, exposure values; null for fewer than two or a black frame. */

@@ -1,5 +1,6 @@
 import type { BoardIndex, BoardTile } from "@/lib/board/board-index";
-import { leastOverlaps, noiseOfMean } from "@/lib/board/summary";
+import { expectedNoise } from "@/lib/board/expected-noise";
+import { leastOverlaps } from "@/lib/board/summary";
 import { clockText } from "@/lib/board/words";
 
 /** One tile or hole as the table lists it. Null: does not apply, or not measured. */
@@ -81,7 +82,7 @@ function tileRow(tile: BoardTile, leastOverlap: number | null, overlapWanted: nu
     frames: tile.frames.length,
     isFew: tile.isFew,
     softest: sharpness.length > 0 ? Math.min(...sharpness) : null,
-    noise: tile.inUse > 0 ? noiseOfMean(tile.inUse) : null,
+    noise: tile.inUse > 0 ? expectedNoise(tile.inUse, "mean") : null,
     leastOverlap,
     isOverlapSmall: leastOverlap !== null && leastOverlap < overlapWanted,
     takes: tile.takes.length,

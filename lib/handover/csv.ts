@@ -14,8 +14,8 @@ const COLUMNS: readonly (readonly [string, (frame: ManifestFrame, file: Manifest
   ["in use", (frame) => (frame.inUse ? "yes" : "no")],
   ["set aside", (frame) => frame.setAside],
   ["layer opacity %", (frame) => frame.layerOpacity],
-  ["taken at", (frame) => frame.takenAt?.local ?? null],
-  ["offset", (frame) => frame.takenAt?.offset ?? null],
+  // One cell: an offset of its own would begin with + or -, as formulas do.
+  ["taken at", ({ takenAt }) => (takenAt ? `${takenAt.local}${takenAt.offset ?? ""}` : null)],
   ["camera", (frame) => frame.camera.model],
   ["serial", (frame) => frame.camera.serial],
   ["lens", (frame) => frame.camera.lens],

@@ -1,6 +1,6 @@
 import type { Board, BoardFrame, BoardStack } from "@/lib/board/model";
 import { tileName } from "@/lib/board/tile-name";
-import { expectedNoise } from "./expected-noise";
+import { expectedNoise } from "@/lib/board/expected-noise";
 import type { Manifest, ManifestFrame, ManifestStack } from "./manifest-types";
 import { assertManifest } from "./validate-manifest";
 

@@ -1,3 +1,4 @@
+import type { Dirent } from "node:fs";
 import { open, readdir } from "node:fs/promises";
 import path from "node:path";
 
@@ -19,16 +20,22 @@ export interface FoundFiles {
   readonly links: number;
   /** Not pictures. */
   readonly others: number;
+  /** Sub-folders that may not be read. */
+  readonly closed: number;
 }
 
 /** All picture files below a folder. Hidden files, symbolic links and files of other kinds are only counted. */
 export async function collectFiles(root: string): Promise<FoundFiles> {
   const pictures: FoundFile[] = [];
-  const counts = { hidden: 0, links: 0, others: 0 };
+  const counts = { hidden: 0, links: 0, others: 0, closed: 0 };
   const folders: (string | null)[] = [null];
   for (const folder of folders) {
     const here = folder === null ? root : path.join(root, folder);
-    const entries = await readdir(here, { withFileTypes: true });
+    const entries = await list(here, folder === null);
+    if (entries === null) {
+      counts.closed++;
+      continue;
+    }
     for (const entry of entries) {
       const relative = folder === null ? entry.name : `${folder}/${entry.name}`;
       if (entry.isSymbolicLink()) counts.links++;
@@ -44,6 +51,16 @@ export async function collectFiles(root: string): Promise<FoundFiles> {
   }
   pictures.sort((a, b) => compare(a.folder ?? "", b.folder ?? "") || compare(a.name, b.name));
   return { pictures, ...counts };
+}
+
+/** What a folder holds; null where a sub-folder may not be read. The root must be readable: its failure is the caller's. */
+async function list(folder: string, isRoot: boolean): Promise<Dirent[] | null> {
+  try {
+    return await readdir(folder, { withFileTypes: true });
+  } catch (error) {
+    if (isRoot) throw error;
+    return null;
+  }
 }
 
 function compare(a: string, b: string): number {

@@ -73,11 +73,12 @@ function drawGrid({ grid, stacks, frames }: Board): string[] {
   ];
 }
 
-function describeFiles({ unreadable, duplicates }: Board, { hidden, links, others }: FoundFiles): string[] {
+function describeFiles({ unreadable, duplicates }: Board, { hidden, links, others, closed }: FoundFiles): string[] {
   const left = [
     ...(hidden > 0 ? [`${hidden} hidden`] : []),
     ...(links > 0 ? [count(links, "symbolic link")] : []),
     ...(others > 0 ? [`${others} not pictures`] : []),
+    ...(closed > 0 ? [`${closed} folders that may not be read`] : []),
   ];
   return [
     ...(duplicates.length > 0 ? [`Files that are here twice: ${duplicates.length}.`] : []),

@@ -80,6 +80,11 @@ export function callerFolder(): string {
   return path.resolve(/* turbopackIgnore: true */ process.env.INIT_CWD ?? process.cwd());
 }
 
+/** The environment for a process of ours: this one's, with what differs. */
+export function childEnvironment(different: Record<string, string>): NodeJS.ProcessEnv {
+  return { ...process.env, ...different };
+}
+
 /** next-auth reads its own address from the environment only; it is always APP_URL. */
 export function followAppUrl(): void {
   process.env.NEXTAUTH_URL = environment().appUrl;

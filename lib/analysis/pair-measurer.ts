@@ -92,13 +92,17 @@ function scoreOf({ x, y, ncc }: ImageShift, { source }: Prepared): number {
 }
 
 function toPairMeasure(a: RegistrationSource, sign: number, shift: ImageShift, ssim: number): PairMeasure {
+  // Adding 0 turns -0 into 0, so that both ways round read alike in JSON and in tests.
+  const inFullSize = ({ x, y }: { readonly x: number; readonly y: number }) => ({
+    xPx: (sign * x * a.widthPx) / a.image.widthPx + 0,
+    yPx: (sign * y * a.heightPx) / a.image.heightPx + 0,
+  });
   return {
-    // Adding 0 turns -0 into 0, so that both ways round read alike in JSON and in tests.
-    xPx: (sign * shift.x * a.widthPx) / a.image.widthPx + 0,
-    yPx: (sign * shift.y * a.heightPx) / a.image.heightPx + 0,
+    ...inFullSize(shift),
     ncc: shift.ncc,
     peakRatio: shift.peakRatio,
     contrast: shift.contrast,
+    rivals: shift.rivals.map((rival) => ({ ...inFullSize(rival), ncc: rival.ncc })),
     ssim,
   };
 }

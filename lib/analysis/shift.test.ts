@@ -82,7 +82,7 @@ describe("measureShift", () => {
 
   test("a constant picture matches nothing and breaks nothing", () => {
     const plain = prepareRegistration({ data: new Uint16Array(256 * 170).fill(40000), widthPx: 256, heightPx: 170 });
-    expect(measureShift(plain, plain)).toEqual({ x: 0, y: 0, ncc: 0, peakRatio: 1, contrast: 0 });
+    expect(measureShift(plain, plain)).toEqual({ x: 0, y: 0, ncc: 0, peakRatio: 1, contrast: 0, rivals: [] });
     expect(measureShift(plain, prepared(0, 0)).ncc).toBe(0);
   });
 

@@ -17,6 +17,10 @@ const WHITENING_EXPONENT = 0.75;
 const LEAST_OVERLAP = 0.06;
 const PEAKS_LOOKED_AT = 8;
 const PEAKS_VERIFIED = 3;
+/** Under this ratio of the best two all peaks are verified. Ours, from generated shoots of house fronts. */
+const AMBIGUOUS_PEAK_RATIO = 1.3;
+/** A rival scores at least this share of the best. Ours. */
+const RIVAL_SHARE = 0.6;
 /** Neighbouring pixels of a small picture are not independent: about one in twelve counts. */
 const PIXELS_PER_SAMPLE = 12;
 /** Share of each side over which the border is faded out before the transform; "short" in analysis.md, ours. */
@@ -40,6 +44,13 @@ export interface PreparedImage {
   readonly spectrum: Spectrum;
 }
 
+/** Another shift at which two pictures match nearly as well: where patterns repeat, it may be the true one. */
+export interface ShiftRival {
+  readonly x: number;
+  readonly y: number;
+  readonly ncc: number;
+}
+
 /** How two prepared images lie to each other. */
 export interface ImageShift {
   /** Where b's top left corner lies in a, in pixels of the registration image, about 0.1 px accurate. */
@@ -48,6 +59,8 @@ export interface ImageShift {
   readonly ncc: number;
   readonly peakRatio: number;
   readonly contrast: number;
+  /** The best first; none where the best shift stands alone. */
+  readonly rivals: readonly ShiftRival[];
 }
 
 /**
@@ -126,23 +139,50 @@ export function measureShift(a: PreparedImage, b: PreparedImage): ImageShift {
   });
   const correlate = rememberCorrelations(a.fine, b.fine);
   const scale = a.fine.widthPx / a.coarse.widthPx;
-  const ranked = peaks
+  const candidates = peaks
     .map((peak): Candidate => ({ peak, score: matchScore(correlateOverlap(a.coarse, b.coarse, peak.x, peak.y)) }))
-    .sort((first, second) => second.score - first.score)
-    .slice(0, PEAKS_VERIFIED)
-    .map(({ peak }) => climb(correlate, Math.round(peak.x * scale), Math.round(peak.y * scale)));
-  const best = ranked.reduce<Climbed | null>(
-    (found, next) => (found === null || next.score > found.score ? next : found),
-    null,
-  );
-  if (best === null) return { x: 0, y: 0, ncc: 0, peakRatio: 1, contrast: 0 };
+    .sort((first, second) => second.score - first.score);
+  const verify = ({ peak }: Candidate) => climb(correlate, Math.round(peak.x * scale), Math.round(peak.y * scale));
+  let ranked = candidates.slice(0, PEAKS_VERIFIED).map(verify);
+  let best = bestOf(ranked);
+  if (best === null) return { x: 0, y: 0, ncc: 0, peakRatio: 1, contrast: 0, rivals: [] };
+  const contrast = Math.min(best.correlation.deviationA, best.correlation.deviationB) / TEXTURE_LEVEL;
+  // Rows of windows match at many shifts alike: then the true one may be further down the list.
+  if (contrast >= 1 && peakRatio(best, ranked) < AMBIGUOUS_PEAK_RATIO) {
+    ranked = [...ranked, ...candidates.slice(PEAKS_VERIFIED).map(verify)];
+    best = bestOf(ranked) ?? best;
+  }
   const { x, y, correlation } = best;
   return {
     ...refine(correlate, x, y),
     ncc: correlation.ncc,
     peakRatio: peakRatio(best, ranked),
     contrast: Math.min(correlation.deviationA, correlation.deviationB) / TEXTURE_LEVEL,
+    rivals: findRivals(best, ranked).map((rival) => {
+      return { ...refine(correlate, rival.x, rival.y), ncc: rival.correlation.ncc };
+    }),
   };
+}
+
+function bestOf(ranked: readonly Climbed[]): Climbed | null {
+  return ranked.reduce<Climbed | null>(
+    (found, next) => (found === null || next.score > found.score ? next : found),
+    null,
+  );
+}
+
+/** Other shifts that match nearly as well, the best first. */
+function findRivals(best: Climbed, all: readonly Climbed[]): Climbed[] {
+  const rivals: Climbed[] = [];
+  for (const next of [...all].sort((p, q) => q.score - p.score)) {
+    if (next.score < best.score * RIVAL_SHARE) break;
+    if ([best, ...rivals].every((other) => isElsewhere(next, other))) rivals.push(next);
+  }
+  return rivals;
+}
+
+function isElsewhere(a: Climbed, b: Climbed): boolean {
+  return Math.max(Math.abs(a.x - b.x), Math.abs(a.y - b.y)) > SAME_PEAK_PX;
 }
 
 function matchScore({ ncc, samples }: OverlapCorrelation): number {
@@ -201,7 +241,7 @@ function refine(correlate: Correlate, x: number, y: number): { x: number; y: num
 
 /** Best score over the second best of those that lie elsewhere. */
 function peakRatio(best: Climbed, all: readonly Climbed[]): number {
-  const others = all.filter(({ x, y }) => Math.max(Math.abs(x - best.x), Math.abs(y - best.y)) > SAME_PEAK_PX);
+  const others = all.filter((other) => isElsewhere(other, best));
   const second = Math.max(0, ...others.map(({ score }) => score));
   if (second === 0) return best.score > 0 ? HIGHEST_PEAK_RATIO : 1;
   return Math.max(1, Math.min(HIGHEST_PEAK_RATIO, best.score / second));

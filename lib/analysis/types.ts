@@ -49,6 +49,8 @@ export interface PairMeasure {
   readonly peakRatio: number;
   /** Standard deviation of the high-passed overlap, relative to what counts as texture: under 1 is hardly any. */
   readonly contrast: number;
+  /** Other shifts that match nearly as well, the best first: where patterns repeat, one of them may be the true one. */
+  readonly rivals?: readonly { readonly xPx: number; readonly yPx: number; readonly ncc: number }[];
   /** Structural similarity (image-ssim) of the two small pictures laid over each other unshifted, -1 to 1. */
   readonly ssim: number;
 }

@@ -1,6 +1,7 @@
 import { isFew, usualSizeOf, type StackDraft } from "./draft";
 import { makeEdge, type Edge } from "./edges";
-import { CLASH_WEIGHT, labelStacks, misfitScale, trustIn, type Component, type Label } from "./lattice";
+import { isTextured } from "./judge-pair";
+import { clashWeight, labelStacks, misfitScale, trustIn, type Component, type Label } from "./lattice";
 import { LARGEST_SAME_PLACE } from "./vector";
 import { boxOf } from "./walks";
 import { inSteps, proposeSteps, type Steps } from "./lattice-steps";
@@ -67,13 +68,30 @@ function readGraph(stacks: readonly StackDraft[], pairs: readonly IndexPair[], s
   const all = [...edges, ...fixedEdges(stacks)].sort((p, q) => p.a - q.a || p.b - q.b);
   // What few frames show may be none of the scene: the lattice is made by whole stacks.
   const few = new Set(stacks.filter((stack) => isFew(stack, usualSizeOf(stacks))).map((stack) => stack.index));
+  const plain = new Set(stacks.filter((stack) => !isTextured(stack.hub)).map((stack) => stack.index));
   const whole = all.filter((edge) => !few.has(edge.a) && !few.has(edge.b));
   const graphs = proposeSteps(whole, usualAspect(stacks)).map((steps): GridGraph => {
-    return { edges: all, steps, components: labelStacks(stacks.length, all, steps) };
+    return { edges: all, steps, components: labelStacks({ count: stacks.length, plain }, all, steps) };
   });
-  const rated = graphs.map((graph) => ({ graph, rating: rateGraph(graph, few) }));
+  const rated = graphs.map((graph) => ({ graph, rating: rateGraph(graph, few, plain) }));
   const best = rated.reduce((a, b) => (b.rating > a.rating + 1e-9 ? b : a));
-  return best.graph;
+  return chooseShifts(best.graph);
+}
+
+/** Once the places are known, each edge takes that of the shifts which the pictures allow that leads to its place. */
+function chooseShifts(graph: GridGraph): GridGraph {
+  const labels = new Map(graph.components.flatMap((component) => [...component]));
+  const edges = graph.edges.map((edge): Edge => {
+    const [a, b] = [labels.get(edge.a), labels.get(edge.b)];
+    if (edge.steps || edge.rivals.length === 0 || !a || !b) return edge;
+    const fits = [edge, ...edge.rivals].flatMap((shift) => {
+      const { columns, rows, misfit } = inSteps({ ...edge, x: shift.x, y: shift.y }, graph.steps);
+      return columns === b.column - a.column && rows === b.row - a.row ? [{ shift, misfit }] : [];
+    });
+    const best = fits.reduce<(typeof fits)[number] | null>((p, q) => (p && p.misfit <= q.misfit ? p : q), null);
+    return best ? { ...edge, x: best.shift.x, y: best.shift.y, weight: best.shift.weight } : edge;
+  });
+  return { ...graph, edges };
 }
 
 /** Most stacks follow each other by one step; each that does speaks for a lattice like a weak edge. Our own. */
@@ -83,7 +101,11 @@ const SINGLE_STEP_WEIGHT = 4;
 const HOLE_WEIGHT = 2;
 
 /** How well a lattice explains edges, order and places: higher is better. */
-function rateGraph({ edges, steps, components: pieces }: GridGraph, few: ReadonlySet<number>): number {
+function rateGraph(
+  { edges, steps, components: pieces }: GridGraph,
+  few: ReadonlySet<number>,
+  plain: ReadonlySet<number>,
+): number {
   const components = pieces.map((piece) => new Map([...piece].filter(([index]) => !few.has(index))));
   const scale = misfitScale(edges, steps);
   let rating = 0;
@@ -111,7 +133,7 @@ function rateGraph({ edges, steps, components: pieces }: GridGraph, few: Readonl
   for (const [index, { column, row, piece }] of [...labels].sort(([a], [b]) => a - b)) {
     const key = `${piece} ${column} ${row}`;
     const other = at.get(key);
-    if (other !== undefined && !samePlace.has(`${other} ${index}`)) rating -= CLASH_WEIGHT;
+    if (other !== undefined && !samePlace.has(`${other} ${index}`)) rating -= clashWeight(other, index, plain);
     at.set(key, index);
     const before = labels.get(index - 1);
     if (!before || before.piece !== piece) continue;
@@ -134,7 +156,7 @@ function fixedEdges(stacks: readonly StackDraft[]): Edge[] {
   return placed.slice(1).map((stack, at) => {
     const before = placed[at] ?? stack;
     const steps = { columns: stack.column - before.column, rows: stack.row - before.row };
-    const none = { x: 0, y: 0, ncc: 1, significance: 0, isFaint: false };
+    const none = { x: 0, y: 0, ncc: 1, significance: 0, isFaint: false, rivals: [] };
     return { a: before.index, b: stack.index, ...none, weight: FIXED_WEIGHT, steps };
   });
 }

@@ -13,6 +13,8 @@ export interface Edge {
   readonly ncc: number;
   /** How far the correlation stands above chance, in standard deviations: 5 is seldom wrong. */
   readonly significance: number;
+  /** Other shifts that the pictures allow, with their weights. */
+  readonly rivals: readonly { readonly x: number; readonly y: number; readonly weight: number }[];
   /** Too little detail in the overlap for its shift to be measured well. */
   readonly isFaint: boolean;
   /** Weight of the edge's word where edges contradict each other. */
@@ -30,7 +32,7 @@ const SURE_PEAK_RATIO = 1.08;
 /** Source: analysis.md, step 5. */
 const LEAST_NCC_WHERE_PLAIN = 0.6;
 const LEAST_CONTRAST = 1;
-/** Where chance begins to be frequent; edges up to two deviations above it count only in part. */
+/** Where chance begins to be frequent. */
 const CHANCE = 4;
 /** Beyond this an edge is as sure as any. */
 const HIGHEST_WEIGHT = 30;
@@ -42,13 +44,15 @@ export function makeEdge(
   measure: PairMeasure,
 ): Edge | null {
   const significance = significanceOf(measure, a.frame);
+  const rivals = measure.rivals ?? [];
   const isClear = significance >= LEAST_SIGNIFICANCE && measure.peakRatio >= LEAST_PEAK_RATIO;
   const isSure = significance >= SURE_SIGNIFICANCE && measure.peakRatio >= SURE_PEAK_RATIO;
   if (!isClear && !isSure) return null;
   const isPlain = !isTextured(a.frame) || !isTextured(b.frame) || measure.contrast < LEAST_CONTRAST;
   if (isPlain && measure.ncc < LEAST_NCC_WHERE_PLAIN) return null;
   const longSidePx = Math.max(a.frame.measurements.widthPx, a.frame.measurements.heightPx);
-  const clearness = Math.min(1, (measure.peakRatio - 1) / 0.5) * Math.min(1, (significance - CHANCE) / 2);
+  const clearness = Math.min(1, (measure.peakRatio - 1) / 0.5);
+  const share = clearness * (isPlain ? 0.3 : 1);
   return {
     a: a.index,
     b: b.index,
@@ -57,7 +61,17 @@ export function makeEdge(
     ncc: measure.ncc,
     significance,
     isFaint: measure.contrast < LEAST_CONTRAST,
-    weight: Math.min(significance, HIGHEST_WEIGHT) * clearness * (isPlain ? 0.3 : 1),
+    weight: share * weightOf(significance),
+    rivals: rivals.map(({ xPx, yPx, ncc }) => ({
+      x: xPx / longSidePx,
+      y: yPx / longSidePx,
+      weight: share * weightOf(significanceOf({ ...measure, xPx, yPx, ncc }, a.frame)),
+    })),
     steps: null,
   };
+}
+
+/** Edges up to two deviations above chance count only in part. */
+function weightOf(significance: number): number {
+  return Math.min(significance, HIGHEST_WEIGHT) * Math.min(1, Math.max(0, significance - CHANCE) / 2);
 }

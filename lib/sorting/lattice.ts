@@ -18,8 +18,17 @@ export type Component = ReadonlyMap<number, Label>;
 const LEAST_MISFIT_SCALE = 0.1;
 const LARGEST_MISFIT_SCALE = 0.35;
 const USUAL_MISFITS = 4;
-/** Two stacks on one place that do not show the same weigh against it as much as a clear edge. Our own. */
-export const CLASH_WEIGHT = 8;
+/**
+ * Two stacks of one place would match beyond doubt, so that two on one place that do not weigh against it like the
+ * clearest of edges; less where there is little to match. Our own.
+ */
+const CLASH_WEIGHT = 30;
+const PLAIN_CLASH_WEIGHT = 6;
+
+/** What it weighs against a labelling that two stacks share a place without showing the same. */
+export function clashWeight(a: number, b: number, plain: ReadonlySet<number>): number {
+  return plain.has(a) || plain.has(b) ? PLAIN_CLASH_WEIGHT : CLASH_WEIGHT;
+}
 const MOST_SWEEPS = 12;
 /** A branch moves only for this share more. */
 const CLEARLY_BETTER = 0.01;
@@ -32,6 +41,8 @@ interface StepEdge {
   readonly columns: number;
   readonly rows: number;
   readonly weight: number;
+  /** Both show the same, beyond rounding to whole steps. */
+  readonly isSamePlace: boolean;
 }
 
 /**
@@ -39,27 +50,38 @@ interface StepEdge {
  * Labels are carried from neighbour to neighbour and not read off global positions, so that the bend of a grid
  * turned about a point cannot add up to a wrong column.
  * @param count - number of stacks; edges name them by index
+ * @param plain - stacks with too little texture to be told apart
  * @returns components, the largest first; stacks without edges are components of their own
  */
-export function labelStacks(count: number, edges: readonly Edge[], steps: Steps): Component[] {
+export function labelStacks(
+  { count, plain }: { readonly count: number; readonly plain: ReadonlySet<number> },
+  edges: readonly Edge[],
+  steps: Steps,
+): Component[] {
   const scale = misfitScale(edges, steps);
   const stepEdges = edges.map((edge): StepEdge => {
-    if (edge.steps) return { a: edge.a, b: edge.b, ...edge.steps, weight: edge.weight };
-    if (Math.hypot(edge.x, edge.y) < LARGEST_SAME_PLACE) return { ...edge, columns: 0, rows: 0 };
+    if (edge.steps) {
+      return { a: edge.a, b: edge.b, ...edge.steps, weight: edge.weight, isSamePlace: isZero(edge.steps) };
+    }
+    if (Math.hypot(edge.x, edge.y) < LARGEST_SAME_PLACE) return { ...edge, columns: 0, rows: 0, isSamePlace: true };
     const found = inSteps(edge, steps);
     const weight = edge.weight * trustIn(edge, found, scale);
-    return { a: edge.a, b: edge.b, columns: found.columns, rows: found.rows, weight };
+    return { a: edge.a, b: edge.b, columns: found.columns, rows: found.rows, weight, isSamePlace: false };
   });
   const tree = spanningTree(count, stepEdges);
   const incident = listIncident(count, stepEdges);
   const components = collect(count, tree);
   const labels = components.map((component) => labelTree(component, listIncident(count, tree)));
   const all = new Map(labels.flatMap((component) => [...component]));
-  moveBranches(all, tree, stepEdges, count);
+  moveBranches(all, tree, stepEdges, { count, plain });
   moveSingles(all, incident);
   return components
     .map((members) => new Map(members.map((index) => [index, all.get(index) ?? { column: 0, row: 0 }])))
     .sort((a, b) => b.size - a.size || Math.min(...a.keys()) - Math.min(...b.keys()));
+}
+
+function isZero({ columns, rows }: { columns: number; rows: number }): boolean {
+  return columns === 0 && rows === 0;
 }
 
 /** Misfit in steps at which an edge counts 1/e, from the median misfit of the edges by weight. */
@@ -147,12 +169,10 @@ function moveBranches(
   labels: Map<number, Label>,
   tree: readonly StepEdge[],
   edges: readonly StepEdge[],
-  count: number,
+  { count, plain }: { readonly count: number; readonly plain: ReadonlySet<number> },
 ): void {
   const incident = listIncident(count, tree);
-  const samePlace = new Set(
-    edges.filter(({ columns, rows }) => columns === 0 && rows === 0).map(({ a, b }) => pairKey(a, b)),
-  );
+  const samePlace = new Set(edges.filter(({ isSamePlace }) => isSamePlace).map(({ a, b }) => pairKey(a, b)));
   // The weakest tree edges are the likeliest to be wrong; the strongest need no second look.
   for (const cut of [...tree].reverse().slice(0, MOST_CUTS)) {
     const branch = branchOf(cut, incident);
@@ -169,7 +189,12 @@ function moveBranches(
       votes.set(key, { columns, rows, weight: (votes.get(key)?.weight ?? 0) + edge.weight });
     }
     const offsets = [{ columns: 0, rows: 0, weight: 0 }, ...votes.values()].map((vote) => {
-      return { ...vote, score: vote.weight - CLASH_WEIGHT * countClashes(labels, branch, vote, samePlace) };
+      return {
+        ...vote,
+        score:
+          vote.weight -
+          weighClashes(labels, branch, vote, (a, b) => (samePlace.has(pairKey(a, b)) ? 0 : clashWeight(a, b, plain))),
+      };
     });
     const stay = Math.max(
       ...offsets.filter(({ columns, rows }) => columns === 0 && rows === 0).map(({ score }) => score),
@@ -183,22 +208,22 @@ function moveBranches(
   }
 }
 
-/** Places that a branch, moved by an offset, would share with stacks outside it without showing the same. */
-function countClashes(
+/** Weight of the places that a branch, moved by an offset, would share with stacks outside it. */
+function weighClashes(
   labels: ReadonlyMap<number, Label>,
   branch: ReadonlySet<number>,
   offset: { columns: number; rows: number },
-  samePlace: ReadonlySet<string>,
+  weigh: (a: number, b: number) => number,
 ): number {
   const outside = new Map<string, number>();
   for (const [index, label] of labels) if (!branch.has(index)) outside.set(`${label.column} ${label.row}`, index);
-  let clashes = 0;
+  let weight = 0;
   for (const index of branch) {
     const label = labels.get(index);
     const other = label && outside.get(`${label.column + offset.columns} ${label.row + offset.rows}`);
-    if (other !== undefined && !samePlace.has(pairKey(index, other))) clashes++;
+    if (other !== undefined) weight += weigh(index, other);
   }
-  return clashes;
+  return weight;
 }
 
 function pairKey(a: number, b: number): string {

@@ -73,7 +73,12 @@ export class PairStore {
     // Shifts are in pixels of the first frame: the other one may be of another size.
     const from = this.frames.get(b)?.measurements.widthPx ?? 1;
     const to = this.frames.get(a)?.measurements.widthPx ?? 1;
-    return { ...found, xPx: (-found.xPx * to) / from + 0, yPx: (-found.yPx * to) / from + 0 };
+    const turnRound = (shift: { readonly xPx: number; readonly yPx: number }) => ({
+      xPx: (-shift.xPx * to) / from + 0,
+      yPx: (-shift.yPx * to) / from + 0,
+    });
+    const rivals = (found.rivals ?? []).map((rival) => ({ ...rival, ...turnRound(rival) }));
+    return { ...found, ...turnRound(found), rivals };
   }
 }
 

@@ -3,24 +3,17 @@ import { rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import path from "node:path";
 
-import { createPairMeasurer } from "@/lib/analysis/pair-measurer";
 import { boardFromProposal } from "@/lib/board/from-proposal";
 import type { Board } from "@/lib/board/model";
 import { callerFolder } from "@/lib/env";
 import { manifestToCsv } from "@/lib/handover/csv";
 import { buildManifest } from "@/lib/handover/manifest";
-import { readRegistrationFile } from "@/lib/imaging/registration-file";
-import { measureSsim } from "@/lib/imaging/structural-similarity";
-import { sortFrames } from "@/lib/sorting/sort-frames";
-import type { MeasurePair, SortFrame } from "@/lib/sorting/types";
-import { analyseFiles, type AnalysedFrame } from "./sort/analyse-files";
+import { analyseFiles } from "./sort/analyse-files";
 import { collectFiles } from "./sort/collect-files";
 import { parseCommand, USAGE, UsageError, type SortCommand } from "./sort/options";
 import { makeProgress } from "./sort/progress";
+import { sortAnalysed } from "./sort/sort-analysed";
 import { explainFrame, writeSummary } from "./sort/write-summary";
-
-/** Nothing to keep facts of: the command line sorts from nothing each time. */
-const NO_FACTS = { stacks: [], looseFrameIds: [], setAside: {}, settledQuestionKeys: [] };
 
 async function main(): Promise<void> {
   const command = parseCommand(process.argv.slice(2), callerFolder());
@@ -54,11 +47,8 @@ async function sortFolder(command: SortCommand, temporary: string): Promise<void
     registrationFolder: temporary,
     onRead: (done) => progress.say(`Reading pictures: ${done} of ${found.pictures.length}`),
   });
-  const facts = NO_FACTS;
-  const proposal = await sortFrames(
-    { frames: frames.map(toSortFrame), facts, options: command.options },
-    makeMeasurer(frames),
-    ({ step, done, total }) => progress.say(`Sorting, ${step}: ${done} of ${total}`),
+  const proposal = await sortAnalysed(frames, command.options, ({ step, done, total }) =>
+    progress.say(`Sorting, ${step}: ${done} of ${total}`),
   );
   progress.end();
   const board = boardFromProposal(
@@ -76,23 +66,6 @@ async function sortFolder(command: SortCommand, temporary: string): Promise<void
   await writeResults(board, command);
   process.stderr.write(writeSummary(board, found, (performance.now() - started) / 1000));
   if (command.explain !== null) process.stderr.write(explainFrame(board, command.explain));
-}
-
-function toSortFrame({ id, name, files, lastModifiedMs, metadata, measurements }: AnalysedFrame): SortFrame {
-  return { id, name, folder: files[0]?.folder ?? null, lastModifiedMs, metadata, measurements };
-}
-
-function makeMeasurer(frames: readonly AnalysedFrame[]): MeasurePair {
-  const byId = new Map(frames.map((frame) => [frame.id, frame]));
-  return createPairMeasurer({
-    load: async (id) => {
-      const frame = byId.get(id);
-      if (!frame) throw new Error(`no frame ${id}`);
-      const { widthPx, heightPx } = frame.measurements;
-      return { image: await readRegistrationFile(frame.registrationPath), widthPx, heightPx };
-    },
-    measureSsim,
-  });
 }
 
 async function writeResults(board: Board, { outFile, tableFile }: SortCommand): Promise<void> {

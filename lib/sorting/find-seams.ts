@@ -10,6 +10,12 @@ import { solvePositions, type PositionEdge } from "./solve-positions";
 /** Edges further off whole steps than this do not shape the positions. Our own. */
 const LARGEST_MISFIT = 0.6;
 
+/**
+ * An edge that lies right by whole steps may still be a false match in plain sky. Edges further off the positions that
+ * all edges together give, in long sides, are left out, the worst first. The last limit: analysis.md, step 5.
+ */
+const LARGEST_RESIDUALS = [0.2, 0.1, 0.05];
+
 /** Edges that agree with the places, as wanted differences of positions in long sides. */
 export function agreeingEdges(graph: GridGraph, places: readonly Place[]): PositionEdge[] {
   return graph.edges.flatMap((edge): PositionEdge[] => {
@@ -34,18 +40,8 @@ export function findPositions(
   places: readonly Place[],
   graph: GridGraph,
 ): ({ xPx: number; yPx: number } | null)[] {
-  const edges = agreeingEdges(graph, places);
-  const connected = largestConnected(stacks.length, edges);
+  const { solved, connected } = solveRobustly(stacks.length, places, graph);
   if (connected.size === 0) return stacks.map(() => null);
-  const { right, down } = graph.steps;
-  const start = places.map(({ row, column }): Vector => {
-    const [r, c] = [row ?? 0, column ?? 0];
-    return { x: c * right.x + r * down.x, y: c * right.y + r * down.y };
-  });
-  const solved = solvePositions(
-    start,
-    edges.filter((edge) => connected.has(edge.a)),
-  );
   const members = [...connected].map((index) => solved[index] ?? { x: 0, y: 0 });
   const left = members.reduce((least, position) => Math.min(least, position.x), Infinity);
   const top = members.reduce((least, position) => Math.min(least, position.y), Infinity);
@@ -55,6 +51,41 @@ export function findPositions(
     const longSidePx = Math.max(hub.measurements.widthPx, hub.measurements.heightPx);
     return { xPx: (position.x - left) * longSidePx, yPx: (position.y - top) * longSidePx };
   });
+}
+
+/** Positions in long sides by least squares, and the stacks that trusted edges connect. */
+function solveRobustly(count: number, places: readonly Place[], graph: GridGraph) {
+  const { right, down } = graph.steps;
+  let solved = places.map(({ row, column }): Vector => {
+    const [r, c] = [row ?? 0, column ?? 0];
+    return { x: c * right.x + r * down.x, y: c * right.y + r * down.y };
+  });
+  let edges = agreeingEdges(graph, places);
+  let connected = largestConnected(count, edges);
+  for (const limit of LARGEST_RESIDUALS) {
+    const here = connected;
+    solved = [
+      ...solvePositions(
+        solved,
+        edges.filter((edge) => here.has(edge.a)),
+      ),
+    ];
+    edges = edges.filter((edge) => residualOf(edge, solved) <= limit);
+    connected = largestConnected(count, edges);
+  }
+  const here = connected;
+  return {
+    solved: solvePositions(
+      solved,
+      edges.filter((edge) => here.has(edge.a)),
+    ),
+    connected,
+  };
+}
+
+function residualOf(edge: Pick<PositionEdge, "a" | "b" | "x" | "y">, solved: readonly Vector[]): number {
+  const [a, b] = [solved[edge.a], solved[edge.b]];
+  return a && b ? Math.hypot(b.x - a.x - edge.x, b.y - a.y - edge.y) : Infinity;
 }
 
 function largestConnected(count: number, edges: readonly PositionEdge[]): Set<number> {
@@ -109,11 +140,17 @@ export function findSeams(
     ];
     return sides.flatMap(({ side, other }): Seam[] => {
       if (!other) return [];
-      const step = directStep(direct, stack.index, other.index) ?? positionStep(positions, stack, other);
+      const solved = positionStep(positions, stack, other);
+      const measured = directStep(direct, stack.index, other.index);
+      const step = solved && measured && !isNear(solved, measured) ? solved : (measured ?? solved);
       const overlap = step && overlapOf(betweenMiddles(step, stack, other), side, stack);
       return [{ a: stack.index, b: other.index, side, overlap }];
     });
   });
+}
+
+function isNear(a: Vector, b: Vector): boolean {
+  return Math.hypot(a.x - b.x, a.y - b.y) <= (LARGEST_RESIDUALS.at(-1) ?? 0);
 }
 
 function directStep(direct: ReadonlyMap<string, Edge>, a: number, b: number): Vector | null {

@@ -29,7 +29,11 @@ interface DemoView {
 }
 
 /** The demo as one of its people sees it. */
-async function openDemo(playwright: PlaywrightWorkerArgs["playwright"], baseURL: string, role: string): Promise<DemoView> {
+async function openDemo(
+  playwright: PlaywrightWorkerArgs["playwright"],
+  baseURL: string,
+  role: string,
+): Promise<DemoView> {
   const request = await playwright.request.newContext({ baseURL });
   const { email = "", name = "" } = DEMO_ACCOUNTS.find((account) => account.role === role) ?? {};
   await signInByHttp(request, { email, name, password: DEMO_PASSWORD });

@@ -81,3 +81,17 @@ test("Next's own control flow passes through", async () => {
     }),
   ).rejects.toMatchObject({ digest: expect.stringContaining("NEXT_REDIRECT") });
 });
+
+test("a call that its client gave up is not logged as a failure", async () => {
+  const leaving = new AbortController();
+  const answer = await call(
+    async () => {
+      leaving.abort();
+      throw new Error("aborted");
+    },
+    undefined,
+    { signal: leaving.signal },
+  );
+  // tests/support/setup.ts fails a test that logs an error.
+  expect(answer.status).toBe(499);
+});

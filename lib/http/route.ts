@@ -7,6 +7,9 @@ import { problemResponse, unexpectedResponse } from "@/lib/errors/problem";
 
 const CHANGING = new Set(["POST", "PUT", "PATCH", "DELETE"]);
 
+/** Not in a standard; common practice for a request that its client gave up. */
+const CLIENT_WENT = 499;
+
 type Handler<Params> = (request: Request, params: Params) => Promise<Response>;
 
 /**
@@ -25,6 +28,8 @@ export function route<Params>(paramsSchema: z.ZodType<Params>, handler: Handler<
     } catch (error) {
       unstable_rethrow(error);
       if (error instanceof AppError) return problemResponse(error, requestId);
+      // Whoever asked went away in the middle: not a failure, and nobody reads the answer.
+      if (request.signal.aborted) return new Response(null, { status: CLIENT_WENT });
       console.error(`request ${requestId} failed`, error);
       return unexpectedResponse(requestId);
     }

@@ -26,7 +26,7 @@ function strength(frame: SortFrame): 0 | 1 | 2 {
 }
 
 function joinLevel(groups: Map<string, SortFrame[]>, frames: readonly SortFrame[]): void {
-  const known = [...groups.entries()];
+  const known = indexByPrefix(groups);
   const prefixes = new Set(frames.map(prefixOf));
   // Names that are checksums have a prefix each; a body for each would be nonsense.
   const arePrefixesUseful = prefixes.size <= 2 || prefixes.size * 4 <= frames.length;
@@ -37,21 +37,59 @@ function joinLevel(groups: Map<string, SortFrame[]>, frames: readonly SortFrame[
   }
 }
 
-function nearestGroup(groups: readonly (readonly [string, readonly SortFrame[]])[], frame: SortFrame): string | null {
-  const number = fileNumber(frame.name);
-  let best: { key: string; distance: number } | null = null;
+/** What a body's files with one prefix are numbered like. */
+interface NumberedGroup {
+  readonly key: string;
+  readonly camera: string;
+  readonly folder: string | null;
+  /** Ascending. */
+  readonly numbers: number[];
+}
+
+function indexByPrefix(groups: ReadonlyMap<string, readonly SortFrame[]>): Map<string, NumberedGroup[]> {
+  const index = new Map<string, NumberedGroup[]>();
+  const parts = new Map<string, NumberedGroup>();
   for (const [key, members] of groups) {
-    let distance = Infinity;
     for (const member of members) {
-      const other = fileNumber(member.name);
-      const isAlike = strength(frame) === 0 || cameraOf(member) === cameraOf(frame);
-      if (!number || !other || other.prefix !== number.prefix || !isAlike) continue;
-      const folders = member.folder === frame.folder ? 0 : number.period;
-      distance = Math.min(distance, Math.abs(other.number - number.number) + folders);
+      const number = fileNumber(member.name);
+      if (!number) continue;
+      const camera = cameraOf(member);
+      const partKey = JSON.stringify([key, number.prefix, member.folder, camera]);
+      const known = parts.get(partKey);
+      if (known) known.numbers.push(number.number);
+      else {
+        const part = { key, camera, folder: member.folder, numbers: [number.number] };
+        parts.set(partKey, part);
+        index.set(number.prefix, [...(index.get(number.prefix) ?? []), part]);
+      }
     }
-    if (distance < Infinity && (!best || distance < best.distance)) best = { key, distance };
+  }
+  for (const part of parts.values()) part.numbers.sort((a, b) => a - b);
+  return index;
+}
+
+function nearestGroup(groups: ReadonlyMap<string, readonly NumberedGroup[]>, frame: SortFrame): string | null {
+  const number = fileNumber(frame.name);
+  if (!number) return null;
+  let best: { key: string; distance: number } | null = null;
+  for (const part of groups.get(number.prefix) ?? []) {
+    if (strength(frame) !== 0 && part.camera !== cameraOf(frame)) continue;
+    const apart = part.folder === frame.folder ? 0 : number.period;
+    const distance = distanceTo(part.numbers, number.number) + apart;
+    if (!best || distance < best.distance) best = { key: part.key, distance };
   }
   return best?.key ?? null;
+}
+
+/** Distance of a number to the nearest of a sorted list. */
+function distanceTo(sorted: readonly number[], value: number): number {
+  let [low, high] = [0, sorted.length];
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if ((sorted[middle] ?? 0) < value) low = middle + 1;
+    else high = middle;
+  }
+  return Math.min(Math.abs((sorted[low] ?? Infinity) - value), Math.abs((sorted[low - 1] ?? Infinity) - value));
 }
 
 function cameraOf(frame: SortFrame): string {

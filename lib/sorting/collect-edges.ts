@@ -1,10 +1,10 @@
 import { isFew, usualSizeOf, type StackDraft } from "./draft";
 import { makeEdge, type Edge } from "./edges";
 import { isTextured } from "./judge-pair";
-import { clashWeight, labelStacks, misfitScale, trustIn, type Component, type Label } from "./lattice";
+import { clashWeight, labelStacks, trustIn, type Component, type Label } from "./lattice";
 import { LARGEST_SAME_PLACE } from "./vector";
 import { boxOf } from "./walks";
-import { inSteps, proposeSteps, type Steps } from "./lattice-steps";
+import { inSteps, misfitScale, proposeSteps, type Steps } from "./lattice-steps";
 import type { PairStore } from "./pair-store";
 
 /** Up to this many stacks all pairs are registered; beyond, neighbours in time and neighbours foretold. */
@@ -67,7 +67,8 @@ function readGraph(stacks: readonly StackDraft[], pairs: readonly IndexPair[], s
   });
   const all = [...edges, ...fixedEdges(stacks)].sort((p, q) => p.a - q.a || p.b - q.b);
   // What few frames show may be none of the scene: the lattice is made by whole stacks.
-  const few = new Set(stacks.filter((stack) => isFew(stack, usualSizeOf(stacks))).map((stack) => stack.index));
+  const usualSize = usualSizeOf(stacks);
+  const few = new Set(stacks.filter((stack) => isFew(stack, usualSize)).map((stack) => stack.index));
   const plain = new Set(stacks.filter((stack) => !isTextured(stack.hub)).map((stack) => stack.index));
   const whole = all.filter((edge) => !few.has(edge.a) && !few.has(edge.b));
   const graphs = proposeSteps(whole, usualAspect(stacks)).map((steps): GridGraph => {

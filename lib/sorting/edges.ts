@@ -32,6 +32,9 @@ const SURE_PEAK_RATIO = 1.08;
 /** Source: analysis.md, step 5. */
 const LEAST_NCC_WHERE_PLAIN = 0.6;
 const LEAST_CONTRAST = 1;
+/** Among house fronts the true shift may have equals; as good a match as this is heard all the same, if softly. Our own. */
+const LIKELY_NCC = 0.6;
+const LEAST_CLEARNESS = 0.06;
 /** Where chance begins to be frequent. */
 const CHANCE = 4;
 /** Beyond this an edge is as sure as any. */
@@ -46,12 +49,13 @@ export function makeEdge(
   const significance = significanceOf(measure, a.frame);
   const rivals = measure.rivals ?? [];
   const isClear = significance >= LEAST_SIGNIFICANCE && measure.peakRatio >= LEAST_PEAK_RATIO;
-  const isSure = significance >= SURE_SIGNIFICANCE && measure.peakRatio >= SURE_PEAK_RATIO;
+  const leastRatio = measure.ncc >= LIKELY_NCC ? 1 : SURE_PEAK_RATIO;
+  const isSure = significance >= SURE_SIGNIFICANCE && measure.peakRatio >= leastRatio;
   if (!isClear && !isSure) return null;
   const isPlain = !isTextured(a.frame) || !isTextured(b.frame) || measure.contrast < LEAST_CONTRAST;
   if (isPlain && measure.ncc < LEAST_NCC_WHERE_PLAIN) return null;
   const longSidePx = Math.max(a.frame.measurements.widthPx, a.frame.measurements.heightPx);
-  const clearness = Math.min(1, (measure.peakRatio - 1) / 0.5);
+  const clearness = Math.min(1, Math.max(LEAST_CLEARNESS, (measure.peakRatio - 1) / 0.5));
   const share = clearness * (isPlain ? 0.3 : 1);
   return {
     a: a.index,

@@ -12,9 +12,14 @@ const SEARCH_MISFIT = 0.22;
 const MOST_CANDIDATES = 60;
 /** Steps closer than this are one candidate. */
 const SAME_STEP = 0.015;
-const REFINEMENTS = 6;
-/** Edges further off the lattice than this do not shape it. */
-const LARGEST_REFINE_MISFIT = 0.35;
+const REFINEMENTS = 10;
+/**
+ * Misfit in steps at which an edge's word counts 1/e: four times what is usual among the edges, within these bounds.
+ * On a tripod true edges fit to a few hundredths and what a row of windows feigns does not; a flown grid is looser.
+ */
+const LEAST_MISFIT_SCALE = 0.1;
+export const LARGEST_MISFIT_SCALE = 0.35;
+const USUAL_MISFITS = 4;
 /** Most grids overlap by about a third; assumed where no edge crosses lines. Source: common practice. */
 const USUAL_STEP = 2 / 3;
 
@@ -43,11 +48,22 @@ export function proposeSteps(edges: readonly Edge[], aspect: number): Steps[] {
   }
   tried.sort((p, q) => q.score - p.score);
   const distinct: { x: number; y: number }[] = [];
-  for (const steps of tried) {
-    if (distinct.length >= MOST_PROPOSED) break;
-    if (!distinct.some((other) => isNear(other.x, steps.x) && isNear(other.y, steps.y))) distinct.push(steps);
+  const proposed: Steps[] = [];
+  for (const { x, y } of tried) {
+    if (proposed.length >= MOST_PROPOSED) break;
+    if (distinct.some((other) => isNear(other.x, x) && isNear(other.y, y))) continue;
+    distinct.push({ x, y });
+    const steps = refine(moving, { right: { x, y: 0 }, down: { x: 0, y } });
+    const isKnown = proposed.some(
+      ({ right, down: lower }) => isSame(right.x, steps.right.x) && isSame(lower.y, steps.down.y),
+    );
+    if (!isKnown) proposed.push(steps);
   }
-  return distinct.map(({ x, y }) => refine(moving, { right: { x, y: 0 }, down: { x: 0, y } }));
+  return proposed;
+}
+
+function isSame(a: number, b: number): boolean {
+  return Math.abs(a - b) < SAME_STEP / 3;
 }
 
 function isNear(a: number, b: number): boolean {
@@ -87,17 +103,19 @@ function commonness(columns: number, rows: number): number {
 function refine(edges: readonly Edge[], start: Steps): Steps {
   let steps = start;
   for (let round = 0; round < REFINEMENTS; round++) {
+    // Loose at first; then what fits badly for this grid, such as rows of windows, shapes it less and less.
+    const scale = round < 2 ? LARGEST_MISFIT_SCALE : misfitScale(edges, steps);
     const sums = { cc: 0, cr: 0, rr: 0, cx: 0, cy: 0, rx: 0, ry: 0 };
     for (const edge of edges) {
       const { columns, rows, misfit } = inSteps(edge, steps);
-      if (misfit > LARGEST_REFINE_MISFIT) continue;
-      sums.cc += edge.weight * columns * columns;
-      sums.cr += edge.weight * columns * rows;
-      sums.rr += edge.weight * rows * rows;
-      sums.cx += edge.weight * columns * edge.x;
-      sums.cy += edge.weight * columns * edge.y;
-      sums.rx += edge.weight * rows * edge.x;
-      sums.ry += edge.weight * rows * edge.y;
+      const weight = edge.weight * Math.exp(-((misfit / scale) ** 2));
+      sums.cc += weight * columns * columns;
+      sums.cr += weight * columns * rows;
+      sums.rr += weight * rows * rows;
+      sums.cx += weight * columns * edge.x;
+      sums.cy += weight * columns * edge.y;
+      sums.rx += weight * rows * edge.x;
+      sums.ry += weight * rows * edge.y;
     }
     steps = solveSteps(sums, steps);
   }
@@ -159,4 +177,14 @@ function wholeSteps(across: number, downward: number): WholeSteps {
   const columns = Math.round(across) + 0;
   const rows = Math.round(downward) + 0;
   return { columns, rows, misfit: Math.hypot(across - columns, downward - rows) };
+}
+
+/** Misfit in steps at which an edge counts 1/e, from the median misfit of the edges by weight. */
+export function misfitScale(edges: readonly Edge[], steps: Steps): number {
+  const moving = edges.filter((edge) => !edge.steps && Math.hypot(edge.x, edge.y) >= LARGEST_SAME_PLACE);
+  const misfits = moving.map((edge) => ({ misfit: inSteps(edge, steps).misfit, weight: edge.weight }));
+  misfits.sort((a, b) => a.misfit - b.misfit);
+  let left = misfits.reduce((sum, { weight }) => sum + weight, 0) / 2;
+  const usual = misfits.find(({ weight }) => (left -= weight) <= 0)?.misfit ?? LARGEST_MISFIT_SCALE;
+  return Math.min(LARGEST_MISFIT_SCALE, Math.max(LEAST_MISFIT_SCALE, USUAL_MISFITS * usual));
 }

@@ -1,5 +1,5 @@
 import type { Edge } from "./edges";
-import { inSteps, type Steps, type WholeSteps } from "./lattice-steps";
+import { inSteps, LARGEST_MISFIT_SCALE, misfitScale, type Steps, type WholeSteps } from "./lattice-steps";
 import { LARGEST_SAME_PLACE } from "./vector";
 
 /** A place relative to an origin that has no meaning: differences within one component do. */
@@ -11,13 +11,6 @@ export interface Label {
 /** Stacks connected by edges, each with its label, in the order of the stacks' indices. */
 export type Component = ReadonlyMap<number, Label>;
 
-/**
- * Misfit in steps at which an edge's word counts 1/e: four times what is usual among the edges, within these bounds.
- * On a tripod true edges fit to a few hundredths and what a row of windows feigns does not; a flown grid is looser.
- */
-const LEAST_MISFIT_SCALE = 0.1;
-const LARGEST_MISFIT_SCALE = 0.35;
-const USUAL_MISFITS = 4;
 /**
  * Two stacks of one place would match beyond doubt, so that two on one place that do not weigh against it like the
  * clearest of edges; less where there is little to match. Our own.
@@ -82,16 +75,6 @@ export function labelStacks(
 
 function isZero({ columns, rows }: { columns: number; rows: number }): boolean {
   return columns === 0 && rows === 0;
-}
-
-/** Misfit in steps at which an edge counts 1/e, from the median misfit of the edges by weight. */
-export function misfitScale(edges: readonly Edge[], steps: Steps): number {
-  const moving = edges.filter((edge) => !edge.steps && Math.hypot(edge.x, edge.y) >= LARGEST_SAME_PLACE);
-  const misfits = moving.map((edge) => ({ misfit: inSteps(edge, steps).misfit, weight: edge.weight }));
-  misfits.sort((a, b) => a.misfit - b.misfit);
-  let left = misfits.reduce((sum, { weight }) => sum + weight, 0) / 2;
-  const usual = misfits.find(({ weight }) => (left -= weight) <= 0)?.misfit ?? LARGEST_MISFIT_SCALE;
-  return Math.min(LARGEST_MISFIT_SCALE, Math.max(LEAST_MISFIT_SCALE, USUAL_MISFITS * usual));
 }
 
 /**

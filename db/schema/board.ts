@@ -1,8 +1,9 @@
 import { index, integer, primaryKey, real, sqliteTable, text, uniqueIndex } from "drizzle-orm/sqlite-core";
 import { stacks } from "@/db/schema/frames";
 import { projects } from "@/db/schema/projects";
-import { users } from "@/db/schema/accounts";
-import type { ProjectId, StackId, UserId } from "@/lib/ids";
+import { sessions, users } from "@/db/schema/accounts";
+import type { Change } from "@/lib/board/changes";
+import type { ProjectId, SessionId, StackId, UserId } from "@/lib/ids";
 import type { ProposedQuestion, QuestionKind } from "@/lib/sorting/types";
 
 export const seams = sqliteTable(
@@ -72,10 +73,22 @@ export const changes = sqliteTable(
       .$type<UserId>()
       .references(() => users.id, { onDelete: "set null" }),
     type: text().notNull(),
+    /** The command as it was sent, or what a sorting came to. */
     payload: text({ mode: "json" }).$type<Readonly<Record<string, unknown>>>().notNull(),
+    /** What it did, with what was there before: from these the step is shown to others and taken back. */
+    steps: text({ mode: "json" }).$type<readonly Change[]>().notNull().default([]),
+    /** What was done, in plain words without the person's name: "moved HARB0019 from A3 to A4". */
+    sentence: text().notNull().default(""),
+    /** Names, then, of the tiles it touched. */
+    tiles: text({ mode: "json" }).$type<readonly string[]>().notNull().default([]),
+    /** The change that this one takes back. */
+    undoes: text(),
     atMs: integer("at_ms").notNull(),
   },
-  (table) => [uniqueIndex("changes_revision").on(table.projectId, table.revision)],
+  (table) => [
+    uniqueIndex("changes_revision").on(table.projectId, table.revision),
+    index("changes_by_person").on(table.projectId, table.userId, table.revision),
+  ],
 );
 
 /** What happened, for the pages that are open: ids and versions, not data. */
@@ -92,4 +105,27 @@ export const events = sqliteTable(
     atMs: integer("at_ms").notNull(),
   },
   (table) => [index("events_by_project").on(table.projectId, table.id)],
+);
+
+/** Who has the board open, and on which tile: one row a session, touched while the page is open. */
+export const presences = sqliteTable(
+  "presences",
+  {
+    projectId: text("project_id")
+      .$type<ProjectId>()
+      .notNull()
+      .references(() => projects.id, { onDelete: "cascade" }),
+    sessionId: text("session_id")
+      .$type<SessionId>()
+      .notNull()
+      .references(() => sessions.id, { onDelete: "cascade" }),
+    userId: text("user_id")
+      .$type<UserId>()
+      .notNull()
+      .references(() => users.id, { onDelete: "cascade" }),
+    /** Name of the tile; null: none is open. */
+    tile: text(),
+    seenAtMs: integer("seen_at_ms").notNull(),
+  },
+  (table) => [primaryKey({ columns: [table.projectId, table.sessionId] })],
 );

@@ -9,7 +9,7 @@ export const jobs = sqliteTable(
     id: text().primaryKey(),
     /** Unique: asking twice for the same work is one job. */
     key: text().notNull().unique(),
-    kind: text({ enum: ["analyse-file", "sort-project"] }).notNull(),
+    kind: text({ enum: ["analyse-file", "sort-project", "measure-stacks"] }).notNull(),
     projectId: text("project_id")
       .$type<ProjectId>()
       .notNull()

@@ -26,6 +26,8 @@ export const projects = sqliteTable("projects", {
   contentVersion: integer("content_version").notNull().default(0),
   sortedVersion: integer("sorted_version").notNull().default(0),
   sortedAtMs: integer("sorted_at_ms"),
+  /** Somebody asked for a sorting that keeps only what people decided: the next one lets go of its own earlier results. */
+  isAnewWanted: integer("is_anew_wanted", { mode: "boolean" }).notNull().default(false),
   /** Why the last sorting failed, in plain words; null: it did not. */
   sortError: text("sort_error"),
   isDemo: integer("is_demo", { mode: "boolean" }).notNull().default(false),

@@ -90,9 +90,14 @@ export const boardCommandSchema = z.discriminatedUnion("type", [
   z.object({ ...base, type: z.literal("assign"), stackIds: ids, userId: id.nullable() }),
   /** Takes back one's own earlier command; redo is the undo of an undo. */
   z.object({ ...base, type: z.literal("undo"), commandId: z.uuid() }),
+  /** Takes back, as one new step, everything after this revision, whoever did it. */
+  z.object({ ...base, type: z.literal("undo-back-to"), toRevision: z.int().min(0) }),
 ]);
 
 export type BoardCommand = z.infer<typeof boardCommandSchema>;
 export type CommandOf<Type extends BoardCommand["type"]> = Extract<BoardCommand, { type: Type }>;
 /** Commands that are planned from the board alone; an undo is planned from the record. */
-export type PlannedCommand = Exclude<BoardCommand, { type: "undo" }>;
+export type PlannedCommand = Exclude<BoardCommand, { type: "undo" | "undo-back-to" }>;
+type Draft<Command> = Command extends unknown ? Omit<Command, "id" | "revision"> : never;
+/** What a person asks for; whoever sends it adds its id and the revision that was seen. */
+export type CommandDraft = Draft<z.input<typeof boardCommandSchema>>;

@@ -13,7 +13,7 @@ const shotOrderSchema = z.object({
   turns: z.boolean(),
 });
 
-const stackSchema = z.object({
+export const stackSchema = z.object({
   id: z.string(),
   row: z.int().nullable(),
   column: z.int().nullable(),
@@ -60,7 +60,7 @@ const frameFileSchema = z.object({
   mediaType: z.string(),
 });
 
-const frameSchema = z.object({
+export const frameSchema = z.object({
   id: z.string(),
   name: z.string(),
   files: z.array(frameFileSchema),
@@ -92,7 +92,7 @@ const answerActionSchema = z.discriminatedUnion("type", [
   z.object({ type: z.literal("split-stack"), stackId: z.string(), atFrameId: z.string() }),
 ]);
 
-const questionSchema = z.object({
+export const questionSchema = z.object({
   id: z.string(),
   key: z.string(),
   kind: z.enum(QUESTION_KINDS),
@@ -140,15 +140,6 @@ export const boardSchema: z.ZodType<Board> = z.object({
   ),
   duplicates: z.array(z.object({ name: z.string(), folder: z.string().nullable(), of: z.string() })),
 });
-
-/**
- * With `?since=REVISION`: `{"unchanged": true}` where that is the newest revision, else the whole board with `full: true`
- * (differences are not kept).
- */
-export const boardSinceSchema = z.union([
-  z.object({ unchanged: z.literal(true), revision: z.int() }),
-  z.intersection(boardSchema, z.object({ full: z.literal(true) })),
-]);
 
 /** Query of the board route. */
 export const boardQuerySchema = z.object({ since: z.coerce.number().int().min(0).optional() });

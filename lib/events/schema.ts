@@ -10,6 +10,8 @@ export const projectEventSchema = z.discriminatedUnion("type", [
   z.object({ type: z.literal("file.analysed"), fileId: fileIdSchema }),
   z.object({ type: z.literal("board.changed"), revision: z.int() }),
   z.object({ type: z.literal("sort.failed") }),
+  /** Somebody came, went, or opened another tile. */
+  z.object({ type: z.literal("people.moved") }),
   /** The stream cannot tell what was missed: fetch everything anew. */
   z.object({ type: z.literal("missed") }),
 ]);

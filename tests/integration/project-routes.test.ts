@@ -17,7 +17,8 @@ import { GET as getManifest } from "@/app/api/projects/[projectId]/manifest/rout
 import { GET as getProgressRoute } from "@/app/api/projects/[projectId]/progress/route";
 import { accessForJob } from "@/lib/auth/gate";
 import { getBoard } from "@/lib/board/reads";
-import { boardSchema, boardSinceSchema } from "@/lib/board/schema";
+import { boardSinceSchema } from "@/lib/board/command-answers";
+import { boardSchema } from "@/lib/board/schema";
 import { intakeListSchema, progressSchema } from "@/lib/frames/schema";
 import { createAnalysisPool } from "@/lib/imaging/analysis-pool";
 import type { ProjectId } from "@/lib/ids";

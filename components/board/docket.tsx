@@ -2,7 +2,7 @@
 
 import { Crop } from "@/components/board/crop";
 import { LOOSE } from "@/components/board/use-board-place";
-import { Button } from "@/components/ui/button";
+import { Button, LinkButton } from "@/components/ui/button";
 import type { BoardIndex } from "@/lib/board/board-index";
 import type { BoardQuestion } from "@/lib/board/model";
 import { questionPictures, type QuestionPicture } from "@/lib/board/question-pictures";
@@ -38,6 +38,11 @@ export function Docket({ index, question, at, onTurn, onShowTile }: DocketProps)
             Show {place === LOOSE ? "loose frames" : place}
           </Button>
         ))}
+        {question.tile !== null && index.holes.has(question.tile) && (
+          <LinkButton size="slim" href={`/projects/${index.board.projectId}/intake`}>
+            Bring in frames of {question.tile}
+          </LinkButton>
+        )}
         {count > 1 && (
           <>
             <Button size="slim" tone="bare" onClick={() => onTurn((at + count - 1) % count)}>

@@ -33,16 +33,23 @@ export function gridLines(index: BoardIndex, chosen: string | null): GridLine[] 
   return lines;
 }
 
-/** The tile that an arrow key leads to from a place: the next one in that direction, holes passed over. */
-export function neighbourTile(index: BoardIndex, from: BoardTile, key: string): BoardTile | null {
+/** A place of the grid that the arrow keys reach. */
+export type GridPlace = Pick<BoardTile, "name" | "row" | "column">;
+
+/**
+ * The place that an arrow key leads to: the next one in that direction.
+ * @param hasHoles - whether holes are reached too; otherwise they are passed over
+ */
+export function neighbourPlace(index: BoardIndex, from: GridPlace, key: string, hasHoles: boolean): GridPlace | null {
   const step = STEPS[key];
   if (!step || from.row === null || from.column === null) return null;
-  const byPlace = new Map([...index.tiles.values()].map((tile) => [`${tile.row},${tile.column}`, tile]));
+  const places: GridPlace[] = [...index.tiles.values(), ...(hasHoles ? index.holes.values() : [])];
+  const byPlace = new Map(places.map((place) => [`${place.row},${place.column}`, place]));
   let row = from.row + step[0];
   let column = from.column + step[1];
   while (row >= 1 && column >= 1 && row <= index.board.grid.rows && column <= index.board.grid.columns) {
-    const tile = byPlace.get(`${row},${column}`);
-    if (tile) return tile;
+    const place = byPlace.get(`${row},${column}`);
+    if (place) return place;
     row += step[0];
     column += step[1];
   }

@@ -9,6 +9,11 @@ const STRIPES = {
     "repeating-linear-gradient(135deg, var(--ochre-wash) 0 10px, color-mix(in srgb, var(--ochre) 18%, var(--ochre-wash)) 10px 20px)",
 };
 
+/** Whether there is room for a hole's words and its link. */
+export function hasHoleLink({ size, tileWidthPx }: BoardLayout): boolean {
+  return size === "full" && tileWidthPx >= 150;
+}
+
 interface HoleProps {
   readonly projectId: string;
   readonly hole: BoardHole;
@@ -19,7 +24,7 @@ interface HoleProps {
 export function Hole({ projectId, hole, layout }: HoleProps) {
   const loss =
     hole.lostShare > 0.005 ? `${percent(hole.lostShare)} of the tile is lost` : "its neighbours cover all of it";
-  const isRoomy = layout.size === "full" && layout.tileWidthPx >= 150;
+  const isRoomy = hasHoleLink(layout);
   return (
     <div
       role="group"
@@ -43,7 +48,13 @@ export function Hole({ projectId, hole, layout }: HoleProps) {
           </span>
           {isRoomy && <span>{loss}</span>}
           {isRoomy && (
-            <Link href={`/projects/${projectId}/intake`} className="link inline-block min-h-6 font-semibold">
+            // Arrow keys reach it as they reach a tile: in the tab order it would stand between a tile and its bench.
+            <Link
+              href={`/projects/${projectId}/intake`}
+              data-tile={hole.name}
+              tabIndex={-1}
+              className="link inline-block min-h-6 font-semibold"
+            >
               Bring in its frames
             </Link>
           )}

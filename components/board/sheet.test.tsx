@@ -145,11 +145,42 @@ test("without room the board is the table and one tile at a time", async () => {
   expect(screen.getByRole("table")).toBeDefined();
 });
 
-test("arrow keys walk from tile to tile and pass over holes", async () => {
+test("arrow keys walk from place to place, a hole's link included; after a tile Tab leads to its bench", async () => {
   render(<Harness board={makeEventfulBoard()} />);
+  const isFocused = (name: string) =>
+    vi.waitFor(() => expect(document.activeElement?.getAttribute("data-tile")).toBe(name));
+  await userEvent.click(screen.getByRole("button", { name: /^Tile B4/ }));
+  await userEvent.tab();
+  expect(screen.getByRole("region", { name: "Frames of B4" }).contains(document.activeElement)).toBe(true);
   screen.getByRole("button", { name: /^Tile B4/ }).focus();
   await userEvent.keyboard("{ArrowRight}");
-  await vi.waitFor(() => expect(document.activeElement?.getAttribute("data-tile")).toBe("B6"));
+  await isFocused("B5");
+  expect(document.activeElement?.textContent).toBe("Bring in its frames");
+  await userEvent.keyboard("{ArrowRight}");
+  await isFocused("B6");
+});
+
+test("where a hole's cell has no room for its link, arrow keys pass over it", async () => {
+  render(<Harness board={makeBoard({ rows: 2, columns: 12, framesPerTile: 2, holes: ["1,3"] })} />);
+  screen.getByRole("button", { name: /^Tile A2/ }).focus();
+  await userEvent.keyboard("{ArrowRight}");
+  await vi.waitFor(() => expect(document.activeElement?.getAttribute("data-tile")).toBe("A4"));
+});
+
+test("without room a hole's question shows the tiles beside it and leads to the intake", async () => {
+  render(<Harness board={makeEventfulBoard()} isWide={false} />);
+  const docket = screen.getByRole("region", { name: "3 questions" });
+  await userEvent.click(within(docket).getByRole("button", { name: "Question before" }));
+  expect(within(docket).getByRole("heading").textContent).toBe("Was B5 left out?");
+  const pictures = within(docket).getByRole("list", { name: "Pictures that decide it, whole" });
+  expect(
+    within(pictures)
+      .getAllByRole("listitem")
+      .map((item) => item.textContent),
+  ).toEqual(["B4", "B6"]);
+  expect(within(docket).getByRole("link", { name: "Bring in frames of B5" }).getAttribute("href")).toBe(
+    "/projects/project-1/intake",
+  );
 });
 
 test("with 2 000 stacks only the rows in view are drawn", () => {

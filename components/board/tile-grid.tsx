@@ -4,7 +4,8 @@ import { useVirtualizer } from "@tanstack/react-virtual";
 import { useCallback, useEffect, useMemo, useRef, useState, type KeyboardEvent } from "react";
 import { Bench, LooseBench } from "@/components/board/bench";
 import { ColumnNumbers } from "@/components/board/column-numbers";
-import { gridLines, neighbourTile, type GridLine } from "@/components/board/grid-rows";
+import { gridLines, neighbourPlace, type GridLine, type GridPlace } from "@/components/board/grid-rows";
+import { hasHoleLink } from "@/components/board/hole";
 import { TileRow } from "@/components/board/tile-row";
 import { useElementSize } from "@/components/board/use-element-size";
 import type { BoardIndex, BoardTile } from "@/lib/board/board-index";
@@ -24,6 +25,8 @@ interface TileGridProps {
 
 /** The padding of the well, both sides, px. */
 const WELL_PADDING_PX = 32;
+/** The line of numbers above the tiles, the room for an outline below it, the padding at the foot, px. */
+const NUMBERS_AND_EDGES_PX = 62;
 
 /** The sheet: tiles in their rows on the well, the bench unfolded between them. Only rows in view are drawn. */
 export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlace }: TileGridProps) {
@@ -36,10 +39,11 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlac
   }, [index]);
   const { projectId, grid } = index.board;
   const widthPx = (size?.width ?? 0) - WELL_PADDING_PX;
+  const heightPx = (size?.height ?? 0) - NUMBERS_AND_EDGES_PX;
   const layout = useMemo(() => {
     const aspect = geometry.steps.acrossPx / geometry.steps.downPx;
-    return layoutBoard({ columns: grid.columns, widthPx, aspect });
-  }, [grid.columns, widthPx, geometry]);
+    return layoutBoard({ columns: grid.columns, widthPx, heightPx, aspect });
+  }, [grid.columns, widthPx, heightPx, geometry]);
   const partOf = useCallback((tile: BoardTile) => picturePart(tile, geometry.steps, geometry.origin), [geometry]);
   const lines = useMemo(() => gridLines(index, chosen), [index, chosen]);
   const seams = useMemo(() => seamMarksByRow(index, isAllSeams), [index, isAllSeams]);
@@ -72,28 +76,28 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlac
 
   const items = virtualizer.getVirtualItems();
   const tabStop = findTabStop({ index, chosen, lines: items.flatMap((item) => lines[item.index] ?? []) });
-  const focusTile = (tile: BoardTile) => {
+  const focusPlace = (place: GridPlace) => {
     virtualizer.scrollToIndex(
-      lines.findIndex((line) => line.kind === "row" && line.row === tile.row),
+      lines.findIndex((line) => line.kind === "row" && line.row === place.row),
       { align: "auto" },
     );
-    requestAnimationFrame(() => scroller.current?.querySelector<HTMLElement>(`[data-tile="${tile.name}"]`)?.focus());
+    requestAnimationFrame(() => scroller.current?.querySelector<HTMLElement>(`[data-tile="${place.name}"]`)?.focus());
   };
   const onKeyDown = (event: KeyboardEvent) => {
     const name = event.target instanceof HTMLElement ? event.target.dataset.tile : undefined;
-    const from = name === undefined ? undefined : index.tiles.get(name);
-    const next = from ? neighbourTile(index, from, event.key) : null;
+    const from = name === undefined ? undefined : (index.tiles.get(name) ?? index.holes.get(name));
+    const next = from ? neighbourPlace(index, from, event.key, hasHoleLink(layout)) : null;
     if (event.key === "Escape" && chosen !== null) onChoose(null);
     if (!next) return;
     event.preventDefault();
-    focusTile(next);
+    focusPlace(next);
   };
 
   return (
     <div
       ref={scrollerRef}
       role="group"
-      aria-label="Board: arrow keys move from tile to tile, Enter opens a tile"
+      aria-label="Board: arrow keys move from place to place, Enter opens a tile"
       onKeyDown={onKeyDown}
       className="relative min-h-0 flex-1 overflow-auto bg-well px-4 pb-4"
     >

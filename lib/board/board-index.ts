@@ -96,6 +96,11 @@ export function indexBoard(board: Board): BoardIndex {
   };
 }
 
+/** Left out of the merge of its stack. A frame in no stack is loose, whatever was measured of it. */
+export function isSetAside({ stackId, setAside }: Pick<BoardFrame, "stackId" | "setAside">): boolean {
+  return stackId !== null && setAside !== null;
+}
+
 export function countInUse(frames: readonly BoardFrame[]): number {
   return frames.filter((frame) => frame.setAside === null).length;
 }

@@ -132,8 +132,29 @@ test("a seam's question shows both tiles at the middle of what they share", () =
 test("the bench wraps evenly: 12 frames are two rows of 6, 7 are one", () => {
   expect(benchCrops(12, 1120).perRow).toBe(6);
   expect(benchCrops(7, 1120)).toEqual({ perRow: 7, widthPx: 149, heightPx: 99 });
+  expect(benchCrops(8, 1144)).toEqual({ perRow: 8, widthPx: 132, heightPx: 88 });
   expect(benchCrops(5, 330).perRow).toBe(2);
   expect(benchCrops(3, 120).widthPx).toBe(120);
+});
+
+test("a bench that wraps leaves no strip beside its crops, whatever the width", () => {
+  for (let widthPx = 620; widthPx <= 2000; widthPx += 10) {
+    for (const count of [8, 12, 16, 20]) {
+      const { perRow, widthPx: cropPx } = benchCrops(count, widthPx);
+      if (perRow < count) expect(widthPx - perRow * cropPx - (perRow - 1) * 12).toBeLessThan(perRow);
+    }
+  }
+});
+
+test("tiles of few columns keep two rows in view, and are no smaller than is needed to see something", () => {
+  const tile = (columns: number, heightPx: number) => layoutBoard({ columns, widthPx: 1160, heightPx, aspect: 1.5 });
+  for (const columns of [1, 2, 3, 4]) {
+    const { pictureHeightPx, captionHeightPx, gapPx } = tile(columns, 480);
+    expect(2 * (pictureHeightPx + captionHeightPx + gapPx)).toBeLessThanOrEqual(481);
+  }
+  expect(tile(2, 2000).tileWidthPx).toBe(420);
+  expect(tile(2, 100).tileWidthPx).toBe(240);
+  expect(tile(6, 100).tileWidthPx).toBe(180);
 });
 
 test("tiles show their own part, one step wide, so that neighbours' pictures meet", () => {
@@ -153,7 +174,7 @@ test("tiles show their own part, one step wide, so that neighbours' pictures mee
 });
 
 test("tiles get smaller with more columns, never smaller than the map's least", () => {
-  const sizes = [6, 12, 50, 200].map((columns) => layoutBoard({ columns, widthPx: 1160, aspect: 1.5 }));
+  const sizes = [6, 12, 50, 200].map((columns) => layoutBoard({ columns, widthPx: 1160, heightPx: 480, aspect: 1.5 }));
   expect(sizes.map(({ size }) => size)).toEqual(["full", "medium", "map", "map"]);
   expect(Math.min(...sizes.map(({ tileWidthPx }) => tileWidthPx))).toBe(20);
 });

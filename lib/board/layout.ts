@@ -23,26 +23,39 @@ const MEDIUM_TILE_PX = 58;
 const MAP_TILE_PX = 20;
 /** A wider tile would show the preview larger than a person needs to find their way. */
 const LARGEST_TILE_PX = 420;
+/** A grid of few columns keeps two rows in view, so that a tile and its bench, or its neighbour below, are seen together. */
+const ROWS_IN_VIEW = 2;
+/** However low the window: tiles of few columns are not made smaller than this for it. */
+const LEAST_FOR_HEIGHT_PX = 240;
 
 /**
  * Size of the tiles for a width.
  * @param columns - 1 or more
  * @param widthPx - what the well offers inside its padding
+ * @param heightPx - what it offers below the numbers
  * @param aspect - width over height of the part of a picture that a tile shows
  */
-export function layoutBoard(input: { columns: number; widthPx: number; aspect: number }): BoardLayout {
+export function layoutBoard(input: {
+  columns: number;
+  widthPx: number;
+  heightPx: number;
+  aspect: number;
+}): BoardLayout {
   const columns = Math.max(1, input.columns);
   const lettersWidthPx = 64;
   const perTile = (gapPx: number) => Math.floor((input.widthPx - lettersWidthPx - gapPx * (columns - 1)) / columns);
   const wide = perTile(3);
   const size: TileSize = wide >= FULL_TILE_PX ? "full" : wide >= MEDIUM_TILE_PX ? "medium" : "map";
   const gapPx = size === "full" ? 3 : size === "medium" ? 2 : 1;
-  const tileWidthPx = Math.min(LARGEST_TILE_PX, Math.max(MAP_TILE_PX, perTile(gapPx)));
+  const captionHeightPx = size === "full" ? 28 : size === "medium" ? 24 : 0;
+  const lowPx = Math.floor((input.heightPx / ROWS_IN_VIEW - captionHeightPx - gapPx) * input.aspect);
+  const largestPx = Math.min(LARGEST_TILE_PX, Math.max(LEAST_FOR_HEIGHT_PX, lowPx));
+  const tileWidthPx = Math.min(largestPx, Math.max(MAP_TILE_PX, perTile(gapPx)));
   return {
     size,
     tileWidthPx,
     pictureHeightPx: Math.max(1, Math.round(tileWidthPx / input.aspect)),
-    captionHeightPx: size === "full" ? 28 : size === "medium" ? 24 : 0,
+    captionHeightPx,
     gapPx,
     lettersWidthPx,
   };
@@ -181,16 +194,19 @@ function inside(wished: number, seen: number, spans: readonly { readonly from: n
 
 const BENCH_GAP_PX = 12;
 /** Narrowest and widest crop on the bench. */
-const CROP_LEAST_PX = 148;
+const CROP_LEAST_PX = 132;
 const CROP_MOST_PX = 232;
+/** In two rows and more, crops grow until they fill the width: no strip beside them stays empty. */
+const CROP_MOST_WRAPPED_PX = 280;
 
 /** How the frames of a bench wrap: as few rows as fit, filled evenly (12 frames are two rows of 6), never sideways. */
 export function benchCrops(count: number, widthPx: number): { perRow: number; widthPx: number; heightPx: number } {
-  const most = Math.max(1, Math.floor((widthPx + BENCH_GAP_PX) / (CROP_LEAST_PX + BENCH_GAP_PX)));
-  const rows = Math.max(1, Math.ceil(count / most));
+  const fitting = Math.max(1, Math.floor((widthPx + BENCH_GAP_PX) / (CROP_LEAST_PX + BENCH_GAP_PX)));
+  const rows = Math.max(1, Math.ceil(count / fitting));
   const perRow = Math.max(1, Math.ceil(count / rows));
   const width = Math.floor((widthPx - BENCH_GAP_PX * (perRow - 1)) / perRow);
-  const cropWidthPx = Math.max(Math.min(CROP_LEAST_PX, widthPx), Math.min(CROP_MOST_PX, width));
+  const mostPx = rows > 1 ? CROP_MOST_WRAPPED_PX : CROP_MOST_PX;
+  const cropWidthPx = Math.max(Math.min(CROP_LEAST_PX, widthPx), Math.min(mostPx, width));
   return { perRow, widthPx: cropWidthPx, heightPx: Math.round((cropWidthPx * 2) / 3) };
 }
 

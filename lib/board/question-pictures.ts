@@ -1,6 +1,7 @@
 import type { BoardIndex } from "@/lib/board/board-index";
 import { spotInFrame, type CropCentre } from "@/lib/board/layout";
 import type { BoardFrame, BoardQuestion } from "@/lib/board/model";
+import { tileName } from "@/lib/board/tile-name";
 
 export interface QuestionPicture {
   readonly frame: BoardFrame;
@@ -25,7 +26,11 @@ interface Placed {
  * spot of the scene where all of them show one (that of a named tile, else the middle of what two share), else whole.
  */
 export function questionPictures(index: BoardIndex, question: BoardQuestion): QuestionPicture[] {
-  const placed = [...askedFrames(index, question), ...references(index, question)].slice(0, MOST_PICTURES);
+  const placed = [
+    ...askedFrames(index, question),
+    ...references(index, question),
+    ...besideHole(index, question.tile ?? ""),
+  ].slice(0, MOST_PICTURES);
   const spots = [...question.stackIds.flatMap((id) => sceneSpot(index, id)), ...sharedSpots(placed)];
   const spot = spots.find((candidate) => placed.every((picture) => centreAt(picture, candidate).isSameSpot));
   return placed.map((picture) => ({
@@ -71,6 +76,27 @@ function references(index: BoardIndex, question: BoardQuestion): Placed[] {
     const corner = stack.position ? { x: stack.position.xPx, y: stack.position.yPx } : null;
     return [{ frame, label: tile.takes.length > 1 ? `${tile.name}, take ${stack.take}` : tile.name, corner }];
   });
+}
+
+/** Of a hole, the references on both sides of it, whole: they show where its picture ought to go on. */
+function besideHole(index: BoardIndex, name: string): Placed[] {
+  const hole = index.holes.get(name);
+  if (!hole) return [];
+  const { row, column } = hole;
+  const tilesAt = (places: readonly (readonly [number, number])[]) =>
+    places.flatMap(([r, c]) => (r > 0 && c > 0 ? (index.tiles.get(tileName(r, c)) ?? []) : []));
+  const besides = tilesAt([
+    [row, column - 1],
+    [row, column + 1],
+  ]);
+  const tiles =
+    besides.length > 0
+      ? besides
+      : tilesAt([
+          [row - 1, column],
+          [row + 1, column],
+        ]);
+  return tiles.flatMap(({ name: label, reference }) => (reference ? [{ frame: reference, label, corner: null }] : []));
 }
 
 function sceneSpot(index: BoardIndex, stackId: string): { x: number; y: number }[] {

@@ -1,4 +1,4 @@
-import type { BoardIndex } from "@/lib/board/board-index";
+import { isSetAside, type BoardIndex } from "@/lib/board/board-index";
 import type { BoardSeam } from "@/lib/board/model";
 import { countOf, percent } from "@/lib/board/words";
 import { SET_ASIDE_REASONS, type SetAsideReason } from "@/lib/sorting/types";
@@ -70,7 +70,7 @@ export function openPoints(index: BoardIndex): OpenPoint[] {
 export function setAsideCounts(index: BoardIndex): { readonly reason: SetAsideReason; readonly count: number }[] {
   return SET_ASIDE_REASONS.map((reason) => ({
     reason,
-    count: index.board.frames.filter((frame) => frame.setAside === reason).length,
+    count: index.board.frames.filter((frame) => isSetAside(frame) && frame.setAside === reason).length,
   })).filter(({ count }) => count > 0);
 }
 

@@ -1,5 +1,5 @@
 import { expectedNoise } from "@/lib/board/expected-noise";
-import type { BoardIndex, BoardTile } from "@/lib/board/board-index";
+import { isSetAside, type BoardIndex, type BoardTile } from "@/lib/board/board-index";
 import { countOf, exposureText, percent, trimmed } from "@/lib/board/words";
 import type { BoardFrame } from "@/lib/board/model";
 
@@ -9,7 +9,7 @@ const BRIGHTNESS_TO_EV = 2.2;
 /** The status line under the board, most important first. */
 export function boardStatus(index: BoardIndex): string[] {
   const { board, tiles, holes, loose, unplaced } = index;
-  const setAside = board.frames.filter((frame) => frame.setAside !== null).length;
+  const setAside = board.frames.filter(isSetAside).length;
   const overlaps = board.seams.flatMap((seam) => (seam.overlap === null ? [] : [seam.overlap]));
   const sizes = [...tiles.values()].map((tile) => tile.inUse);
   return [

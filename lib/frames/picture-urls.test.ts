@@ -9,7 +9,7 @@ test("a crop is asked for around its middle, pushed inside the frame, and cut do
   expect(of(3000, 2000, 512)).toBe("/api/projects/p/frames/f/crop?x=2744&y=1744&w=512&h=512");
   expect(of(0, 0, 512)).toBe("/api/projects/p/frames/f/crop?x=0&y=0&w=512&h=512");
   expect(of(6000, 4000, 512)).toBe("/api/projects/p/frames/f/crop?x=5488&y=3488&w=512&h=512");
-  expect(of(3000, 2000, 5000)).toBe("/api/projects/p/frames/f/crop?x=2488&y=1488&w=1024&h=1024");
+  expect(of(3000, 2000, 5000)).toBe("/api/projects/p/frames/f/crop?x=1976&y=976&w=2048&h=2048");
 });
 
 test("a frame smaller than the crop is shown whole", () => {

@@ -17,7 +17,7 @@ export interface CropRequest {
   /** Middle of what is wanted, upright full-size px. */
   readonly centreXPx: number;
   readonly centreYPx: number;
-  /** Size wanted, px; cut down to the frame and to 1 024 px. */
+  /** Size wanted, px; cut down to the frame and to 2 048 px. */
   readonly cropWidthPx: number;
   readonly cropHeightPx: number;
 }

@@ -57,8 +57,8 @@ export const intakeListSchema = z.object({
 });
 export type IntakeList = z.infer<typeof intakeListSchema>;
 
-/** Longest side of a crop, px: what a large screen shows at 100 %, and what one decode may cost. */
-export const CROP_MOST_PX = 1024;
+/** Longest side of a crop, px: what half of a large, dense screen shows at 100 %. */
+export const CROP_MOST_PX = 2048;
 
 /** Query of `.../frames/{frameId}/crop`: a rectangle in the frame's upright full-size pixels. */
 export const cropQuerySchema = z.object({

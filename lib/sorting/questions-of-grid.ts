@@ -5,7 +5,15 @@ import { isKept, nameOf, percent, tileOf, type SortedDraft } from "./sorted-draf
 import type { ProposedQuestion, QuestionKind } from "./types";
 
 /** Severities, higher is worse: what can only be mended by shooting again comes first. */
-const SEVERITY = { hole: 95, order: 85, retake: 65, "two-stacks": 60, "thin-seam": 45, "few-frames": 35 } as const;
+const SEVERITY = {
+  hole: 95,
+  order: 85,
+  retake: 65,
+  "two-stacks": 60,
+  "soft-stack": 62,
+  "thin-seam": 45,
+  "few-frames": 35,
+} as const;
 /** More doubts of one kind than this are one question: the answer will be the same for all. Our own. */
 const MOST_SINGLE_QUESTIONS = 3;
 
@@ -24,6 +32,7 @@ export function questionsOfGrid(draft: SortedDraft): ProposedQuestion[] {
     }),
     ...retakeQuestions(draft),
     ...doubledQuestions(draft),
+    ...softStackQuestions(draft),
     ...orderQuestions(draft),
   ];
 }
@@ -170,6 +179,27 @@ function doubledQuestions(draft: SortedDraft): ProposedQuestion[] {
           { label: `Split at ${first}`, action: { type: "split-stack", stackId: stack.id, atFrameId } },
         ],
         severity: SEVERITY["two-stacks"],
+      } satisfies ProposedQuestion,
+    ];
+  });
+}
+
+function softStackQuestions(draft: SortedDraft): ProposedQuestion[] {
+  return draft.softStacks.flatMap(({ index, score, witnesses, neighbours }) => {
+    const stack = draft.stacks[index];
+    if (!stack || !isKept(draft, stack) || !draft.takes[index]?.isChosenTake || stack.fixed?.byPerson) return [];
+    const less = percent(1 - Math.exp(score));
+    return [
+      {
+        key: `soft-stack ${stack.id}`,
+        kind: "soft-stack",
+        message: `Are all frames of ${nameOf(draft, index)} soft?`,
+        evidence: `Where they overlap it has ${less} less fine detail than ${witnesses} of ${neighbours} neighbours.`,
+        frameIds: [],
+        stackIds: [stack.id],
+        tile: tileOf(draft, index),
+        answers: [{ label: "Merge it as it is", action: ACCEPT }],
+        severity: SEVERITY["soft-stack"],
       } satisfies ProposedQuestion,
     ];
   });

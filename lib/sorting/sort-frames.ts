@@ -2,7 +2,10 @@ import { appraiseStack, areBracketed } from "./appraise-stack";
 import { chooseTakes } from "./choose-takes";
 import { collectEdges } from "./collect-edges";
 import type { StackDraft } from "./draft";
+import type { Edge } from "./edges";
+import { findPositions } from "./find-positions";
 import { findSeams } from "./find-seams";
+import { findSoftStacks, type SharedStrip } from "./soft-stacks";
 import { gatherStacks, joinFacts, type StackSeed } from "./gather-stacks";
 import { numberPlaces } from "./number-places";
 import { orderFrames, type BodySequence } from "./order-frames";
@@ -54,12 +57,21 @@ export async function sortFrames(
   const places = numberPlaces(stacks, layout.spots);
   const { takes, doubts } = chooseTakes(stacks, places);
   const chosen = takes.map((take) => take.isChosenTake);
-  const seams = findSeams(stacks, places, chosen, graph);
+  const found = findPositions(stacks, places, graph);
+  const seams = findSeams(stacks, places, chosen, found);
+  const softStacks = findSoftStacks(stacks, stripsOf(found.trusted, stacks));
   onProgress({ step: "done", done: order.length, total: order.length });
-  return writeProposal(
-    { order, stacks, bodies, layout, places, takes, takeDoubts: doubts, seams, graph, split, black, options },
-    facts,
-  );
+  const drawn = { layout, places, takes, takeDoubts: doubts, positions: found.positions, seams, softStacks };
+  return writeProposal({ order, stacks, bodies, ...drawn, graph, split, black, options }, facts);
+}
+
+/** What two stacks that overlap both show. */
+function stripsOf(edges: readonly Edge[], stacks: readonly StackDraft[]): SharedStrip[] {
+  return edges.map(({ a, b, x, y }) => {
+    const { widthPx, heightPx } = stacks[a]?.hub.measurements ?? { widthPx: 0, heightPx: 0 };
+    const longSidePx = Math.max(widthPx, heightPx);
+    return { a, b, xPx: x * longSidePx, yPx: y * longSidePx };
+  });
 }
 
 /** Black frames mark nothing but an end or a start, unless the whole shoot is black. */

@@ -2,7 +2,9 @@ import { tileName } from "@/lib/board/tile-name";
 import type { GridGraph } from "./collect-edges";
 import type { Take, TakeDoubt } from "./choose-takes";
 import type { StackDraft } from "./draft";
+import type { Positions } from "./find-positions";
 import type { Seam } from "./find-seams";
+import type { SoftStack } from "./soft-stacks";
 import { stemOf } from "./file-number";
 import type { Place } from "./number-places";
 import type { Layout } from "./place-stacks";
@@ -21,7 +23,9 @@ export interface SortedDraft {
   readonly places: readonly Place[];
   readonly takes: readonly Take[];
   readonly takeDoubts: readonly TakeDoubt[];
+  readonly positions: Positions["positions"];
   readonly seams: readonly Seam[];
+  readonly softStacks: readonly SoftStack[];
   readonly graph: GridGraph;
   readonly split: SplitResult & { readonly doubled: readonly Doubled[] };
   /** Frames that are certainly none of the picture: black ones. */

@@ -1,7 +1,9 @@
-import { agreesWithPlaces } from "./find-seams";
+import { agreesWithPlaces } from "./find-positions";
 import type { FrameDraft, StackDraft } from "./draft";
+import type { Edge } from "./edges";
+import { misfitScale, trustIn } from "./lattice";
+import { inSteps } from "./lattice-steps";
 import { stemOf } from "./file-number";
-import { findPositions } from "./find-seams";
 import { tellingSpot } from "./frame-sharpness";
 import { shiftFraction } from "./judge-pair";
 import { pauseSeconds } from "./pauses";
@@ -22,13 +24,12 @@ export function writeProposal(draft: SortedDraft, facts: SortFacts): Proposal {
   const questions = [...questionsOfFrames(draft), ...questionsOfGrid(draft)]
     .filter((question) => !settled.has(question.key))
     .sort((a, b) => b.severity - a.severity || (a.key < b.key ? -1 : 1));
-  const positions = findPositions(draft.stacks, draft.places, draft.graph);
   return {
     engineVersion: ENGINE_VERSION,
     rows: draft.places.reduce((most, place) => Math.max(most, place.row ?? 0), 0),
     columns: draft.places.reduce((most, place) => Math.max(most, place.column ?? 0), 0),
     shotOrder: shotOrderOf(draft),
-    stacks: kept.map((stack) => writeStack(draft, stack, positions[stack.index] ?? null)),
+    stacks: kept.map((stack) => writeStack(draft, stack, draft.positions[stack.index] ?? null)),
     frames: writeFrames(draft, kept),
     seams: draft.seams.map((seam) => ({
       stackId: draft.stacks[seam.a]?.id ?? "",
@@ -68,8 +69,10 @@ function writeStack(draft: SortedDraft, stack: StackDraft, position: ProposedSta
   };
 }
 
-/** Weight of contradicting edges against the agreeing ones; 4 is about one weak edge of doubt. Our own. */
-const DOUBT_WEIGHT = 1.5;
+/** How much heavier a contradicting edge weighs than an agreeing one. Our own. */
+const DOUBT_FACTOR = 1.5;
+/** Squared weight of agreeing edges that leaves an even chance: an edge just above chance. Our own. */
+const EVEN_CHANCE = 4;
 
 function placeReason(draft: SortedDraft, stack: StackDraft): { confidence: number; reason: string } {
   const spot = draft.layout.spots[stack.index];
@@ -90,12 +93,15 @@ function placeReason(draft: SortedDraft, stack: StackDraft): { confidence: numbe
       : "The order shot leaves one place for it";
     return { confidence: spot?.isUnsure ? 0.6 : 0.93, reason: `${doubt}; it shows too little detail to be matched.` };
   }
-  const sum = (edges: readonly { weight: number }[]) => edges.reduce((total, edge) => total + edge.weight, 0);
+  const scale = misfitScale(draft.graph.edges, draft.graph.steps);
+  const sum = (edges: readonly Edge[]) =>
+    edges.reduce((total, edge) => total + edge.weight * trustIn(edge, inSteps(edge, draft.graph.steps), scale), 0);
   const [yes, all] = [sum(agreeing), sum(own)];
+  const against = DOUBT_FACTOR * (all - yes);
   const best = [...agreeing].sort((a, b) => b.weight - a.weight).slice(0, 2);
   const names = best.map((edge) => nameOf(draft, edge.a === stack.index ? edge.b : edge.a));
   return {
-    confidence: yes / (yes + DOUBT_WEIGHT * (all - yes) + 0.2),
+    confidence: Math.min(0.995, yes ** 2 / (yes ** 2 + against ** 2 + EVEN_CHANCE)),
     reason: `Its picture matches ${names.join(" and ")} at the shift expected there.`,
   };
 }

@@ -1,8 +1,8 @@
 import { agreesWithPlaces } from "./find-positions";
 import type { FrameDraft, StackDraft } from "./draft";
 import type { Edge } from "./edges";
-import { misfitScale, trustIn } from "./lattice";
-import { inSteps } from "./lattice-steps";
+import { trustIn } from "./lattice";
+import { inSteps, misfitScale } from "./lattice-steps";
 import { stemOf } from "./file-number";
 import { tellingSpot } from "./frame-sharpness";
 import { shiftFraction } from "./judge-pair";

@@ -1,11 +1,10 @@
-import { isFew, usualSizeOf, type StackDraft } from "./draft";
+import { isFew, stackSizesOf, type StackDraft } from "./draft";
 import { makeEdge, type Edge } from "./edges";
 import { isTextured } from "./judge-pair";
-import { clashWeight, labelStacks, trustIn, type Component, type Label } from "./lattice";
-import { LARGEST_SAME_PLACE } from "./vector";
-import { boxOf } from "./walks";
-import { inSteps, misfitScale, proposeSteps, type Steps } from "./lattice-steps";
+import { labelStacks, type Component, type Label } from "./lattice";
+import { inSteps, proposeSteps, type Steps } from "./lattice-steps";
 import type { PairStore } from "./pair-store";
+import { rateGraph } from "./rate-graph";
 
 /** Up to this many stacks all pairs are registered; beyond, neighbours in time and neighbours foretold. */
 const MOST_STACKS_FOR_ALL_PAIRS = 60;
@@ -67,14 +66,16 @@ function readGraph(stacks: readonly StackDraft[], pairs: readonly IndexPair[], s
   });
   const all = [...edges, ...fixedEdges(stacks)].sort((p, q) => p.a - q.a || p.b - q.b);
   // What few frames show may be none of the scene: the lattice is made by whole stacks.
-  const usualSize = usualSizeOf(stacks);
-  const few = new Set(stacks.filter((stack) => isFew(stack, usualSize)).map((stack) => stack.index));
+  const sizes = stackSizesOf(stacks);
+  const few = new Set(stacks.filter((stack) => isFew(stack, sizes)).map((stack) => stack.index));
   const plain = new Set(stacks.filter((stack) => !isTextured(stack.hub)).map((stack) => stack.index));
   const whole = all.filter((edge) => !few.has(edge.a) && !few.has(edge.b));
-  const graphs = proposeSteps(whole, usualAspect(stacks)).map((steps): GridGraph => {
+  const aspect = usualAspect(stacks);
+  const isMeasured = (a: number, b: number) => store.find(stacks[a]?.hub.id ?? "", stacks[b]?.hub.id ?? "") !== null;
+  const graphs = proposeSteps(whole, aspect).map((steps): GridGraph => {
     return { edges: all, steps, components: labelStacks({ count: stacks.length, plain }, all, steps) };
   });
-  const rated = graphs.map((graph) => ({ graph, rating: rateGraph(graph, few, plain) }));
+  const rated = graphs.map((graph) => ({ graph, rating: rateGraph(graph, { few, plain, aspect, isMeasured }) }));
   const best = rated.reduce((a, b) => (b.rating > a.rating + 1e-9 ? b : a));
   return chooseShifts(best.graph);
 }
@@ -93,54 +94,6 @@ function chooseShifts(graph: GridGraph): GridGraph {
     return best ? { ...edge, x: best.shift.x, y: best.shift.y, weight: best.shift.weight } : edge;
   });
   return { ...graph, edges };
-}
-
-/** Most stacks follow each other by one step; each that does speaks for a lattice like a weak edge. Our own. */
-const SINGLE_STEP_WEIGHT = 4;
-
-/** A place within a piece that no stack has is rarer than a step too fine. Our own. */
-const HOLE_WEIGHT = 2;
-
-/** How well a lattice explains edges, order and places: higher is better. */
-function rateGraph(
-  { edges, steps, components: pieces }: GridGraph,
-  few: ReadonlySet<number>,
-  plain: ReadonlySet<number>,
-): number {
-  const components = pieces.map((piece) => new Map([...piece].filter(([index]) => !few.has(index))));
-  const scale = misfitScale(edges, steps);
-  let rating = 0;
-  const labels = new Map(
-    components.flatMap((component, piece) =>
-      [...component].map(([index, label]) => [index, { ...label, piece }] as const),
-    ),
-  );
-  const samePlace = new Set<string>();
-  for (const edge of edges) {
-    const [a, b] = [labels.get(edge.a), labels.get(edge.b)];
-    if (edge.steps || !a || !b) continue;
-    const isSame = Math.hypot(edge.x, edge.y) < LARGEST_SAME_PLACE;
-    const found = isSame ? { columns: 0, rows: 0, misfit: 0 } : inSteps(edge, steps);
-    if (isSame) samePlace.add(`${edge.a} ${edge.b}`);
-    if (b.column - a.column !== found.columns || b.row - a.row !== found.rows) continue;
-    rating += edge.weight * trustIn(edge, found, scale);
-  }
-  for (const component of components) {
-    const box = boxOf([...component.values()]);
-    const area = box ? (box.bottom - box.top + 1) * (box.right - box.left + 1) : 0;
-    rating -= HOLE_WEIGHT * Math.max(0, area - component.size);
-  }
-  const at = new Map<string, number>();
-  for (const [index, { column, row, piece }] of [...labels].sort(([a], [b]) => a - b)) {
-    const key = `${piece} ${column} ${row}`;
-    const other = at.get(key);
-    if (other !== undefined && !samePlace.has(`${other} ${index}`)) rating -= clashWeight(other, index, plain);
-    at.set(key, index);
-    const before = labels.get(index - 1);
-    if (!before || before.piece !== piece) continue;
-    if (Math.abs(column - before.column) + Math.abs(row - before.row) === 1) rating += SINGLE_STEP_WEIGHT;
-  }
-  return rating;
 }
 
 function usualAspect(stacks: readonly StackDraft[]): number {

@@ -34,6 +34,10 @@ const FAINT_PEAK_RATIO = 1.4;
 const LEAST_FAINT_SHIFT = 0.003;
 const SURE_PEAK_RATIO = 1.25;
 
+/** Plain frames of one tile share faint clouds and shading: 20 and more; of different tiles seldom 9. Our own. */
+const ALIKE_SIGNIFICANCE = 15;
+const UNLIKE_SIGNIFICANCE = 9;
+
 /** Length of a pair's shift as a fraction of the frame's longer side. */
 export function shiftFraction(measure: PairMeasure, frame: SortFrame): number {
   const { widthPx, heightPx } = frame.measurements;
@@ -56,7 +60,8 @@ export function isMatch(measure: PairMeasure, frame: SortFrame): boolean {
 /** Shading and dust match at no shift at all, whatever is in view: a faint match proves something only if it moved. */
 function isFaintMatch(measure: PairMeasure, frame: SortFrame): boolean {
   const shift = shiftFraction(measure, frame);
-  if (shift < LEAST_FAINT_SHIFT || measure.ncc < FAINT_NCC) return false;
+  if (shift < LEAST_FAINT_SHIFT) return false;
+  if (measure.ncc < FAINT_NCC) return false;
   return shift < LARGEST_SHIFT_WITHIN || measure.peakRatio >= FAINT_PEAK_RATIO;
 }
 
@@ -75,4 +80,12 @@ export function judgePair(a: SortFrame, b: SortFrame, measure: PairMeasure): Ver
     if (isClear) return "different";
   }
   return isPlain ? "unknown" : "probably different";
+}
+
+/** What a plain pair's shift proves: enough to be alike, too little to be, or neither. */
+export function leaningOf(measure: PairMeasure, frame: SortFrame): "alike" | "unlike" | "neither" {
+  const significance = significanceOf(measure, frame);
+  const isNear = shiftFraction(measure, frame) < LARGEST_SHIFT_WITHIN;
+  if (isNear && significance >= ALIKE_SIGNIFICANCE) return "alike";
+  return significance < UNLIKE_SIGNIFICANCE ? "unlike" : "neither";
 }

@@ -68,9 +68,52 @@ export function labelStacks(
   const all = new Map(labels.flatMap((component) => [...component]));
   moveBranches(all, tree, stepEdges, { count, plain });
   moveSingles(all, incident);
-  return components
+  const detached = findClashing(components, all, incident, plain);
+  const kept = components.map((members) => members.filter((index) => !detached.has(index)));
+  return [...kept, ...[...detached].map((index) => [index])]
+    .filter((members) => members.length > 0)
     .map((members) => new Map(members.map((index) => [index, all.get(index) ?? { column: 0, row: 0 }])))
     .sort((a, b) => b.size - a.size || Math.min(...a.keys()) - Math.min(...b.keys()));
+}
+
+/**
+ * Stacks that share a place with another without showing the same: of two textured ones the one with less support was
+ * put there by chance, and where it belongs only the order shot can tell.
+ */
+function findClashing(
+  components: readonly (readonly number[])[],
+  labels: ReadonlyMap<number, Label>,
+  incident: readonly (readonly StepEdge[])[],
+  plain: ReadonlySet<number>,
+): Set<number> {
+  const clashing = new Set<number>();
+  const support = (index: number) => {
+    const label = labels.get(index);
+    return (incident[index] ?? []).reduce((sum, edge) => {
+      const other = labels.get(edge.b);
+      const agrees =
+        label && other && other.column - label.column === edge.columns && other.row - label.row === edge.rows;
+      return agrees ? sum + edge.weight : sum;
+    }, 0);
+  };
+  for (const members of components) {
+    const at = new Map<string, number>();
+    for (const index of members) {
+      const label = labels.get(index);
+      if (!label || plain.has(index)) continue;
+      const key = `${label.column} ${label.row}`;
+      const other = at.get(key);
+      const isSame = (incident[index] ?? []).some((edge) => edge.b === other && edge.isSamePlace);
+      if (other === undefined || isSame) {
+        at.set(key, index);
+        continue;
+      }
+      const loser = support(index) < support(other) ? index : other;
+      clashing.add(loser);
+      at.set(key, loser === index ? other : index);
+    }
+  }
+  return clashing;
 }
 
 function isZero({ columns, rows }: { columns: number; rows: number }): boolean {

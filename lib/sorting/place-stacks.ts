@@ -1,11 +1,11 @@
 import type { GridGraph } from "./collect-edges";
-import { isFew, usualSizeOf, type StackDraft } from "./draft";
-import type { Edge } from "./edges";
+import { isFew, stackSizesOf, type StackDraft, type StackSizes } from "./draft";
 import { isTextured } from "./judge-pair";
-import type { Component, Label } from "./lattice";
-import { inSteps } from "./lattice-steps";
+import { trustIn, type Component, type Label } from "./lattice";
+import { inSteps, misfitScale } from "./lattice-steps";
 import { placeByWalk, type WalkPlacement, type WalkStop } from "./place-by-walk";
 import type { SortOptions } from "./types";
+import { LARGEST_SAME_PLACE } from "./vector";
 
 /** Where a stack lies and how we know. Labels have no origin yet. */
 export interface Spot {
@@ -22,13 +22,9 @@ export interface Spot {
 export interface Layout {
   /** By stack index. */
   readonly spots: readonly Spot[];
-  /** Usual number of frames of a stack. */
-  readonly usualSize: number;
   readonly walk: WalkPlacement | null;
 }
 
-/** A stack this far off the lattice, in steps, shows something between two tiles. Our own. */
-const STRAY_MISFIT = 0.3;
 /** Edges with whole stacks that weigh less than this together may be chance. Our own. */
 const LEAST_FEW_WEIGHT = 6;
 /** Cost of leaving an unmatched textured stack of usual size out, relative to one hole. Our own. */
@@ -50,15 +46,15 @@ export function placeStacks(
   bodies: readonly (readonly number[])[],
   options: SortOptions,
 ): Layout {
-  const usualSize = usualSizeOf(stacks);
+  const sizes = stackSizesOf(stacks);
   const main = graph.components[0] ?? new Map<number, Label>();
-  const strays = findStrays(stacks, graph, usualSize);
+  const strays = findStrays(stacks, graph, sizes);
   const labels = new Map([...main].filter(([index]) => !strays.has(index) && (main.size > 1 || stacks.length === 1)));
   const sequences = bodies.map((list) =>
     list.flatMap((index): WalkStop[] => {
       const stack = stacks[index];
       if (!stack || strays.has(index)) return [];
-      return [{ index, label: labels.get(index) ?? null, leaveOutCost: leaveOutCost(stack, graph, usualSize) }];
+      return [{ index, label: labels.get(index) ?? null, leaveOutCost: leaveOutCost(stack, graph, sizes) }];
     }),
   );
   const isComplete = sequences.flat().every((stop) => stop.label);
@@ -74,57 +70,62 @@ export function placeStacks(
     const guess = byOrder.get(index);
     const isUnsure = (walk?.unsure.has(index) ?? true) || (walk?.margin ?? 0) < SURE_MARGIN;
     if (guess) return { ...none, label: guess, basis: "order", isUnsure };
-    const isStray = stacks[index] ? leaveOutCost(stacks[index], graph, usualSize) !== null : false;
+    const isStray = stacks[index] ? leaveOutCost(stacks[index], graph, sizes) !== null : false;
     return { ...none, basis: "none", isStray, isUnsure: true };
   });
-  return { spots, usualSize, walk };
+  return { spots, walk };
 }
 
 /** Few frames that match nothing although they could, or that lie between the tiles. */
-function findStrays(stacks: readonly StackDraft[], graph: GridGraph, usualSize: number): Map<number, boolean> {
+function findStrays(stacks: readonly StackDraft[], graph: GridGraph, sizes: StackSizes): Map<number, boolean> {
   const strays = new Map<number, boolean>();
-  const edges = edgesByStack(stacks.length, graph.edges);
-  const few = new Set(stacks.filter((stack) => isFew(stack, usualSize)).map((stack) => stack.index));
+  const support = supportOf(stacks.length, graph);
+  const trusted = new Set(stacks.filter((stack) => stack.fixed || !isFew(stack, sizes)).map((stack) => stack.index));
+  const isTrusted = ({ index }: StackDraft) => {
+    const own = support[index] ?? [];
+    return own.reduce((sum, { other, weight }) => (trusted.has(other) ? sum + weight : sum), 0) >= LEAST_FEW_WEIGHT;
+  };
+  // What a trusted stack vouches for can vouch for others.
+  for (let before = -1; before < trusted.size;) {
+    before = trusted.size;
+    for (const stack of stacks) if (!trusted.has(stack.index) && isTrusted(stack)) trusted.add(stack.index);
+  }
   for (const stack of stacks) {
-    if (stack.fixed || !few.has(stack.index)) continue;
-    const own = (edges[stack.index] ?? []).filter((edge) => !few.has(edge.a) || !few.has(edge.b));
-    const weight = own.reduce((sum, edge) => sum + edge.weight, 0);
-    if (weight < LEAST_FEW_WEIGHT ? isTextured(stack.hub) : misfitOf(own, graph) > STRAY_MISFIT) {
-      strays.set(stack.index, false);
-    }
+    if (!trusted.has(stack.index) && isTextured(stack.hub)) strays.set(stack.index, false);
   }
   // Several frames of the ground before the feet match each other, and nothing of the scene.
   for (const piece of graph.components.slice(1)) {
     const members = [...piece.keys()].flatMap((index) => stacks[index] ?? []);
-    const isOther = members.every((stack) => !stack.fixed && isFew(stack, usualSize) && isTextured(stack.hub));
+    const isOther = members.every((stack) => !stack.fixed && isFew(stack, sizes) && isTextured(stack.hub));
     if (isOther) for (const stack of members) strays.set(stack.index, false);
   }
   return strays;
 }
 
-export function edgesByStack(count: number, edges: readonly Edge[]): Edge[][] {
-  const lists: Edge[][] = Array.from({ length: count }, () => []);
+/** For each stack the edges that agree with where it was put, counting for less the worse they fit. */
+function supportOf(count: number, { edges, steps, components }: GridGraph): { other: number; weight: number }[][] {
+  const labels = new Map(components.flatMap((component) => [...component]));
+  const scale = misfitScale(edges, steps);
+  const lists: { other: number; weight: number }[][] = Array.from({ length: count }, () => []);
   for (const edge of edges) {
-    lists[edge.a]?.push(edge);
-    lists[edge.b]?.push(edge);
+    const [a, b] = [labels.get(edge.a), labels.get(edge.b)];
+    const isSame = Math.hypot(edge.x, edge.y) < LARGEST_SAME_PLACE;
+    const found = edge.steps ?? (isSame ? { columns: 0, rows: 0 } : inSteps(edge, steps));
+    if (!a || !b || b.column - a.column !== found.columns || b.row - a.row !== found.rows) continue;
+    const weight = edge.weight * (edge.steps || isSame ? 1 : trustIn(edge, inSteps(edge, steps), scale));
+    lists[edge.a]?.push({ other: edge.b, weight });
+    lists[edge.b]?.push({ other: edge.a, weight });
   }
   return lists;
 }
 
-function misfitOf(edges: readonly Edge[], graph: GridGraph): number {
-  const weight = edges.reduce((sum, edge) => sum + edge.weight, 0);
-  return (
-    edges.reduce((sum, edge) => sum + edge.weight * (edge.steps ? 0 : inSteps(edge, graph.steps).misfit), 0) / weight
-  );
-}
-
-function leaveOutCost(stack: StackDraft, graph: GridGraph, usualSize: number): number | null {
+function leaveOutCost(stack: StackDraft, graph: GridGraph, sizes: StackSizes): number | null {
   if (stack.fixed) return null;
   const piece = graph.components.find((component) => component.has(stack.index));
   if ((piece?.size ?? 1) > 1) return null;
-  const few = isFew(stack, usualSize);
+  const few = isFew(stack, sizes);
   if (!isTextured(stack.hub)) return few ? PLAIN_FEW_COST : null;
-  if (usualSize < 3) return SINGLE_FRAME_COST;
+  if (sizes.few === 0) return SINGLE_FRAME_COST;
   return few ? 0.1 : FULL_STACK_COST;
 }
 

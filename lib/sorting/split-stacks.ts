@@ -3,7 +3,7 @@ import type { BodySequence } from "./order-frames";
 import type { PairStore } from "./pair-store";
 import { findPauseLimit, type PauseLimit } from "./pause-limit";
 import { pauseSeconds } from "./pauses";
-import { isTextured, judgePair, shiftFraction, type Verdict } from "./judge-pair";
+import { isTextured, judgePair, leaningOf, shiftFraction, type Verdict } from "./judge-pair";
 import type { SortFrame } from "./types";
 
 export type JoinBasis = "person" | "pictures" | "pictures and time" | "time" | "count" | "nothing";
@@ -40,6 +40,8 @@ const MOST_TIME_ERRORS = 0.03;
 /** Fewer moves seen for sure say too little about how long a move takes. Our own. */
 const LEAST_SURE_MOVES = 3;
 const LONGEST_ODD_RUN = 2;
+/** Share of plain pairs that must match for the others to mean something. Our own. */
+const LEAST_PLAIN_MATCHES = 0.6;
 /** Frames that match better and clearer than this need no turning. Our own: a roll of 1 degree leaves 0.6. */
 const CLEAR_MATCH_NCC = 0.55;
 const CLEAR_MATCH_RATIO = 1.3;
@@ -66,6 +68,7 @@ export async function splitStacks(
     ),
   );
   const links = sequences.map((sequence) => consecutive(sequence.frames).map(([a, b]) => judgeLink(a, b, store)));
+  const doPlainMatch = plainUsuallyMatch(links.flat());
   const limit = options.longestPauseSeconds
     ? { seconds: options.longestPauseSeconds, errorShare: 0 }
     : findLimit(links.flat());
@@ -74,7 +77,7 @@ export async function splitStacks(
   const joins = new Map<string, Join>();
   const runs: SortFrame[][] = [];
   sequences.forEach((sequence) => {
-    cutSequence({ frames: sequence.frames, store, limit, odd, options }, joins, runs);
+    cutSequence({ frames: sequence.frames, store, limit, odd, options, doPlainMatch }, joins, runs);
   });
   return { runs, joins, odd, limit };
 }
@@ -159,6 +162,8 @@ interface CutInput {
   readonly limit: PauseLimit | null;
   readonly odd: ReadonlySet<string>;
   readonly options: SplitOptions;
+  /** In this shoot even plain frames of one tile can be matched. */
+  readonly doPlainMatch: boolean;
 }
 
 function cutSequence(input: CutInput, joins: Map<string, Join>, runs: SortFrame[][]): void {
@@ -190,7 +195,17 @@ function isKnock(before: SortFrame, frame: SortFrame, measure: PairMeasure): boo
   return judgePair(before, frame, measure) === "different" && shiftFraction(measure, before) < LARGEST_KNOCK;
 }
 
-function decide(link: Link, { limit, options }: CutInput): Join {
+/** True where most pairs of plain frames show the same: then those that do not show something else. */
+function plainUsuallyMatch(links: readonly Link[]): boolean {
+  const leanings = links
+    .filter(({ before, after }) => !isTextured(before) && !isTextured(after))
+    .map(({ before, measure }) => leaningOf(measure, before));
+  return leanings.filter((leaning) => leaning === "alike").length >= LEAST_PLAIN_MATCHES * leanings.length;
+}
+
+function decide(given: Link, { limit, options, doPlainMatch }: CutInput): Join {
+  const isUnlike = doPlainMatch && given.verdict === "unknown" && leaningOf(given.measure, given.before) === "unlike";
+  const link: Link = isUnlike ? { ...given, verdict: "probably different" } : given;
   const forced = options.isJoined(link.before, link.after);
   if (forced !== null) return { ...link, isSame: forced, basis: "person" };
   const isShort = link.pauseS === null || limit === null ? null : link.pauseS <= limit.seconds;

@@ -71,9 +71,22 @@ const LEAST_FOLLOWED = 0.8;
  * @returns null where no walk explains four of five steps, or there are fewer than two tiles
  */
 export function findShotOrder(places: readonly (readonly Label[])[]): ShotOrder | null {
+  const best = bestWalk(places);
+  return best && best.steps > 0 && best.followed / best.steps >= LEAST_FOLLOWED ? best.walk : null;
+}
+
+/** How many steps from tile to tile no walk explains; 0 for fewer than two tiles. */
+export function countBreaks(places: readonly Label[]): number {
+  const best = bestWalk([places]);
+  return best ? best.steps - best.followed : 0;
+}
+
+function bestWalk(
+  places: readonly (readonly Label[])[],
+): { readonly walk: ShotOrder; readonly steps: number; readonly followed: number } | null {
   const box = boxOf(places.flat());
   if (!box) return null;
-  let best: { walk: ShotOrder; share: number } | null = null;
+  let best: { walk: ShotOrder; steps: number; followed: number } | null = null;
   for (const walk of WALKS) {
     let steps = 0;
     let followed = 0;
@@ -87,7 +100,7 @@ export function findShotOrder(places: readonly (readonly Label[])[]): ShotOrder 
         else if (step === 2 || step === 3) followed += 0.9;
       });
     }
-    if (steps > 0 && (!best || followed / steps > best.share + 1e-9)) best = { walk, share: followed / steps };
+    if (!best || followed > best.followed + 1e-9) best = { walk, steps, followed };
   }
-  return best && best.share >= LEAST_FOLLOWED ? best.walk : null;
+  return best;
 }

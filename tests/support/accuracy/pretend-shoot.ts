@@ -78,7 +78,7 @@ const START_MS = Date.UTC(2026, 4, 1, 9, 0, 0);
 export function toSortFrame(frame: PretendFrame, index: number): SortFrame {
   const local = frame.seconds === null ? null : START_MS + frame.seconds * 1000;
   const value = Math.exp(frame.sharpness);
-  const patches = Array.from({ length: 192 }, (_, patch) => (frame.isBlank ? 1e-5 : 0.01 * (1 + (patch % 7))) * value);
+  const patches = Array.from({ length: 192 }, () => (frame.isBlank ? 1e-5 : 0.01) * value);
   return {
     id: idOf(frame, index),
     name: frame.name,

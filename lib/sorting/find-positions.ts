@@ -12,7 +12,9 @@ const LARGEST_MISFIT = 0.6;
 /** An edge that lies further off the positions than so many times the usual, and at least so far, is wrong. Our own. */
 const OUTLIER_FACTOR = 6;
 const LEAST_OUTLIER = 0.015;
-const ROUNDS = 3;
+/** The worst go first: they pull the positions off so that right edges seem wrong too. Our own. */
+const WORST_SHARE = 0.5;
+const ROUNDS = 12;
 
 /** Where the stacks lie on the joined picture. */
 export interface Positions {
@@ -67,7 +69,8 @@ function withoutOutliers(edges: readonly Edge[], positions: readonly Vector[]): 
     const [from, to] = [positions[a], positions[b]];
     return from && to ? Math.hypot(to.x - from.x - x, to.y - from.y - y) : Infinity;
   });
-  const limit = Math.max(LEAST_OUTLIER, OUTLIER_FACTOR * median(residuals));
+  const worst = residuals.reduce((most, residual) => Math.max(most, residual), 0);
+  const limit = Math.max(LEAST_OUTLIER, OUTLIER_FACTOR * median(residuals), WORST_SHARE * worst);
   return edges.filter((_, at) => (residuals[at] ?? Infinity) <= limit);
 }
 

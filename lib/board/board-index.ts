@@ -1,4 +1,5 @@
-import type { Board, BoardFrame, BoardQuestion, BoardStack } from "@/lib/board/model";
+import { currentSeams } from "@/lib/board/current-seams";
+import type { Board, BoardFrame, BoardQuestion, BoardSeam, BoardStack } from "@/lib/board/model";
 import { tileName } from "@/lib/board/tile-name";
 
 /** One stack as it is drawn: at its place in the grid, or without one. */
@@ -40,6 +41,8 @@ export interface BoardIndex {
   readonly tileOfStack: ReadonlyMap<string, BoardTile>;
   readonly unplaced: readonly BoardTile[];
   readonly loose: readonly BoardFrame[];
+  /** Between the tiles that are neighbours now. */
+  readonly seams: readonly BoardSeam[];
   /** Frames that an open question is about. */
   readonly askedFrames: ReadonlySet<string>;
 }
@@ -83,12 +86,14 @@ export function indexBoard(board: Board): BoardIndex {
   for (const tile of [...tiles.values(), ...unplaced]) {
     for (const take of tile.takes) tileOfStack.set(take.id, tile);
   }
+  const seams = currentSeams(board);
   return {
     board,
     framesById,
     framesOfStack,
     tiles,
-    holes: findHoles(board, tiles, questionsOf),
+    holes: findHoles({ ...board, seams }, tiles, questionsOf),
+    seams,
     tileOfStack,
     unplaced,
     loose: board.frames.filter((frame) => frame.stackId === null),
@@ -106,7 +111,7 @@ export function countInUse(frames: readonly BoardFrame[]): number {
 }
 
 /** Median measured overlap of the seams to one side; the overlap that the project wants where none was measured. */
-export function typicalOverlap(board: Board, side: "right" | "below"): number {
+export function typicalOverlap(board: Pick<Board, "seams" | "grid">, side: "right" | "below"): number {
   const measured = board.seams.flatMap((seam) => (seam.side === side && seam.overlap !== null ? [seam.overlap] : []));
   return median(measured) ?? board.grid.overlapWanted;
 }

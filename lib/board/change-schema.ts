@@ -1,6 +1,6 @@
 import { z } from "zod";
 import type { Change } from "@/lib/board/changes";
-import { frameSchema, questionSchema, stackSchema } from "@/lib/board/schema";
+import { frameSchema, questionSchema, seamSchema, stackSchema } from "@/lib/board/schema";
 
 const id = z.string();
 const framePatchSchema = frameSchema
@@ -14,7 +14,7 @@ const framePatchSchema = frameSchema
     reason: true,
   })
   .partial();
-const stackPatchSchema = stackSchema.omit({ id: true, position: true, spot: true }).partial();
+const stackPatchSchema = stackSchema.omit({ id: true }).partial();
 const gridSizeSchema = z.object({ rows: z.int(), columns: z.int() });
 
 /** One step as it is sent to pages. */
@@ -31,4 +31,5 @@ export const changeSchema: z.ZodType<Change> = z.discriminatedUnion("on", [
   }),
   z.object({ on: z.literal("grid"), before: gridSizeSchema, after: gridSizeSchema }),
   z.object({ on: z.literal("question"), question: questionSchema, isOpen: z.boolean() }),
+  z.object({ on: z.literal("seams"), before: z.array(seamSchema), after: z.array(seamSchema) }),
 ]);

@@ -1,16 +1,17 @@
-import type { Board, BoardFrame, BoardQuestion, BoardStack } from "@/lib/board/model";
+import type { Board, BoardFrame, BoardQuestion, BoardSeam, BoardStack } from "@/lib/board/model";
 
 /** What of a frame a command may change. */
 export type FramePatch = Partial<
   Pick<BoardFrame, "stackId" | "setAside" | "placedBy" | "relativeSharpness" | "shift" | "confidence" | "reason">
 >;
 
-/** What of a stack a command may change. */
-export type StackPatch = Partial<Omit<BoardStack, "id" | "position" | "spot">>;
+/** What of a stack a command may change, or a measurement (position, spot). */
+export type StackPatch = Partial<Omit<BoardStack, "id">>;
 
 /**
  * One step from a board to the next, with what was there before: so it can be checked, recorded and taken back.
  * `line` shifts every stack at or beyond the line by one; it carries no ids because it holds for all stacks alike.
+ * `seams` exchanges what was measured between pairs of stacks: those of `before` go, those of `after` come.
  */
 export type Change =
   | { readonly on: "frame"; readonly id: string; readonly before: FramePatch; readonly after: FramePatch }
@@ -19,7 +20,8 @@ export type Change =
   | { readonly on: "no-stack"; readonly stack: BoardStack }
   | { readonly on: "line"; readonly axis: "row" | "column"; readonly at: number; readonly by: 1 | -1 }
   | { readonly on: "grid"; readonly before: GridSize; readonly after: GridSize }
-  | { readonly on: "question"; readonly question: BoardQuestion; readonly isOpen: boolean };
+  | { readonly on: "question"; readonly question: BoardQuestion; readonly isOpen: boolean }
+  | { readonly on: "seams"; readonly before: readonly BoardSeam[]; readonly after: readonly BoardSeam[] };
 
 export interface GridSize {
   readonly rows: number;
@@ -59,6 +61,7 @@ export function applyChanges(board: Board, changes: readonly Change[]): Board {
     frames: new Map(board.frames.map((frame) => [frame.id, frame])),
     stacks: new Map(board.stacks.map((stack) => [stack.id, stack])),
     questions: new Map(board.questions.map((question) => [question.id, question])),
+    seams: new Map(board.seams.map((seam) => [seamKey(seam), seam])),
     grid: board.grid,
   };
   for (const change of changes) applyChange(draft, change);
@@ -70,6 +73,7 @@ export function applyChanges(board: Board, changes: readonly Change[]): Board {
     // By id: the same board whatever way led to it.
     stacks: [...draft.stacks.values()].sort((a, b) => (a.id < b.id ? -1 : 1)),
     questions: [...draft.questions.values()].sort((a, b) => b.severity - a.severity || (a.key < b.key ? -1 : 1)),
+    seams: [...draft.seams.entries()].sort(([a], [b]) => (a < b ? -1 : 1)).map(([, seam]) => seam),
   };
 }
 
@@ -82,6 +86,7 @@ interface Draft {
   readonly frames: Map<string, BoardFrame>;
   readonly stacks: Map<string, BoardStack>;
   readonly questions: Map<string, BoardQuestion>;
+  readonly seams: Map<string, BoardSeam>;
   grid: Board["grid"];
 }
 
@@ -131,7 +136,16 @@ function applyChange(draft: Draft, change: Change): void {
       }
       if (change.isOpen) draft.questions.set(change.question.id, change.question);
       else draft.questions.delete(change.question.id);
+      return;
+    case "seams":
+      for (const seam of change.before) draft.seams.delete(seamKey(seam));
+      for (const seam of change.after) draft.seams.set(seamKey(seam), seam);
   }
+}
+
+/** Two stacks have one seam each way round at the most. */
+function seamKey({ stackId, neighbourId }: BoardSeam): string {
+  return `${stackId} ${neighbourId}`;
 }
 
 function shiftLine(draft: Draft, { axis, at, by }: Extract<Change, { on: "line" }>): void {
@@ -181,6 +195,8 @@ function invertChange(change: Change): Change {
     case "line":
       return { ...change, by: change.by === 1 ? -1 : 1 };
     case "grid":
+      return { ...change, before: change.after, after: change.before };
+    case "seams":
       return { ...change, before: change.after, after: change.before };
     case "question":
       return { ...change, isOpen: !change.isOpen };

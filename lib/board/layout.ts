@@ -95,7 +95,7 @@ export function tileSteps(index: BoardIndex): TileSteps {
   const heightPx = median(references.map((frame) => frame.heightPx)) ?? 2;
   const step = (side: "right" | "below") =>
     median(
-      index.board.seams.flatMap((seam) => {
+      index.seams.flatMap((seam) => {
         const from = index.tileOfStack.get(seam.stackId)?.stack.position;
         const to = index.tileOfStack.get(seam.neighbourId)?.stack.position;
         if (seam.side !== side || !from || !to) return [];

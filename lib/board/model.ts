@@ -78,10 +78,15 @@ export interface BoardFrame {
   readonly placedBy: "computation" | "person";
 }
 
+/**
+ * What was measured between two stacks when they lay beside each other. Moved since, they may not: `currentSeams` gives
+ * the seams that count now.
+ */
 export interface BoardSeam {
   readonly stackId: string;
   readonly neighbourId: string;
   readonly side: "right" | "below";
+  /** Fraction of the tile's side; null: could not be measured. */
   readonly overlap: number | null;
 }
 

@@ -17,7 +17,7 @@ export interface OpenPoint {
 export function openPoints(index: BoardIndex): OpenPoint[] {
   const { board, holes, loose, unplaced } = index;
   const few = [...index.tiles.values()].filter((tile) => tile.isFew);
-  const small = board.seams.filter((seam) => seam.overlap !== null && seam.overlap < board.grid.overlapWanted);
+  const small = index.seams.filter((seam) => seam.overlap !== null && seam.overlap < board.grid.overlapWanted);
   const points: (OpenPoint | null)[] = [
     point(holes.size, {
       kind: "holes",

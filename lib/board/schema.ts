@@ -105,6 +105,13 @@ export const questionSchema = z.object({
   severity: z.number(),
 });
 
+export const seamSchema = z.object({
+  stackId: z.string(),
+  neighbourId: z.string(),
+  side: z.enum(["right", "below"]),
+  overlap: z.number().nullable(),
+});
+
 /** `GET /api/projects/{id}/board`. */
 export const boardSchema: z.ZodType<Board> = z.object({
   projectId: z.string(),
@@ -120,14 +127,7 @@ export const boardSchema: z.ZodType<Board> = z.object({
   }),
   stacks: z.array(stackSchema),
   frames: z.array(frameSchema),
-  seams: z.array(
-    z.object({
-      stackId: z.string(),
-      neighbourId: z.string(),
-      side: z.enum(["right", "below"]),
-      overlap: z.number().nullable(),
-    }),
-  ),
+  seams: z.array(seamSchema),
   questions: z.array(questionSchema),
   unreadable: z.array(
     z.object({

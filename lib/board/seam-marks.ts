@@ -16,7 +16,7 @@ export interface SeamMark {
 /** The marks by the row they are drawn in: the row of the left tile, or of the lower one. Only small ones unless all are asked for. */
 export function seamMarksByRow(index: BoardIndex, isAll: boolean): ReadonlyMap<number, readonly SeamMark[]> {
   const byRow = new Map<number, SeamMark[]>();
-  for (const { stackId, neighbourId, side, overlap } of index.board.seams) {
+  for (const { stackId, neighbourId, side, overlap } of index.seams) {
     const tile = index.tileOfStack.get(stackId);
     const neighbour = index.tileOfStack.get(neighbourId);
     if (!tile || !neighbour || tile.row === null || tile.column === null) continue;

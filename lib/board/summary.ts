@@ -10,7 +10,7 @@ const BRIGHTNESS_TO_EV = 2.2;
 export function boardStatus(index: BoardIndex): string[] {
   const { board, tiles, holes, loose, unplaced } = index;
   const setAside = board.frames.filter(isSetAside).length;
-  const overlaps = board.seams.flatMap((seam) => (seam.overlap === null ? [] : [seam.overlap]));
+  const overlaps = index.seams.flatMap((seam) => (seam.overlap === null ? [] : [seam.overlap]));
   const sizes = [...tiles.values()].map((tile) => tile.inUse);
   return [
     `${tiles.size} of ${countOf(tiles.size + holes.size, "tile")}`,
@@ -57,7 +57,7 @@ export function brightnessSpread(frames: readonly BoardFrame[]): number | null {
 /** The least overlap of a tile's measured seams, either side; null: none measured. */
 export function leastOverlaps(index: BoardIndex): ReadonlyMap<string, number> {
   const least = new Map<string, number>();
-  for (const { stackId, neighbourId, overlap } of index.board.seams) {
+  for (const { stackId, neighbourId, overlap } of index.seams) {
     if (overlap === null) continue;
     for (const id of [stackId, neighbourId]) {
       const name = index.tileOfStack.get(id)?.name;

@@ -1,3 +1,4 @@
+import { currentSeams } from "@/lib/board/current-seams";
 import type { Board, BoardFrame, BoardStack } from "@/lib/board/model";
 import { tileName } from "@/lib/board/tile-name";
 import { expectedNoise } from "@/lib/board/expected-noise";
@@ -116,7 +117,7 @@ function overlapsOf(board: Board): Map<string, ManifestStack["overlap"]> {
       [side]: value === null ? null : round(value, SHARE_DIGITS),
     });
   };
-  for (const seam of board.seams) {
+  for (const seam of currentSeams(board)) {
     set(seam.stackId, seam.side, seam.overlap);
     set(seam.neighbourId, seam.side === "right" ? "left" : "above", seam.overlap);
   }

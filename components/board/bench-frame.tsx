@@ -38,7 +38,7 @@ export function BenchFrame(props: BenchFrameProps) {
     </span>
   );
   return (
-    <li style={{ width: size.widthPx }} className="text-sm">
+    <li data-frame={frame.id} style={{ width: size.widthPx }} className="text-sm">
       {onCompare ? (
         <button
           type="button"

@@ -22,12 +22,20 @@ export function combBars(frames: readonly BoardFrame[]): CombBar[] {
     relativeSharpness !== null && setAside === null ? [relativeSharpness] : [],
   );
   const best = Math.max(0, ...known);
-  const limit = (median(known) ?? 0) * Math.exp(SOFT_LIMIT);
+  const limit = softLimit(frames);
   return frames.map(({ id, relativeSharpness, setAside }) => ({
     frameId: id,
     isSetAside: setAside !== null,
     height: relativeSharpness === null ? null : barHeight(relativeSharpness, limit, best),
   }));
+}
+
+/** Relative sharpness under which a frame of this stack is soft: the median in use, less the project's limit. */
+export function softLimit(frames: readonly BoardFrame[]): number {
+  const known = frames.flatMap(({ relativeSharpness, setAside }) =>
+    relativeSharpness !== null && setAside === null ? [relativeSharpness] : [],
+  );
+  return (median(known) ?? 0) * Math.exp(SOFT_LIMIT);
 }
 
 function barHeight(value: number, limit: number, best: number): number {

@@ -22,3 +22,14 @@ export function rowLetters(row: number): string {
   }
   return letters;
 }
+
+/**
+ * The place that a tile's name says: "a4" and "A4" are row 1, column 4.
+ * @returns null where it is no tile's name
+ */
+export function placeOfName(name: string): { readonly row: number; readonly column: number } | null {
+  const [, letters, digits] = /^([A-Za-z]{1,3})([1-9]\d{0,3})$/.exec(name.trim()) ?? [];
+  if (letters === undefined || digits === undefined) return null;
+  const row = [...letters.toUpperCase()].reduce((sum, letter) => sum * LETTERS + letter.charCodeAt(0) - 64, 0);
+  return { row, column: Number(digits) };
+}

@@ -1,6 +1,6 @@
 import "server-only";
 import { and, asc, desc, eq, isNotNull, isNull } from "drizzle-orm";
-import { database } from "@/db/client";
+import { database, type Database, type Transaction } from "@/db/client";
 import { questions, seams } from "@/db/schema/board";
 import { files, frames, stacks } from "@/db/schema/frames";
 import { projects } from "@/db/schema/projects";
@@ -22,14 +22,41 @@ export async function getRevision(access: ProjectAccess): Promise<number> {
 
 /** The project's board at one revision: one batch, which is one transaction. */
 export async function getBoard({ projectId }: ProjectAccess): Promise<Board> {
-  const [[project], stackRows, frameRows, fileRows, seamRows, questionRows] = await database().batch([
-    selectProject(projectId),
-    selectStacks(projectId),
-    selectFrames(projectId),
-    selectFiles(projectId),
-    selectSeams(projectId),
-    selectQuestions(projectId),
+  const db = database();
+  const [project, stackRows, frameRows, fileRows, seamRows, questionRows] = await db.batch([
+    selectProject(db, projectId),
+    selectStacks(db, projectId),
+    selectFrames(db, projectId),
+    selectFiles(db, projectId),
+    selectSeams(db, projectId),
+    selectQuestions(db, projectId),
   ]);
+  return toBoard(projectId, { project, stackRows, frameRows, fileRows, seamRows, questionRows });
+}
+
+/** The board as a transaction sees it that is going to change it. */
+export async function getBoardWithin(tx: Transaction, projectId: ProjectId): Promise<Board> {
+  return toBoard(projectId, {
+    project: await selectProject(tx, projectId),
+    stackRows: await selectStacks(tx, projectId),
+    frameRows: await selectFrames(tx, projectId),
+    fileRows: await selectFiles(tx, projectId),
+    seamRows: await selectSeams(tx, projectId),
+    questionRows: await selectQuestions(tx, projectId),
+  });
+}
+
+interface BoardRows {
+  readonly project: Awaited<ReturnType<typeof selectProject>>;
+  readonly stackRows: Awaited<ReturnType<typeof selectStacks>>;
+  readonly frameRows: readonly FrameRow[];
+  readonly fileRows: readonly FileRow[];
+  readonly seamRows: Awaited<ReturnType<typeof selectSeams>>;
+  readonly questionRows: Awaited<ReturnType<typeof selectQuestions>>;
+}
+
+function toBoard(projectId: ProjectId, rows: BoardRows): Board {
+  const [project] = rows.project;
   if (!project) throw gone();
   const { framesLeast, framesMost, name, revision, ...grid } = project;
   return {
@@ -37,23 +64,25 @@ export async function getBoard({ projectId }: ProjectAccess): Promise<Board> {
     projectName: name,
     revision,
     grid: { ...grid, framesPerTile: { least: framesLeast, most: framesMost } },
-    stacks: stackRows.map(({ positionXPx, positionYPx, spotX, spotY, ...stack }) => ({
+    stacks: rows.stackRows.map(({ positionXPx, positionYPx, spotX, spotY, ...stack }) => ({
       ...stack,
       position: point(positionXPx, positionYPx),
       spot: { x: spotX, y: spotY },
     })),
-    frames: toFrames(frameRows, fileRows),
-    seams: seamRows,
-    questions: questionRows,
-    unreadable: toUnreadable(fileRows),
-    duplicates: toDuplicates(fileRows),
+    frames: toFrames(rows.frameRows, rows.fileRows),
+    seams: rows.seamRows,
+    questions: rows.questionRows,
+    unreadable: toUnreadable(rows.fileRows),
+    duplicates: toDuplicates(rows.fileRows),
   };
 }
 
+/** The database itself, or a transaction of it. */
+type Source = Pick<Database, "select">;
 type ProjectId = ProjectAccess["projectId"];
 
-function selectProject(projectId: ProjectId) {
-  return database()
+function selectProject(db: Source, projectId: ProjectId) {
+  return db
     .select({
       name: projects.name,
       revision: projects.revision,
@@ -69,8 +98,8 @@ function selectProject(projectId: ProjectId) {
     .where(eq(projects.id, projectId));
 }
 
-function selectStacks(projectId: ProjectId) {
-  return database()
+function selectStacks(db: Source, projectId: ProjectId) {
+  return db
     .select({
       id: stacks.id,
       row: stacks.row,
@@ -94,8 +123,8 @@ function selectStacks(projectId: ProjectId) {
 }
 
 /** Frames that a sorting has seen; what came in since waits for the next one. */
-function selectFrames(projectId: ProjectId) {
-  return database()
+function selectFrames(db: Source, projectId: ProjectId) {
+  return db
     .select({
       id: frames.id,
       metadata: frames.metadata,
@@ -117,8 +146,8 @@ function selectFrames(projectId: ProjectId) {
 }
 
 /** The measured file of a frame before its raw file. */
-function selectFiles(projectId: ProjectId) {
-  return database()
+function selectFiles(db: Source, projectId: ProjectId) {
+  return db
     .select({
       id: files.id,
       frameId: files.frameId,
@@ -137,16 +166,16 @@ function selectFiles(projectId: ProjectId) {
     .orderBy(asc(files.isRaw), asc(files.folder), asc(files.name), asc(files.id));
 }
 
-function selectSeams(projectId: ProjectId) {
-  return database()
+function selectSeams(db: Source, projectId: ProjectId) {
+  return db
     .select({ stackId: seams.stackId, neighbourId: seams.neighbourId, side: seams.side, overlap: seams.overlap })
     .from(seams)
     .where(eq(seams.projectId, projectId))
     .orderBy(asc(seams.stackId), asc(seams.neighbourId));
 }
 
-function selectQuestions(projectId: ProjectId) {
-  return database()
+function selectQuestions(db: Source, projectId: ProjectId) {
+  return db
     .select({
       id: questions.id,
       key: questions.key,

@@ -70,6 +70,15 @@ export const GATE_CALLS: Readonly<Record<string, readonly GateCall[]>> = {
     },
   ],
   "api/projects/[projectId]/board/route.ts": look(ofProject("/board")),
+  "api/projects/[projectId]/commands/route.ts": [
+    {
+      method: "POST",
+      audience: "edit",
+      status: 200,
+      ...ofProject("/commands"),
+      init: () => json("POST", { id: crypto.randomUUID(), revision: 0, type: "add-line", axis: "row", at: 1 }),
+    },
+  ],
   "api/projects/[projectId]/events/route.ts": look(ofProject("/events")),
   "api/projects/[projectId]/files/route.ts": look(ofProject("/files")),
   "api/projects/[projectId]/progress/route.ts": look(ofProject("/progress")),

@@ -1,0 +1,126 @@
+import "server-only";
+import { and, asc, desc, eq, gt, isNotNull, or, sql } from "drizzle-orm";
+import type { Database, Transaction } from "@/db/client";
+import { users } from "@/db/schema/accounts";
+import { changes } from "@/db/schema/board";
+import type { ProjectAccess } from "@/lib/auth/gate";
+import { allows } from "@/lib/auth/roles";
+import { applyChanges, ChangeConflict, invertChanges, type Change } from "@/lib/board/changes";
+import type { CommandOf } from "@/lib/board/command-schema";
+import { diffBoards } from "@/lib/board/diff-boards";
+import type { Board } from "@/lib/board/model";
+import { describeUndo } from "@/lib/board/sentence";
+import { undoneSteps } from "@/lib/board/standing";
+import { countOf } from "@/lib/board/words";
+import { AppError } from "@/lib/errors/app-error";
+import type { ProjectId } from "@/lib/ids";
+
+/** What a command comes to before it is stored. */
+export interface Plan {
+  readonly steps: readonly Change[];
+  readonly sentence: string;
+  /** The step that it takes back. */
+  readonly undoes: string | null;
+  /** Everything after this revision is what it takes back; only what came later can be in its way. */
+  readonly afterRevision: number | null;
+  /** Questions that go with the sorting that asked them. */
+  readonly withdrawn: ReadonlySet<string>;
+}
+
+const NONE: ReadonlySet<string> = new Set();
+
+/**
+ * Takes back one step of the person's own, or takes back their taking it back.
+ * @throws AppError not_found, forbidden; ChangeConflict where it has been taken back, or where a later step is in the way
+ */
+export async function planUndo(
+  tx: Transaction,
+  access: ProjectAccess,
+  { commandId }: CommandOf<"undo">,
+): Promise<Plan> {
+  const [step] = await tx
+    .select({
+      id: changes.id,
+      userId: changes.userId,
+      name: users.name,
+      revision: changes.revision,
+      steps: changes.steps,
+      sentence: changes.sentence,
+    })
+    .from(changes)
+    .leftJoin(users, eq(users.id, changes.userId))
+    .where(and(eq(changes.projectId, access.projectId), eq(changes.id, commandId)));
+  if (!step) throw new AppError("not_found", "There is no such step in this project.");
+  if (step.userId !== access.userId) throw notYours(step.name);
+  const undoing = await listUndoing(tx, access.projectId);
+  const isUndone = undoneSteps([...undoing, { ...step, undoes: null, undoesAfter: null }]).has(step.id);
+  if (isUndone || undoing.some(({ undoes }) => undoes === step.id)) {
+    throw new ChangeConflict("This step has been taken back already.", step.id);
+  }
+  requireDivisionRight(access, step.steps);
+  return {
+    steps: invertChanges(step.steps),
+    sentence: describeUndo(step.sentence),
+    undoes: step.id,
+    afterRevision: step.revision,
+    withdrawn: NONE,
+  };
+}
+
+/**
+ * Takes back everything after a revision, whoever did it, as one step.
+ * @throws AppError forbidden; ChangeConflict where there is nothing, or a step that was not recorded in full
+ */
+export async function planUndoBackTo(
+  tx: Transaction,
+  access: ProjectAccess,
+  board: Board,
+  { toRevision }: CommandOf<"undo-back-to">,
+): Promise<Plan> {
+  const rows = await tx
+    .select({ type: changes.type, steps: changes.steps, sentence: changes.sentence })
+    .from(changes)
+    .where(and(eq(changes.projectId, access.projectId), gt(changes.revision, toRevision)))
+    .orderBy(desc(changes.revision));
+  if (rows.length === 0) throw new ChangeConflict("Nothing has been done since.", "grid");
+  if (rows.some(({ sentence }) => sentence === "")) {
+    const detail = "A sorting since then was recorded without its steps, so it cannot be taken back.";
+    throw new ChangeConflict(`${detail} Choose a later step.`, "grid");
+  }
+  const taken = rows.flatMap(({ steps }) => invertChanges(steps));
+  requireDivisionRight(access, taken);
+  return {
+    steps: diffBoards(board, applyChanges(board, taken)),
+    sentence: `took back ${countOf(rows.length, "step")}, back to step ${toRevision}`,
+    undoes: null,
+    afterRevision: null,
+    withdrawn: new Set(rows.filter(({ type }) => type === "sort").flatMap(({ steps }) => steps.flatMap(askedBy))),
+  };
+}
+
+function askedBy(change: Change): string[] {
+  return change.on === "question" && change.isOpen ? [change.question.id] : [];
+}
+
+/** The steps of a project that take others back, oldest first. */
+export async function listUndoing(db: Pick<Database, "select">, projectId: ProjectId) {
+  const undoesAfter = sql<number | null>`json_extract(${changes.payload}, '$.toRevision')`;
+  return db
+    .select({ id: changes.id, revision: changes.revision, undoes: changes.undoes, undoesAfter })
+    .from(changes)
+    .where(and(eq(changes.projectId, projectId), or(isNotNull(changes.undoes), eq(changes.type, "undo-back-to"))))
+    .orderBy(asc(changes.revision));
+}
+
+function notYours(name: string | null): AppError {
+  const whose = name === null ? "This step was not made by you." : `This step is ${name}'s, not yours.`;
+  return new AppError("forbidden", `${whose} The change record can go back to before it, as a new step.`);
+}
+
+/** Who merges what is the lead's to say, also where saying it is taken back. */
+function requireDivisionRight(access: ProjectAccess, steps: readonly Change[]): void {
+  const dividing = steps.some((step) => step.on === "stack" && "shareUserId" in step.after);
+  if (dividing && !allows(access.role, "manage")) {
+    throw new AppError("forbidden", "This changes who merges what. Only a lead of the project may do this.");
+  }
+}

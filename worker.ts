@@ -9,6 +9,7 @@ import { createAnalyseFileHandler } from "@/lib/jobs/handlers/analyse-file";
 import { createSortProjectHandler } from "@/lib/jobs/handlers/sort-project";
 import { forgetWorkers } from "@/lib/jobs/queue";
 import { runJobs } from "@/lib/jobs/runner";
+import { prunePresences } from "@/lib/presence/writes";
 import { sweepRemovals } from "@/lib/projects/writes";
 import { sortFrames } from "@/lib/sorting/sort-frames";
 import { prepareStorage } from "@/lib/storage/paths";
@@ -28,6 +29,7 @@ async function keepUp(signal: AbortSignal): Promise<void> {
       if (finished > 0) console.log(`recorded ${finished} complete uploads that a stopped process had left`);
       await sweepRemovals(Date.now());
       await pruneEvents(Date.now());
+      await prunePresences(Date.now());
       await forgetWorkers(Date.now() - WORKER_DEAD_MS);
     } catch (error) {
       console.error("upkeep failed; it is tried again in a minute", error);

@@ -2,6 +2,7 @@ import "server-only";
 import { and, eq, lte, ne } from "drizzle-orm";
 import { writeTransaction, type Transaction } from "@/db/client";
 import { sessions } from "@/db/schema/accounts";
+import { leaveBoards } from "@/lib/presence/writes";
 import { newId, sessionIdSchema, type SessionId, type UserId } from "@/lib/ids";
 
 /** NIST SP 800-63B (from memory): sign in again after 30 days at the lowest level of assurance. */
@@ -27,13 +28,23 @@ export async function createSession(userId: UserId, device: string): Promise<Ses
 }
 
 export async function removeSession(id: SessionId): Promise<void> {
-  await writeTransaction((tx) => tx.delete(sessions).where(eq(sessions.id, id)));
+  await writeTransaction(async (tx) => {
+    await leaveBoards(tx, [id], Date.now());
+    await tx.delete(sessions).where(eq(sessions.id, id));
+  });
 }
 
 /** Ends every sign-in of an account, but for one if given. */
 export async function removeSessionsOf(tx: Transaction, userId: UserId, except?: SessionId): Promise<void> {
   const others = except === undefined ? undefined : ne(sessions.id, except);
-  await tx.delete(sessions).where(and(eq(sessions.userId, userId), others));
+  const ending = and(eq(sessions.userId, userId), others);
+  const rows = await tx.select({ id: sessions.id }).from(sessions).where(ending);
+  await leaveBoards(
+    tx,
+    rows.map(({ id }) => id),
+    Date.now(),
+  );
+  await tx.delete(sessions).where(ending);
 }
 
 export async function touchSession(id: SessionId, nowMs: number): Promise<void> {

@@ -136,3 +136,21 @@ export async function getFramePicture(access: ProjectAccess, frameId: FrameId): 
   const { fileId, uploadId, sha256, metadata } = row;
   return { fileId, uploadId, sha256, orientation: metadata.orientation, widthPx, heightPx };
 }
+
+/** A stored original, whatever became of it: unreadable ones and duplicates are kept too. */
+export interface OriginalFile {
+  readonly uploadId: UploadId;
+  readonly name: string;
+  readonly sha256: string | null;
+  readonly mediaType: string | null;
+}
+
+/** @throws AppError not_found where the project has no such file */
+export async function getOriginalFile(access: ProjectAccess, fileId: FileId): Promise<OriginalFile> {
+  const [file] = await database()
+    .select({ uploadId: files.uploadId, name: files.name, sha256: files.sha256, mediaType: files.mediaType })
+    .from(files)
+    .where(and(eq(files.id, fileId), eq(files.projectId, access.projectId)));
+  if (!file) throw new AppError("not_found", "There is no such file in this project.");
+  return file;
+}

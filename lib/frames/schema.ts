@@ -71,3 +71,4 @@ export type CropQuery = z.infer<typeof cropQuerySchema>;
 
 export const projectParamsSchema = z.object({ projectId: projectIdSchema });
 export const frameParamsSchema = z.object({ projectId: projectIdSchema, frameId: frameIdSchema });
+export const fileParamsSchema = z.object({ projectId: projectIdSchema, fileId: fileIdSchema });

@@ -13,3 +13,9 @@ test("what file systems or the header would trip over is replaced, and no name i
   expect(attachment("it's (1)*", ".csv")).toContain("filename*=UTF-8''it%27s%20%281%29_.csv");
   expect(attachment(" ", ".csv")).toContain('filename="project.csv"');
 });
+
+test("percent signs are only in the encoded name, and half a character is replaced", () => {
+  // RFC 6266, appendix D: avoid "%" followed by two hex digits in the plain parameter, browsers decode it.
+  expect(attachment("50%25.jpg", "")).toBe(`attachment; filename="50_25.jpg"; filename*=UTF-8''50%2525.jpg`);
+  expect(attachment("a\ud800.jpg", "")).toContain("filename*=UTF-8''a_.jpg");
+});

@@ -29,6 +29,10 @@ const ofFrame = (rest: string) => ({
   params: ({ projectId, frameId }: Target) => ({ projectId, frameId }),
   path: ({ projectId, frameId }: Target) => `/api/projects/${projectId}/frames/${frameId}/${rest}`,
 });
+const ofFile = (rest: string) => ({
+  params: ({ projectId, fileId }: Target) => ({ projectId, fileId }),
+  path: ({ projectId, fileId }: Target) => `/api/projects/${projectId}/files/${fileId}/${rest}`,
+});
 const ofUpload = {
   params: ({ uploadId }: Target) => ({ path: [uploadId] }),
   path: ({ uploadId }: Target) => `/api/uploads/${uploadId}`,
@@ -81,6 +85,20 @@ export const GATE_CALLS: Readonly<Record<string, readonly GateCall[]>> = {
   ],
   "api/projects/[projectId]/events/route.ts": look(ofProject("/events")),
   "api/projects/[projectId]/files/route.ts": look(ofProject("/files")),
+  "api/projects/[projectId]/files/[fileId]/original/route.ts": [
+    { method: "GET", audience: "edit", status: 200, ...ofFile("original") },
+    { method: "HEAD", audience: "edit", status: 200, ...ofFile("original"), init: () => ({ method: "HEAD" }) },
+  ],
+  "api/projects/[projectId]/presence/route.ts": [
+    ...look(ofProject("/presence")),
+    {
+      method: "POST",
+      audience: "view",
+      status: 200,
+      ...ofProject("/presence"),
+      init: () => json("POST", { tile: "A1" }),
+    },
+  ],
   "api/projects/[projectId]/progress/route.ts": look(ofProject("/progress")),
   "api/projects/[projectId]/manifest/route.ts": look(ofProject("/manifest")),
   "api/projects/[projectId]/manifest.csv/route.ts": look(ofProject("/manifest.csv")),

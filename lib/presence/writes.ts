@@ -1,0 +1,77 @@
+import "server-only";
+import { and, eq, inArray, lte } from "drizzle-orm";
+import { database, type Transaction, writeTransaction } from "@/db/client";
+import { sessions } from "@/db/schema/accounts";
+import { presences } from "@/db/schema/board";
+import type { ProjectAccess, SignedInUser } from "@/lib/auth/gate";
+import { AppError } from "@/lib/errors/app-error";
+import { publish } from "@/lib/events/publish";
+import type { ProjectId, SessionId } from "@/lib/ids";
+import { presentPeople, selectPresences, SILENT_MS } from "@/lib/presence/reads";
+
+/**
+ * Notes that somebody has the board open, and on which tile. Others hear of it only where something changed: somebody
+ * came, went, or is on another tile.
+ * @throws AppError unauthenticated where the session ended meanwhile
+ */
+export async function notePresence(
+  { projectId }: ProjectAccess,
+  user: Pick<SignedInUser, "id" | "sessionId">,
+  tile: string | null,
+  nowMs: number,
+): Promise<void> {
+  await writeTransaction((tx) =>
+    tellingOfChanges(tx, projectId, nowMs, async () => {
+      const [session] = await tx.select({ id: sessions.id }).from(sessions).where(eq(sessions.id, user.sessionId));
+      if (!session) throw new AppError("unauthenticated", "Sign in first.");
+      await tx
+        .insert(presences)
+        .values({ projectId, sessionId: user.sessionId, userId: user.id, tile, seenAtMs: nowMs })
+        .onConflictDoUpdate({
+          target: [presences.projectId, presences.sessionId],
+          set: { tile, seenAtMs: nowMs },
+        });
+    }),
+  );
+}
+
+/** Clears whoever has gone without a word, and tells the others. For the worker, every minute. */
+export async function prunePresences(nowMs: number): Promise<void> {
+  const rows = await database()
+    .selectDistinct({ projectId: presences.projectId })
+    .from(presences)
+    .where(isSilent(nowMs));
+  for (const { projectId } of rows) {
+    await writeTransaction((tx) => tellingOfChanges(tx, projectId, nowMs, () => Promise.resolve()));
+  }
+}
+
+/** Takes sessions that end off every board that they had open. */
+export async function leaveBoards(tx: Transaction, sessionIds: readonly SessionId[], nowMs: number): Promise<void> {
+  if (sessionIds.length === 0) return;
+  const left = await tx
+    .delete(presences)
+    .where(inArray(presences.sessionId, [...sessionIds]))
+    .returning({ projectId: presences.projectId });
+  for (const projectId of new Set(left.map((row) => row.projectId))) {
+    await publish(tx, projectId, { type: "people.moved" }, nowMs);
+  }
+}
+
+async function tellingOfChanges(
+  tx: Transaction,
+  projectId: ProjectId,
+  nowMs: number,
+  change: () => Promise<void>,
+): Promise<void> {
+  const before = presentPeople(await selectPresences(tx, projectId));
+  await tx.delete(presences).where(and(eq(presences.projectId, projectId), isSilent(nowMs)));
+  await change();
+  const after = presentPeople(await selectPresences(tx, projectId));
+  if (JSON.stringify(before) === JSON.stringify(after)) return;
+  await publish(tx, projectId, { type: "people.moved" }, nowMs);
+}
+
+function isSilent(nowMs: number) {
+  return lte(presences.seenAtMs, nowMs - SILENT_MS);
+}

@@ -1,16 +1,14 @@
 import { addMember, makePerson, makeProject, type Person, signInAs } from "../support/people";
 import { eq } from "drizzle-orm";
 import { beforeEach, describe, expect, test } from "vitest";
-import { GET as getBoardRoute } from "@/app/api/projects/[projectId]/board/route";
 import { POST } from "@/app/api/projects/[projectId]/commands/route";
 import { database, writeTransaction } from "@/db/client";
 import { changes, events } from "@/db/schema/board";
 import { projects } from "@/db/schema/projects";
-import { commandAnswerSchema, conflictSchema } from "@/lib/board/command-answers";
+import { conflictSchema } from "@/lib/board/command-answers";
 import type { CommandDraft } from "@/lib/board/command-schema";
-import type { Board } from "@/lib/board/model";
-import { boardSchema } from "@/lib/board/schema";
 import type { ProjectId } from "@/lib/ids";
+import { callsOn } from "../support/board-calls";
 import { useDatabase } from "../support/database";
 import { makeEventfulBoard } from "../support/make-board";
 import { storeBoard } from "../support/stored-board";
@@ -28,37 +26,15 @@ beforeEach(async () => {
   await addMember(projectId, jonas, "editor");
   await storeBoard(projectId, lena, makeEventfulBoard());
   await signInAs(lena);
+  calls = callsOn(projectId);
 });
 
-const context = (id: string = projectId) => ({ params: Promise.resolve({ projectId: id }) });
 const newUuid = () => crypto.randomUUID();
 
-async function send(command: CommandDraft & { id?: string }, to: string = projectId): Promise<Response> {
-  const request = new Request(`http://localhost:3000/api/projects/${to}/commands`, {
-    method: "POST",
-    headers: { "content-type": "application/json" },
-    body: JSON.stringify({ id: newUuid(), revision: 0, ...command }),
-  });
-  return POST(request, context(to));
-}
-
-async function done(command: CommandDraft & { id?: string }) {
-  const response = await send(command);
-  expect(response.status, await response.clone().text()).toBe(200);
-  return commandAnswerSchema.parse(await response.json());
-}
-
-async function refused(command: CommandDraft & { id?: string }, status = 409) {
-  const response = await send(command);
-  const body = await response.json();
-  expect(response.status, JSON.stringify(body)).toBe(status);
-  return body as { detail: string; code: string };
-}
-
-async function board(): Promise<Board> {
-  const request = new Request(`http://localhost:3000/api/projects/${projectId}/board`);
-  return boardSchema.parse(await (await getBoardRoute(request, context())).json());
-}
+let calls: ReturnType<typeof callsOn>;
+const done: typeof calls.done = (command) => calls.done(command);
+const refused: typeof calls.refused = (command, status) => calls.refused(command, status);
+const board = () => calls.board();
 
 const frame = async (id: string) => (await board()).frames.find((each) => each.id === id);
 const stack = async (id: string) => (await board()).stacks.find((each) => each.id === id);
@@ -103,7 +79,7 @@ describe("a command", () => {
     await signInAs(jonas);
     expect((await refused({ ...MOVE, id }, 400)).code).toBe("invalid");
     const other = await makeProject(jonas, "Elsewhere");
-    const elsewhere = await send({ type: "add-line", axis: "row", at: 1, id }, other);
+    const elsewhere = await callsOn(other).send({ type: "add-line", axis: "row", at: 1, id });
     expect(elsewhere.status).toBe(400);
     expect(await elsewhere.text()).not.toContain("HARB");
   });
@@ -135,7 +111,7 @@ describe("a command", () => {
   test("on frames and stacks of another project finds nothing, and cannot take over a stack's id", async () => {
     const other = await makeProject(jonas, "Elsewhere");
     await signInAs(jonas);
-    expect((await send(MOVE, other)).status).toBe(409);
+    expect((await callsOn(other).send(MOVE)).status).toBe(409);
     await signInAs(lena);
     const body = await refused({
       type: "move-frames",
@@ -152,7 +128,7 @@ describe("a command", () => {
       headers: { "content-type": "text/plain" },
       body: JSON.stringify({ ...MOVE, id: newUuid(), revision: 0 }),
     });
-    expect((await POST(request, context())).status).toBe(415);
+    expect((await POST(request, { params: Promise.resolve({ projectId }) })).status).toBe(415);
   });
 });
 

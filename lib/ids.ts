@@ -19,7 +19,16 @@ export type StackId = z.infer<typeof stackIdSchema>;
 export type UploadId = z.infer<typeof uploadIdSchema>;
 export type SessionId = z.infer<typeof sessionIdSchema>;
 
-/** A new random identifier (UUID, 122 random bits), to be parsed by the schema of its kind. */
+/** A new random identifier (UUID version 4, RFC 9562: 122 random bits), to be parsed by the schema of its kind. */
 export function newId(): string {
-  return crypto.randomUUID();
+  // Browsers have `randomUUID` only where the connection is secure; a yard in a local network may not be.
+  if ("randomUUID" in crypto) return crypto.randomUUID();
+  const bytes = (crypto as Crypto).getRandomValues(new Uint8Array(16));
+  const hex = Array.from(bytes, (byte, at) => {
+    if (at === 6) return (byte & 0x0f) | 0x40;
+    return at === 8 ? (byte & 0x3f) | 0x80 : byte;
+  }).map((byte) => byte.toString(16).padStart(2, "0"));
+  return [hex.slice(0, 4), hex.slice(4, 6), hex.slice(6, 8), hex.slice(8, 10), hex.slice(10)]
+    .map((part) => part.join(""))
+    .join("-");
 }

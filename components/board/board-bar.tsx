@@ -1,4 +1,5 @@
 import type { BoardViewName } from "@/components/board/use-board-place";
+import { UndoButtons } from "@/components/together/undo-buttons";
 import { classNames } from "@/components/ui/class-names";
 
 interface BoardBarProps {
@@ -34,7 +35,7 @@ export function BoardBar({ view, onShow, isAllSeams, onAllSeams }: BoardBarProps
         ))}
       </div>
       {view === "grid" && (
-        <label className="ml-auto flex min-h-8 items-center gap-2 pointer-coarse:min-h-11">
+        <label className="flex min-h-8 items-center gap-2 pointer-coarse:min-h-11">
           <input
             type="checkbox"
             checked={isAllSeams}
@@ -44,6 +45,9 @@ export function BoardBar({ view, onShow, isAllSeams, onAllSeams }: BoardBarProps
           All overlaps
         </label>
       )}
+      <div className="ml-auto flex flex-wrap items-center gap-x-5">
+        <UndoButtons />
+      </div>
     </div>
   );
 }

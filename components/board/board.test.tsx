@@ -49,7 +49,7 @@ function open(answers: Answers, canEdit = true): Answers {
   const client = new QueryClient({ defaultOptions: { queries: { retry: false } } });
   render(
     <QueryClientProvider client={client}>
-      <Board projectId="project-1" canEdit={canEdit} />
+      <Board projectId="project-1" userId="user-1" canEdit={canEdit} />
     </QueryClientProvider>,
   );
   return answers;

@@ -10,12 +10,20 @@ import {
   WorkingBoard,
 } from "@/components/board/board-states";
 import { Sheet } from "@/components/board/sheet";
+import { BoardCommandsContext } from "@/components/board/board-commands";
 import { useBoardPlace } from "@/components/board/use-board-place";
 import { useLiveBoard } from "@/components/board/use-live-board";
+import { ConnectionStrip } from "@/components/together/connection-strip";
+import { RefusalDialog } from "@/components/together/refusal-dialog";
+import { SaidLine } from "@/components/together/said-line";
+import { SaveState } from "@/components/together/save-state";
+import { useBoardWork } from "@/components/together/use-board-work";
 import { indexBoard } from "@/lib/board/board-index";
 
 interface BoardProps {
   readonly projectId: string;
+  readonly userId: string;
+  /** Editors and leads of a project that is not in the archive. */
   readonly canEdit: boolean;
 }
 
@@ -23,8 +31,10 @@ interface BoardProps {
 const WIDE = "(min-width: 1024px)";
 
 /** The one container of the board page: asks for the data, decides what stands there. */
-export function Board({ projectId, canEdit }: BoardProps) {
-  const { board, progress, isFetching, sortError, retry, error } = useLiveBoard(projectId);
+export function Board({ projectId, userId, canEdit }: BoardProps) {
+  const { board: confirmed, progress, isFetching, sortError, retry, error } = useLiveBoard(projectId);
+  const work = useBoardWork({ projectId, userId, canEdit, confirmed });
+  const { board } = work;
   const index = useMemo(() => (board ? indexBoard(board) : null), [board]);
   const place = useBoardPlace();
   const isWide = useMedia(WIDE);
@@ -44,28 +54,34 @@ export function Board({ projectId, canEdit }: BoardProps) {
     return <WorkingBoard progress={progress} />;
   }
   return (
-    <div
-      ref={(element) => setTopPx(element ? element.getBoundingClientRect().top + window.scrollY : 0)}
-      // The sheet fills the window below header and ticket, so that rail and grid scroll on their own.
-      style={isWide ? { height: `max(34rem, calc(100dvh - ${topPx}px))` } : undefined}
-      className="flex flex-col"
-    >
-      <BoardNews
-        projectId={projectId}
-        progress={progress}
-        sortError={sortError}
-        isStale={error !== null}
-        onRetry={retry}
-      />
-      <Sheet
-        index={index}
-        chosen={place.chosen}
-        onChoose={place.choose}
-        view={place.view}
-        onShow={place.show}
-        isWide={isWide}
-      />
-    </div>
+    <BoardCommandsContext value={work.commands}>
+      <div
+        ref={(element) => setTopPx(element ? element.getBoundingClientRect().top + window.scrollY : 0)}
+        // The sheet fills the window below header and ticket, so that rail and grid scroll on their own.
+        style={isWide ? { height: `max(34rem, calc(100dvh - ${topPx}px))` } : undefined}
+        className="flex flex-col"
+      >
+        <ConnectionStrip queue={work.queue} canEdit={canEdit} />
+        <BoardNews
+          projectId={projectId}
+          progress={progress}
+          sortError={sortError}
+          isStale={error !== null}
+          onRetry={retry}
+        />
+        <Sheet
+          index={index}
+          chosen={place.chosen}
+          onChoose={place.choose}
+          view={place.view}
+          onShow={place.show}
+          isWide={isWide}
+          saved={canEdit ? <SaveState queue={work.queue} /> : null}
+        />
+        <SaidLine said={work.said} />
+        <RefusalDialog board={index.board} refusals={work.queue.refusals} onAnswer={work.answer} />
+      </div>
+    </BoardCommandsContext>
   );
 }
 

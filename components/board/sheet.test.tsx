@@ -3,10 +3,12 @@ import { cleanup, render, screen, within } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { useState } from "react";
 import { afterEach, beforeEach, expect, test, vi } from "vitest";
+import { BoardCommandsContext } from "@/components/board/board-commands";
 import { Sheet } from "@/components/board/sheet";
 import { indexBoard } from "@/lib/board/board-index";
 import type { Board } from "@/lib/board/model";
 import type { BoardViewName } from "@/components/board/use-board-place";
+import { makeBoardCommands } from "@/tests/support/board-commands";
 import { makeBoard, makeEventfulBoard } from "@/tests/support/make-board";
 
 // jsdom lays nothing out: the sheet gets the size of a laptop's window.
@@ -39,8 +41,12 @@ afterEach(() => {
 function Harness({ board, isWide = true }: { readonly board: Board; readonly isWide?: boolean }) {
   const [chosen, setChosen] = useState<string | null>(null);
   const [view, setView] = useState<BoardViewName>("grid");
-  const props = { index: indexBoard(board), chosen, onChoose: setChosen, view, onShow: setView, isWide };
-  return <Sheet {...props} />;
+  const props = { index: indexBoard(board), chosen, onChoose: setChosen, view, onShow: setView, isWide, saved: null };
+  return (
+    <BoardCommandsContext value={makeBoardCommands()}>
+      <Sheet {...props} />
+    </BoardCommandsContext>
+  );
 }
 
 test("a tile says aloud what it holds, and opens its frames below its row", async () => {

@@ -1,6 +1,6 @@
 "use client";
 
-import { useMemo, useState } from "react";
+import { useMemo, useState, type ReactNode } from "react";
 import { Bench, LooseBench } from "@/components/board/bench";
 import { BoardBar } from "@/components/board/board-bar";
 import { Docket } from "@/components/board/docket";
@@ -21,10 +21,12 @@ interface SheetProps {
   readonly onShow: (view: BoardViewName) => void;
   /** Room for rail and grid; otherwise the table and one tile at a time. */
   readonly isWide: boolean;
+  /** Whether all is saved; null for viewers. */
+  readonly saved: ReactNode;
 }
 
 /** The board as it is drawn: docket, rail, grid or table, bench, status line. */
-export function Sheet({ index, chosen, onChoose, view, onShow, isWide }: SheetProps) {
+export function Sheet({ index, chosen, onChoose, view, onShow, isWide, saved }: SheetProps) {
   const [isAllSeams, setIsAllSeams] = useState(false);
   const { questions } = index.board;
   const docket = useDocket(index, chosen);
@@ -33,7 +35,8 @@ export function Sheet({ index, chosen, onChoose, view, onShow, isWide }: SheetPr
   const docketLine = question && (
     <Docket index={index} question={question} at={docket.at} onTurn={docket.turn} onShowTile={onChoose} />
   );
-  if (!isWide) return <SmallBoard index={index} chosen={chosen} onChoose={onChoose} docket={docketLine} />;
+  if (!isWide)
+    return <SmallBoard index={index} chosen={chosen} onChoose={onChoose} docket={docketLine} saved={saved} />;
   return (
     <>
       <div className="grid min-h-0 flex-1 grid-cols-[248px_minmax(0,1fr)] grid-rows-[minmax(0,1fr)]">
@@ -51,7 +54,7 @@ export function Sheet({ index, chosen, onChoose, view, onShow, isWide }: SheetPr
           )}
         </div>
       </div>
-      <StatusLine index={index} />
+      <StatusLine index={index} saved={saved} />
     </>
   );
 }

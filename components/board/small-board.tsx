@@ -17,10 +17,11 @@ interface SmallBoardProps {
   readonly chosen: string | null;
   readonly onChoose: (name: string | null) => void;
   readonly docket: ReactNode;
+  readonly saved: ReactNode;
 }
 
 /** The board where there is no room for it: the table, or one tile at a time. */
-export function SmallBoard({ index, chosen, onChoose, docket }: SmallBoardProps) {
+export function SmallBoard({ index, chosen, onChoose, docket, saved }: SmallBoardProps) {
   const tile = chosen === null ? undefined : findTile(index, chosen);
   if (tile || chosen === LOOSE) return <OneTile index={index} tile={tile ?? null} onChoose={onChoose} />;
   return (
@@ -36,7 +37,7 @@ export function SmallBoard({ index, chosen, onChoose, docket }: SmallBoardProps)
       <div className="flex-1">
         <TileTable index={index} chosen={chosen} onChoose={onChoose} />
       </div>
-      <StatusLine index={index} />
+      <StatusLine index={index} saved={saved} />
     </>
   );
 }

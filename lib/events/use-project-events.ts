@@ -1,7 +1,7 @@
 "use client";
 import { type QueryClient, useQueryClient } from "@tanstack/react-query";
 import { useEffect } from "react";
-import { boardKeys } from "@/lib/board/queries";
+import { boardKeys, catchUpBoard } from "@/lib/board/queries";
 import { eventsUrl, type ProjectEvent, projectEventSchema, STREAM_EVENT_NAME } from "@/lib/events/schema";
 import { frameKeys } from "@/lib/frames/queries";
 import { projectKeys } from "@/lib/projects/queries";
@@ -65,24 +65,28 @@ function openStream(projectId: string, signal: AbortSignal, tell: (event: Projec
 }
 
 function gatherInvalidations(client: QueryClient, projectId: string) {
-  const keys = new Set<"frames" | "board">();
   let timer: ReturnType<typeof setTimeout> | null = null;
   const flush = () => {
     timer = null;
-    if (keys.has("frames")) void client.invalidateQueries({ queryKey: frameKeys.all(projectId) });
-    if (keys.has("board")) void client.invalidateQueries({ queryKey: boardKeys.all(projectId) });
-    // What the job ticket says follows from either.
+    void client.invalidateQueries({ queryKey: frameKeys.all(projectId) });
+    // What the job ticket says follows from files and board alike.
     void client.invalidateQueries({ queryKey: projectKeys.all(projectId) });
-    keys.clear();
   };
   return {
     add(event: ProjectEvent) {
-      keys.add("frames");
-      if (event.type === "board.changed" || event.type === "missed") keys.add("board");
+      // People wait for each other's changes: these are not gathered.
+      if (event.type === "board.changed") followBoard(client, projectId, event.revision);
+      if (event.type === "missed") followBoard(client, projectId, Infinity);
       timer ??= setTimeout(flush, GATHER_MS);
     },
     stop() {
       if (timer) clearTimeout(timer);
     },
   };
+}
+
+function followBoard(client: QueryClient, projectId: string, revision: number): void {
+  // Where it cannot be fetched now, the next event or the next look at the page asks again.
+  catchUpBoard(client, projectId, revision).catch(() => undefined);
+  void client.invalidateQueries({ queryKey: boardKeys.undo(projectId) });
 }

@@ -1,7 +1,8 @@
 import type { Metadata } from "next";
 import { Board } from "@/components/board/board";
-import { openProject } from "@/lib/auth/page-gate";
+import { openProject, openSession } from "@/lib/auth/page-gate";
 import { allows } from "@/lib/auth/roles";
+import { getProject } from "@/lib/projects/reads";
 
 export const metadata: Metadata = { title: "Board" };
 
@@ -11,10 +12,15 @@ interface BoardPageProps {
 
 export default async function BoardPage({ params }: BoardPageProps) {
   const access = await openProject((await params).projectId, "view");
+  const [user, project] = await Promise.all([openSession(), getProject(access)]);
   return (
     <>
       <h1 className="sr-only">Board</h1>
-      <Board projectId={access.projectId} canEdit={allows(access.role, "edit")} />
+      <Board
+        projectId={access.projectId}
+        userId={user.id}
+        canEdit={allows(access.role, "edit") && !project.isArchived}
+      />
     </>
   );
 }

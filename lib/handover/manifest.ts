@@ -1,5 +1,6 @@
 import { currentSeams } from "@/lib/board/current-seams";
 import type { Board, BoardFrame, BoardStack } from "@/lib/board/model";
+import { emptyTiles } from "@/lib/board/empty-tiles";
 import { tileName } from "@/lib/board/tile-name";
 import { expectedNoise } from "@/lib/board/expected-noise";
 import type { Manifest, ManifestFrame, ManifestStack } from "./manifest-types";
@@ -49,7 +50,7 @@ export function buildManifest(board: Board, options: ManifestOptions): Manifest 
       columns: board.grid.columns,
       shotOrder: board.grid.shotOrder,
       overlapWanted: board.grid.overlapWanted,
-      holes: findHoles(board),
+      holes: emptyTiles(board.grid, board.stacks),
       framesPerTile: board.grid.framesPerTile,
     },
     stacks: writeStacks(board, stacks, options),
@@ -62,15 +63,6 @@ export function buildManifest(board: Board, options: ManifestOptions): Manifest 
   };
   assertManifest(manifest);
   return manifest;
-}
-
-/** Names of the places within the grid that no stack of the whole project has. */
-export function findHoles({ grid, stacks }: Board): string[] {
-  const taken = new Set(stacks.map((stack) => tileOf(stack)));
-  const tiles = Array.from({ length: grid.rows }, (_, row) =>
-    Array.from({ length: grid.columns }, (__, column) => tileName(row + 1, column + 1)),
-  );
-  return tiles.flat().filter((tile) => !taken.has(tile));
 }
 
 function tileOf(stack: BoardStack | undefined): string | null {

@@ -11,30 +11,23 @@ export interface FileNumber {
 const DCF_FILE = /^[0-9A-Z_]{4}(\d{4})$/;
 /** Number and free characters of a DCF folder name. Source: the same, 3.1.2. */
 const DCF_FOLDER = /^([1-9]\d{2})[0-9A-Z_]{5}$/i;
-const EXTENSION = /\.[A-Za-z][A-Za-z0-9]{1,4}$/;
 /** More digits than this are a date, an identifier or a checksum; the last ones still order the files. */
 const MOST_DIGITS = 9;
 
-/** A file's name without folder and extension. */
-export function stemOf(name: string): string {
-  return name.replace(EXTENSION, "");
-}
-
-/** True for a name by the DCF rule: four free characters 0-9 A-Z _ and a number from 0001 to 9999. */
+/** True for a name without extension by the DCF rule: four free characters 0-9 A-Z _ and a number from 0001 to 9999. */
 export function isDcfFileName(name: string): boolean {
-  const match = DCF_FILE.exec(stemOf(name));
+  const match = DCF_FILE.exec(name);
   return match !== null && match[1] !== "0000";
 }
 
 /**
- * The counter in a file name: the four digits of a DCF name, else the last run of digits.
+ * The counter in a file name without extension: the four digits of a DCF name, else the last run of digits.
  * @returns null where the name has no digit
- * @example fileNumber("HARB0042.JPG") // { prefix: "HARB", number: 42, period: 9999 }
+ * @example fileNumber("HARB0042") // { prefix: "HARB", number: 42, period: 9999 }
  */
 export function fileNumber(name: string): FileNumber | null {
-  const stem = stemOf(name);
-  if (isDcfFileName(stem)) return { prefix: stem.slice(0, 4), number: Number(stem.slice(4)), period: 9999 };
-  const match = /^(.*?)(\d+)(\D*)$/.exec(stem);
+  if (isDcfFileName(name)) return { prefix: name.slice(0, 4), number: Number(name.slice(4)), period: 9999 };
+  const match = /^(.*?)(\d+)(\D*)$/.exec(name);
   if (!match) return null;
   const digits = (match[2] ?? "").slice(-MOST_DIGITS);
   return { prefix: `${match[1] ?? ""}#${match[3] ?? ""}`, number: Number(digits), period: 10 ** digits.length - 1 };

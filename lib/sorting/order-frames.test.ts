@@ -39,73 +39,73 @@ describe("orderFrames", () => {
   test("folders with roll-over: 100/9997 to 9999, then 101/0001 on", () => {
     // check-values.md E36 (DCF).
     const given = [
-      ...["9997", "9998", "9999"].map((number) => ({ name: `ABCD${number}.JPG`, folder: "100ABCDE" })),
-      ...["0001", "0002", "0004"].map((number) => ({ name: `ABCD${number}.JPG`, folder: "101ABCDE" })),
+      ...["9997", "9998", "9999"].map((number) => ({ name: `ABCD${number}`, folder: "100ABCDE" })),
+      ...["0001", "0002", "0004"].map((number) => ({ name: `ABCD${number}`, folder: "101ABCDE" })),
     ];
     expect(names(given)).toEqual([given.map(({ name }) => name)]);
   });
 
   test("a roll-over within one folder", () => {
-    expect(names([{ name: "ABCD9999.JPG" }, { name: "ABCD0001.JPG" }, { name: "ABCD0002.JPG" }])).toEqual([
-      ["ABCD9999.JPG", "ABCD0001.JPG", "ABCD0002.JPG"],
+    expect(names([{ name: "ABCD9999" }, { name: "ABCD0001" }, { name: "ABCD0002" }])).toEqual([
+      ["ABCD9999", "ABCD0001", "ABCD0002"],
     ]);
   });
 
   test("the counter goes before the clock, because clocks jump", () => {
     expect(
       names([
-        { name: "ABCD0001.JPG", seconds: 100 },
-        { name: "ABCD0002.JPG", seconds: 101 },
-        { name: "ABCD0003.JPG", seconds: 2 },
-        { name: "ABCD0004.JPG", seconds: 3 },
+        { name: "ABCD0001", seconds: 100 },
+        { name: "ABCD0002", seconds: 101 },
+        { name: "ABCD0003", seconds: 2 },
+        { name: "ABCD0004", seconds: 3 },
       ]),
-    ).toEqual([["ABCD0001.JPG", "ABCD0002.JPG", "ABCD0003.JPG", "ABCD0004.JPG"]]);
+    ).toEqual([["ABCD0001", "ABCD0002", "ABCD0003", "ABCD0004"]]);
   });
 
   test("two bodies are two sequences, whatever their clocks say", () => {
     expect(
       names([
-        { name: "ABCD0001.JPG", serial: "1", seconds: 0 },
-        { name: "ABCD0501.JPG", serial: "2", seconds: 1 },
-        { name: "ABCD0002.JPG", serial: "1", seconds: 2 },
-        { name: "ABCD0502.JPG", serial: "2", seconds: 3 },
+        { name: "ABCD0001", serial: "1", seconds: 0 },
+        { name: "ABCD0501", serial: "2", seconds: 1 },
+        { name: "ABCD0002", serial: "1", seconds: 2 },
+        { name: "ABCD0502", serial: "2", seconds: 3 },
       ]),
     ).toEqual([
-      ["ABCD0001.JPG", "ABCD0002.JPG"],
-      ["ABCD0501.JPG", "ABCD0502.JPG"],
+      ["ABCD0001", "ABCD0002"],
+      ["ABCD0501", "ABCD0502"],
     ]);
   });
 
   test("a frame that lost its EXIF stays with the body whose prefix and numbers it has", () => {
     expect(
       names([
-        { name: "ABCD0001.JPG" },
-        { name: "ABCD0002.JPG", serial: null, seconds: null },
-        { name: "ABCD0003.JPG" },
+        { name: "ABCD0001" },
+        { name: "ABCD0002", serial: null, seconds: null },
+        { name: "ABCD0003" },
       ]),
-    ).toEqual([["ABCD0001.JPG", "ABCD0002.JPG", "ABCD0003.JPG"]]);
+    ).toEqual([["ABCD0001", "ABCD0002", "ABCD0003"]]);
   });
 
   test("numbers that count twice, from two cards, go folder by folder in time", () => {
     expect(
       names([
-        { name: "ABCD0001.JPG", folder: "card b", seconds: 0 },
-        { name: "ABCD0002.JPG", folder: "card b", seconds: 1 },
-        { name: "ABCD0001.JPG", folder: "card a", seconds: 50 },
-        { name: "ABCD0002.JPG", folder: "card a", seconds: 51 },
+        { name: "ABCD0001", folder: "card b", seconds: 0 },
+        { name: "ABCD0002", folder: "card b", seconds: 1 },
+        { name: "ABCD0001", folder: "card a", seconds: 50 },
+        { name: "ABCD0002", folder: "card a", seconds: 51 },
       ]),
-    ).toEqual([["ABCD0001.JPG", "ABCD0002.JPG", "ABCD0001.JPG", "ABCD0002.JPG"]]);
+    ).toEqual([["ABCD0001", "ABCD0002", "ABCD0001", "ABCD0002"]]);
     const [sequence] = orderFrames(
       frames([
-        { name: "ABCD0001.JPG", folder: "card b", seconds: 0 },
-        { name: "ABCD0001.JPG", folder: "card a", seconds: 50 },
+        { name: "ABCD0001", folder: "card b", seconds: 0 },
+        { name: "ABCD0001", folder: "card a", seconds: 50 },
       ]),
     );
     expect(sequence?.frames.map(({ folder }) => folder)).toEqual(["card b", "card a"]);
   });
 
   test("names that are checksums are ordered by the clock; without one the order is not known", () => {
-    const hashes = ["9af3c1.jpg", "01bb7d2.jpg", "7730e5.jpg", "c4d5e6f7.jpg", "5e11aa9.jpg"];
+    const hashes = ["9af3c1", "01bb7d2", "7730e5", "c4d5e6f7", "5e11aa9"];
     expect(names(hashes.map((name) => ({ name })))).toEqual([hashes]);
     const [blind] = orderFrames(frames(hashes.map((name) => ({ name, seconds: null, serial: null }))));
     expect(blind?.isOrderKnown).toBe(false);

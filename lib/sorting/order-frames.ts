@@ -1,5 +1,5 @@
 import { groupByBody } from "./body-groups";
-import { fileNumber, folderNumber, stemOf, unwrapCounter, type FileNumber } from "./file-number";
+import { fileNumber, folderNumber, unwrapCounter, type FileNumber } from "./file-number";
 import type { SortFrame } from "./types";
 
 /** Frames of one camera in the order taken. */
@@ -142,7 +142,7 @@ function compareNames(a: SortFrame | undefined, b: SortFrame | undefined): numbe
   if (!a || !b) return 0;
   return (
     naturalOrder.compare(a.folder ?? "", b.folder ?? "") ||
-    naturalOrder.compare(stemOf(a.name), stemOf(b.name)) ||
+    naturalOrder.compare(a.name, b.name) ||
     (a.lastModifiedMs ?? 0) - (b.lastModifiedMs ?? 0) ||
     (a.id < b.id ? -1 : 1)
   );

@@ -13,6 +13,8 @@ export interface WalkStop {
 
 export interface WalkPlacement {
   readonly walk: ShotOrder;
+  /** What disturbs the walk, in holes: 0 for one that is followed all the way. */
+  readonly cost: number;
   /** Places of the stops that had none, by stack index; those left out are missing. */
   readonly labels: ReadonlyMap<number, Label>;
   /** How much dearer the best other way is in which any stop would lie elsewhere; 0 is a toss-up. */

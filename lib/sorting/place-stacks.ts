@@ -4,6 +4,8 @@ import { isTextured } from "./judge-pair";
 import { trustIn, type Component, type Label } from "./lattice";
 import { inSteps, misfitScale } from "./lattice-steps";
 import { placeByWalk, type WalkPlacement, type WalkStop } from "./place-by-walk";
+import { freeByOrder } from "./free-by-order";
+import { findTies, type Tie } from "./ties";
 import type { SortOptions } from "./types";
 import { LARGEST_SAME_PLACE } from "./vector";
 
@@ -23,6 +25,8 @@ export interface Layout {
   /** By stack index. */
   readonly spots: readonly Spot[];
   readonly walk: WalkPlacement | null;
+  /** What holds the parts of the grid that the pictures placed to each other. */
+  readonly ties: readonly Tie[];
 }
 
 /** Edges with whole stacks that weigh less than this together may be chance. Our own. */
@@ -49,18 +53,28 @@ export function placeStacks(
   const sizes = stackSizesOf(stacks);
   const main = graph.components[0] ?? new Map<number, Label>();
   const strays = findStrays(stacks, graph, sizes);
-  const labels = new Map([...main].filter(([index]) => !strays.has(index) && (main.size > 1 || stacks.length === 1)));
-  const sequences = bodies.map((list) =>
-    list.flatMap((index): WalkStop[] => {
-      const stack = stacks[index];
-      if (!stack || strays.has(index)) return [];
-      return [{ index, label: labels.get(index) ?? null, leaveOutCost: leaveOutCost(stack, graph, sizes) }];
-    }),
-  );
-  const isComplete = sequences.flat().every((stop) => stop.label);
-  const wishes = { rows: options.expectedRows, columns: options.expectedColumns };
-  const walk = isComplete ? null : placeByWalk(sequences, wishes);
-  const byOrder = snapPieces(walk?.labels ?? new Map<number, Label>(), graph.components.slice(1), labels);
+  const found = new Map([...main].filter(([index]) => !strays.has(index) && (main.size > 1 || stacks.length === 1)));
+  const { pieces, ties } = findTies(graph, found);
+  // What hung on a stray, or was outvoted, hangs on nothing any more.
+  const held = new Map([...found].filter(([index]) => pieces[0]?.has(index)));
+  const layWalk = (placed: Component): WalkPlacement | null => {
+    const sequences = bodies.map((list) =>
+      list.flatMap((index): WalkStop[] => {
+        const stack = stacks[index];
+        if (!stack || strays.has(index)) return [];
+        return [{ index, label: placed.get(index) ?? null, leaveOutCost: leaveOutCost(stack, graph, sizes) }];
+      }),
+    );
+    return placeByWalk(sequences, { rows: options.expectedRows, columns: options.expectedColumns });
+  };
+  const isFixed = (index: number) => stacks[index]?.fixed?.row != null;
+  const freed = freeByOrder(held, ties, { bodies, layWalk, isFixed });
+  const labels = new Map([...held].filter(([index]) => !freed.some((piece) => piece.has(index))));
+  const torn = pieces.slice(1).map((piece): Component => new Map([...found].filter(([index]) => piece.has(index))));
+  const isComplete = stacks.every(({ index }) => strays.has(index) || labels.has(index));
+  const walk = isComplete ? null : layWalk(labels);
+  const others = [...graph.components.slice(1), ...torn, ...freed];
+  const byOrder = snapPieces(walk?.labels ?? new Map<number, Label>(), others, labels);
   const spots = stacks.map(({ index, fixed }): Spot => {
     const none = { label: null, isStray: false, isCertainStray: false, isUnsure: false };
     if (fixed && fixed.row !== null) return { ...none, label: labels.get(index) ?? null, basis: "fixed" };
@@ -73,7 +87,7 @@ export function placeStacks(
     const isStray = stacks[index] ? leaveOutCost(stacks[index], graph, sizes) !== null : false;
     return { ...none, basis: "none", isStray, isUnsure: true };
   });
-  return { spots, walk };
+  return { spots, walk, ties };
 }
 
 /** Few frames that match nothing although they could, or that lie between the tiles. */

@@ -1,5 +1,4 @@
 import type { FrameDraft, StackDraft } from "./draft";
-import { stemOf } from "./file-number";
 import { isKept, nameOf, percent, tileOf, type SortedDraft } from "./sorted-draft";
 import type { ProposedQuestion, SetAsideReason } from "./types";
 
@@ -18,7 +17,7 @@ export function questionsOfFrames(draft: SortedDraft): ProposedQuestion[] {
 
 function questionOfFrame(draft: SortedDraft, stack: StackDraft, entry: FrameDraft): ProposedQuestion | null {
   if (entry.isSettled || stack.fixed?.byPerson) return null;
-  const name = stemOf(entry.frame.name);
+  const { name } = entry.frame;
   const where = nameOf(draft, stack.index);
   const common = { frameIds: [entry.frame.id], stackIds: [stack.id], tile: tileOf(draft, stack.index) };
   const answers = (reason: SetAsideReason, isAside: boolean): ProposedQuestion["answers"] => {
@@ -57,7 +56,7 @@ function questionOfFrame(draft: SortedDraft, stack: StackDraft, entry: FrameDraf
 function questionOfStray(draft: SortedDraft, stack: StackDraft): ProposedQuestion[] {
   if (draft.layout.spots[stack.index]?.isCertainStray) return [];
   const ids = stack.frames.map(({ frame }) => frame.id);
-  const first = stemOf(stack.frames[0]?.frame.name ?? "");
+  const first = stack.frames[0]?.frame.name ?? "";
   const isOne = ids.length === 1;
   const host = draft.stacks[stack.index - 1] ?? draft.stacks[stack.index + 1];
   return [
@@ -102,7 +101,7 @@ function questionOfOdd(draft: SortedDraft, id: string): ProposedQuestion[] {
   const before = draft.order[at - 1];
   const host = draft.stacks.find((stack) => stack.frames.some((entry) => entry.frame.id === before?.id));
   if (!frame || !host) return [];
-  const name = stemOf(frame.name);
+  const { name } = frame;
   const where = nameOf(draft, host.index);
   return [
     {

@@ -1,6 +1,5 @@
-import { tileName } from "@/lib/board/tile-name";
+import { emptyTiles } from "@/lib/board/empty-tiles";
 import { framesInUse, type StackDraft } from "./draft";
-import { stemOf } from "./file-number";
 import { isKept, nameOf, percent, tileOf, type SortedDraft } from "./sorted-draft";
 import type { ProposedQuestion, QuestionKind } from "./types";
 
@@ -64,18 +63,10 @@ function nameById(draft: SortedDraft, id: string): string {
   return stack ? nameOf(draft, stack.index) : "";
 }
 
-/** Names of the places within the grid that no stack has. */
-export function findHoles(draft: SortedDraft): string[] {
+function findHoles(draft: SortedDraft): string[] {
   const rows = draft.places.reduce((most, place) => Math.max(most, place.row ?? 0), 0);
   const columns = draft.places.reduce((most, place) => Math.max(most, place.column ?? 0), 0);
-  const taken = new Set(draft.places.map((place) => `${place.row} ${place.column}`));
-  const holes: string[] = [];
-  for (let row = 1; row <= rows; row++) {
-    for (let column = 1; column <= columns; column++) {
-      if (!taken.has(`${row} ${column}`)) holes.push(tileName(row, column));
-    }
-  }
-  return holes;
+  return emptyTiles({ rows, columns }, draft.places);
 }
 
 const ACCEPT = { type: "keep" } as const;
@@ -164,7 +155,7 @@ function doubledQuestions(draft: SortedDraft): ProposedQuestion[] {
     const stack = draft.stacks.find((candidate) => candidate.frames.some(({ frame }) => frame.id === atFrameId));
     if (!stack || !isKept(draft, stack) || stack.fixed?.byPerson) return [];
     const where = nameOf(draft, stack.index);
-    const first = stemOf(stack.frames.find(({ frame }) => frame.id === atFrameId)?.frame.name ?? "");
+    const first = stack.frames.find(({ frame }) => frame.id === atFrameId)?.frame.name ?? "";
     return [
       {
         key: `two-stacks ${atFrameId}`,

@@ -94,7 +94,7 @@ describe("what must change nothing", () => {
         async (prefix, offset, clock) => {
           const renamed = (frame: SortFrame, at: number): SortFrame => ({
             ...frame,
-            name: `${prefix}${String(((at + offset) % 9999) + 1).padStart(4, "0")}.JPG`,
+            name: `${prefix}${String(((at + offset) % 9999) + 1).padStart(4, "0")}`,
             metadata: {
               ...frame.metadata,
               takenAt: frame.metadata.takenAt && {
@@ -123,7 +123,7 @@ describe("what goes wrong at a shoot", () => {
   test("an added stray stays loose, is asked about and moves nothing else", async () => {
     const frames = pretendShoot(PLAN);
     const expected = summary(await sort(frames));
-    const stray: PretendFrame = { ...frames[0], name: "FRAM0999.JPG", at: null, seconds: 500 } as PretendFrame;
+    const stray: PretendFrame = { ...frames[0], name: "FRAM0999", at: null, seconds: 500 } as PretendFrame;
     const proposal = await sort([...frames, stray]);
     expect(summary(proposal)).toEqual(expected);
     expect(proposal.frames.filter(({ stackId }) => stackId === null)).toHaveLength(1);
@@ -161,7 +161,7 @@ describe("what goes wrong at a shoot", () => {
     const frames = pretendShoot(PLAN);
     const again = frames.slice(10, 15).map((frame, at) => ({
       ...frame,
-      name: `FRAM0${500 + at}.JPG`,
+      name: `FRAM0${500 + at}`,
       seconds: 900 + at,
       sharpness: 0.4,
     }));

@@ -5,7 +5,6 @@ import type { StackDraft } from "./draft";
 import type { Positions } from "./find-positions";
 import type { Seam } from "./find-seams";
 import type { SoftStack } from "./soft-stacks";
-import { stemOf } from "./file-number";
 import type { Place } from "./number-places";
 import type { Layout } from "./place-stacks";
 import type { Doubled } from "./split-doubles";
@@ -48,7 +47,7 @@ export function tileOf({ places }: SortedDraft, index: number): string | null {
 export function nameOf(draft: SortedDraft, index: number): string {
   const tile = tileOf(draft, index);
   const first = draft.stacks[index]?.frames[0]?.frame.name ?? "";
-  if (tile === null) return `the stack from ${stemOf(first)}`;
+  if (tile === null) return `the stack from ${first}`;
   const take = draft.takes[index]?.take ?? 1;
   return take > 1 ? `${tile}, take ${take}` : tile;
 }

@@ -25,6 +25,7 @@ export type QuestionKind = (typeof QUESTION_KINDS)[number];
 /** One frame as the sorting sees it. */
 export interface SortFrame {
   readonly id: string;
+  /** File name without folder and extension. */
   readonly name: string;
   /** Folder relative to what was dropped, "/" between names; null at the root. */
   readonly folder: string | null;

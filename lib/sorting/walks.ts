@@ -75,6 +75,12 @@ export function findShotOrder(places: readonly (readonly Label[])[]): ShotOrder 
   return best && best.steps > 0 && best.followed / best.steps >= LEAST_FOLLOWED ? best.walk : null;
 }
 
+/** Share of the steps from tile to tile that one walk explains; 1 where there are none. */
+export function followedShare(places: readonly (readonly Label[])[]): number {
+  const best = bestWalk(places);
+  return best && best.steps > 0 ? best.followed / best.steps : 1;
+}
+
 /** How many steps from tile to tile no walk explains; 0 for fewer than two tiles. */
 export function countBreaks(places: readonly Label[]): number {
   const best = bestWalk([places]);

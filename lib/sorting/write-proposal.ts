@@ -3,7 +3,6 @@ import type { FrameDraft, StackDraft } from "./draft";
 import type { Edge } from "./edges";
 import { trustIn } from "./lattice";
 import { inSteps, misfitScale } from "./lattice-steps";
-import { stemOf } from "./file-number";
 import { tellingSpot } from "./frame-sharpness";
 import { shiftFraction } from "./judge-pair";
 import { pauseSeconds } from "./pauses";
@@ -154,7 +153,7 @@ function frameReason(draft: SortedDraft, stack: StackDraft, entry: FrameDraft): 
   if (stack.fixed?.byPerson) return { confidence: 1, reason: "Put here by a person." };
   const join = draft.split.joins.get(entry.frame.id);
   if (!join) return { confidence: 0.97, reason: "The first of its stack." };
-  const name = stemOf(join.before.name);
+  const { name } = join.before;
   const pause = join.pauseS === null ? "at an unknown time" : `${formatSeconds(join.pauseS)} later`;
   const isMatched = join.verdict === "same" || join.verdict === "different";
   const shift = isMatched

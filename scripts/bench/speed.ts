@@ -4,6 +4,7 @@ import path from "node:path";
 import sharp from "sharp";
 
 import { analysePicture } from "@/lib/imaging/analyse-picture";
+import { median } from "@/lib/sorting/robust";
 import { make24MpFrames } from "@/tests/support/shoots/make-24mp-frames";
 import { analyseFiles } from "../sort/analyse-files";
 import { collectFiles } from "../sort/collect-files";
@@ -49,9 +50,4 @@ async function timed(work: () => Promise<unknown>): Promise<number> {
   const started = performance.now();
   await work();
   return performance.now() - started;
-}
-
-function median(values: readonly number[]): number {
-  const sorted = [...values].sort((a, b) => a - b);
-  return sorted[Math.floor(sorted.length / 2)] ?? Number.NaN;
 }

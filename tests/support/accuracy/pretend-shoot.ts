@@ -52,7 +52,7 @@ export function pretendShoot(plan: PretendPlan): PretendFrame[] {
     for (let shot = 0; shot < plan.framesPerTile; shot++) {
       seconds += shot === 0 ? 10 : 1;
       frames.push({
-        name: `FRAM${String(FIRST_NUMBER + frames.length).padStart(4, "0")}.JPG`,
+        name: `FRAM${String(FIRST_NUMBER + frames.length).padStart(4, "0")}`,
         folder: null,
         seconds,
         at: {

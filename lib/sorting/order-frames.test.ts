@@ -78,11 +78,7 @@ describe("orderFrames", () => {
 
   test("a frame that lost its EXIF stays with the body whose prefix and numbers it has", () => {
     expect(
-      names([
-        { name: "ABCD0001" },
-        { name: "ABCD0002", serial: null, seconds: null },
-        { name: "ABCD0003" },
-      ]),
+      names([{ name: "ABCD0001" }, { name: "ABCD0002", serial: null, seconds: null }, { name: "ABCD0003" }]),
     ).toEqual([["ABCD0001", "ABCD0002", "ABCD0003"]]);
   });
 

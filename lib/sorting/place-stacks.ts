@@ -54,7 +54,8 @@ export function placeStacks(
   const main = graph.components[0] ?? new Map<number, Label>();
   const strays = findStrays(stacks, graph, sizes);
   const found = new Map([...main].filter(([index]) => !strays.has(index) && (main.size > 1 || stacks.length === 1)));
-  const { pieces, ties } = findTies(graph, found);
+  const plain = new Set(stacks.filter(({ hub }) => !isTextured(hub)).map(({ index }) => index));
+  const { pieces, ties } = findTies(graph, found, plain);
   // What hung on a stray, or was outvoted, hangs on nothing any more.
   const held = new Map([...found].filter(([index]) => pieces[0]?.has(index)));
   const layWalk = (placed: Component): WalkPlacement | null => {
@@ -67,7 +68,7 @@ export function placeStacks(
     );
     return placeByWalk(sequences, { rows: options.expectedRows, columns: options.expectedColumns });
   };
-  const isFixed = (index: number) => stacks[index]?.fixed?.row != null;
+  const isFixed = (index: number) => typeof stacks[index]?.fixed?.row === "number";
   const freed = freeByOrder(held, ties, { bodies, layWalk, isFixed });
   const labels = new Map([...held].filter(([index]) => !freed.some((piece) => piece.has(index))));
   const torn = pieces.slice(1).map((piece): Component => new Map([...found].filter(([index]) => piece.has(index))));

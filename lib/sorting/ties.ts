@@ -1,5 +1,5 @@
 import type { GridGraph } from "./collect-edges";
-import { trustIn, type Label } from "./lattice";
+import { clashWeight, trustIn, type Label } from "./lattice";
 import { inSteps, misfitScale } from "./lattice-steps";
 import { LARGEST_SAME_PLACE } from "./vector";
 
@@ -11,6 +11,8 @@ export interface Tie {
   readonly agreeing: number;
   /** Weight of those that agree on the likeliest other place. */
   readonly against: number;
+  /** Weight of the places that it shares with the rest without showing the same. */
+  readonly clashing: number;
 }
 
 export interface Ties {
@@ -25,6 +27,8 @@ interface Link {
   /** Where the edge wants the other one, less where it lies. */
   readonly columns: number;
   readonly rows: number;
+  /** Both show the same. */
+  readonly isSame: boolean;
 }
 
 /**
@@ -32,11 +36,22 @@ interface Link {
  * all edges across the cut are weighed. A row whose tiles fit each other well may still hang on the rest by one weak
  * edge, which its tiles alone would not tell.
  * @param labels - of the stacks that the pictures placed
+ * @param plain - stacks with too little texture to be told apart
  */
-export function findTies(graph: GridGraph, labels: ReadonlyMap<number, Label>): Ties {
+export function findTies(graph: GridGraph, labels: ReadonlyMap<number, Label>, plain: ReadonlySet<number>): Ties {
   const links = linksOf(graph, labels);
   const { pieces, tree } = spanTree(links);
-  const ties = pieces.flatMap((piece) => tiesOf(piece, tree, links));
+  const sharing = new Map<string, number[]>();
+  for (const [index, { column, row }] of labels) {
+    sharing.set(`${column} ${row}`, [...(sharing.get(`${column} ${row}`) ?? []), index]);
+  }
+  const clash = (index: number, inside: ReadonlySet<number>): number => {
+    const { column, row } = labels.get(index) ?? {};
+    const rivals = (sharing.get(`${column} ${row}`) ?? []).filter((other) => !inside.has(other));
+    const isSame = (other: number) => links.get(index)?.some((link) => link.other === other && link.isSame);
+    return rivals.reduce((sum, other) => sum + (isSame(other) ? 0 : clashWeight(index, other, plain)), 0);
+  };
+  const ties = pieces.flatMap((piece) => tiesOf(piece, tree, links, clash));
   return { pieces: pieces.map((piece) => new Set(piece)), ties };
 }
 
@@ -51,8 +66,8 @@ function linksOf({ edges, steps }: GridGraph, labels: ReadonlyMap<number, Label>
     const columns = a.column + found.columns - b.column;
     const rows = a.row + found.rows - b.row;
     const weight = edge.weight * (edge.steps || isSame ? 1 : trustIn(edge, inSteps(edge, steps), scale));
-    links.get(edge.a)?.push({ other: edge.b, weight, columns, rows });
-    links.get(edge.b)?.push({ other: edge.a, weight, columns: -columns, rows: -rows });
+    links.get(edge.a)?.push({ other: edge.b, weight, columns, rows, isSame });
+    links.get(edge.b)?.push({ other: edge.a, weight, columns: -columns, rows: -rows, isSame });
   }
   return links;
 }
@@ -90,6 +105,7 @@ function tiesOf(
   piece: readonly number[],
   tree: ReadonlyMap<number, number>,
   links: ReadonlyMap<number, readonly Link[]>,
+  clash: (index: number, inside: ReadonlySet<number>) => number,
 ): Tie[] {
   const below = new Map(piece.map((index) => [index, [index]]));
   // Leaves were reached last, so that each one's branch is whole before it joins the one it hangs on.
@@ -108,6 +124,7 @@ function tiesOf(
     }
     const agreeing = votes.get("0 0") ?? 0;
     votes.delete("0 0");
-    return { members, agreeing, against: Math.max(0, ...votes.values()) };
+    const clashing = members.reduce((sum, member) => sum + clash(member, inside), 0);
+    return { members, agreeing, against: Math.max(0, ...votes.values()), clashing };
   });
 }

@@ -1,4 +1,5 @@
 import Link from "next/link";
+import { classNames } from "@/components/ui/class-names";
 import type { BoardHole } from "@/lib/board/board-index";
 import type { BoardLayout } from "@/lib/board/layout";
 import { percent } from "@/lib/board/words";
@@ -18,10 +19,12 @@ interface HoleProps {
   readonly projectId: string;
   readonly hole: BoardHole;
   readonly layout: BoardLayout;
+  /** The docket's question is about it. */
+  readonly isAsked: boolean;
 }
 
 /** A place with no stack: the loudest thing on the sheet; what it costs and what to do. */
-export function Hole({ projectId, hole, layout }: HoleProps) {
+export function Hole({ projectId, hole, layout, isAsked }: HoleProps) {
   const loss =
     hole.lostShare > 0.005 ? `${percent(hole.lostShare)} of the tile is lost` : "its neighbours cover all of it";
   const isRoomy = hasHoleLink(layout);
@@ -35,7 +38,10 @@ export function Hole({ projectId, hole, layout }: HoleProps) {
         width: layout.tileWidthPx,
         height: layout.pictureHeightPx + layout.captionHeightPx,
       }}
-      className="relative flex shrink-0 flex-col items-center justify-center overflow-hidden text-center text-sm text-ochre-on outline-2 -outline-offset-4 outline-dashed outline-ochre"
+      className={classNames(
+        "relative flex shrink-0 flex-col items-center justify-center overflow-hidden text-center text-sm text-ochre-on outline-2 -outline-offset-4 outline-dashed outline-ochre",
+        isAsked && "z-10 ring-4 ring-ochre-wash",
+      )}
     >
       {layout.size === "map" ? (
         <span aria-hidden className="bg-ochre-wash px-0.5 font-bold">

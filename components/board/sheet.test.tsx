@@ -3,12 +3,11 @@ import { cleanup, render, screen, within } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { useState } from "react";
 import { afterEach, beforeEach, expect, test, vi } from "vitest";
-import { BoardCommandsContext } from "@/components/board/board-commands";
 import { Sheet } from "@/components/board/sheet";
 import { indexBoard } from "@/lib/board/board-index";
 import type { Board } from "@/lib/board/model";
 import type { BoardViewName } from "@/components/board/use-board-place";
-import { makeBoardCommands } from "@/tests/support/board-commands";
+import { LocalBoard } from "@/tests/support/local-board";
 import { makeBoard, makeEventfulBoard } from "@/tests/support/make-board";
 
 // jsdom lays nothing out: the sheet gets the size of a laptop's window.
@@ -41,12 +40,8 @@ afterEach(() => {
 function Harness({ board, isWide = true }: { readonly board: Board; readonly isWide?: boolean }) {
   const [chosen, setChosen] = useState<string | null>(null);
   const [view, setView] = useState<BoardViewName>("grid");
-  const props = { index: indexBoard(board), chosen, onChoose: setChosen, view, onShow: setView, isWide, saved: null };
-  return (
-    <BoardCommandsContext value={makeBoardCommands()}>
-      <Sheet {...props} />
-    </BoardCommandsContext>
-  );
+  const props = { chosen, onChoose: setChosen, view, onShow: setView, isWide, saved: null };
+  return <LocalBoard board={board}>{(now) => <Sheet index={indexBoard(now)} {...props} />}</LocalBoard>;
 }
 
 test("a tile says aloud what it holds, and opens its frames below its row", async () => {
@@ -88,7 +83,7 @@ test("small overlaps are printed on the seams, the others on request", async () 
 
 test("the docket shows one question at a time and turns to the chosen tile's", async () => {
   render(<Harness board={makeEventfulBoard()} />);
-  const docket = screen.getByRole("region", { name: "3 questions" });
+  const docket = screen.getByRole("region", { name: "3 open questions" });
   expect(within(docket).getByRole("heading").textContent).toBe("Does HARB0019 belong to A4?");
   await userEvent.click(within(docket).getByRole("button", { name: "Question after" }));
   expect(within(docket).getByRole("heading").textContent).toBe("Are 3 frames enough for C1?");
@@ -175,7 +170,7 @@ test("where a hole's cell has no room for its link, arrow keys pass over it", as
 
 test("without room a hole's question shows the tiles beside it and leads to the intake", async () => {
   render(<Harness board={makeEventfulBoard()} isWide={false} />);
-  const docket = screen.getByRole("region", { name: "3 questions" });
+  const docket = screen.getByRole("region", { name: "3 open questions" });
   await userEvent.click(within(docket).getByRole("button", { name: "Question before" }));
   expect(within(docket).getByRole("heading").textContent).toBe("Was B5 left out?");
   const pictures = within(docket).getByRole("list", { name: "Pictures that decide it, whole" });

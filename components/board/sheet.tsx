@@ -10,8 +10,11 @@ import { TileGrid } from "@/components/board/tile-grid";
 import { TileTable } from "@/components/board/tile-table";
 import { LOOSE, type BoardViewName } from "@/components/board/use-board-place";
 import { useElementSize } from "@/components/board/use-element-size";
+import { useDocket } from "@/components/board/use-docket";
 import { TimeRail } from "@/components/rail/time-rail";
 import type { BoardIndex } from "@/lib/board/board-index";
+import { questionMove } from "@/lib/board/docket-answers";
+import type { BoardQuestion } from "@/lib/board/model";
 
 interface SheetProps {
   readonly index: BoardIndex;
@@ -28,15 +31,14 @@ interface SheetProps {
 /** The board as it is drawn: docket, rail, grid or table, bench, status line. */
 export function Sheet({ index, chosen, onChoose, view, onShow, isWide, saved }: SheetProps) {
   const [isAllSeams, setIsAllSeams] = useState(false);
-  const { questions } = index.board;
-  const docket = useDocket(index, chosen);
-  const question = questions[docket.at];
-  const asked = useMemo(() => askedTiles(index, question?.stackIds ?? []), [index, question]);
-  const docketLine = question && (
-    <Docket index={index} question={question} at={docket.at} onTurn={docket.turn} onShowTile={onChoose} />
-  );
-  if (!isWide)
-    return <SmallBoard index={index} chosen={chosen} onChoose={onChoose} docket={docketLine} saved={saved} />;
+  const docket = useDocket({ index, chosen, onChoose });
+  const { question } = docket;
+  const asked = useMemo(() => askedTiles(index, question), [index, question]);
+  const askedMove = useMemo(() => question && questionMove(index, question), [index, question]);
+  const docketLine = <Docket index={index} docket={docket} chosen={chosen} onShowTile={onChoose} />;
+  if (!isWide) {
+    return <SmallBoard {...{ index, chosen, onChoose, saved }} docket={docketLine} askedPlace={docket.place} />;
+  }
   return (
     <>
       <div className="grid min-h-0 flex-1 grid-cols-[248px_minmax(0,1fr)] grid-rows-[minmax(0,1fr)]">
@@ -46,7 +48,7 @@ export function Sheet({ index, chosen, onChoose, view, onShow, isWide, saved }: 
           <BoardBar view={view} onShow={onShow} isAllSeams={isAllSeams} onAllSeams={setIsAllSeams} />
           {view === "grid" ? (
             <TileGrid
-              {...{ index, chosen, onChoose, isAllSeams, asked }}
+              {...{ index, chosen, onChoose, isAllSeams, asked, askedMove }}
               askedPlace={question?.tile ?? [...asked][0] ?? null}
             />
           ) : (
@@ -88,26 +90,15 @@ function TableWithBench({ index, chosen, onChoose }: Pick<SheetProps, "index" | 
   );
 }
 
-/** Which question the docket shows: it turns to the chosen tile's first one, and stays where a person turned it. */
-function useDocket(index: BoardIndex, chosen: string | null) {
-  const { questions } = index.board;
-  const [shown, setShown] = useState<{ key: string | null; chosen: string | null }>({ key: null, chosen: null });
-  if (shown.chosen !== chosen) {
-    const current = questions.find((question) => question.key === shown.key);
-    const ofTile = questions.find((question) => question.tile === chosen);
-    setShown({ key: current?.tile === chosen ? shown.key : (ofTile?.key ?? shown.key), chosen });
-  }
-  const at = Math.max(
-    0,
-    questions.findIndex((question) => question.key === shown.key),
-  );
-  return { at, turn: (to: number) => setShown({ key: questions[to]?.key ?? null, chosen }) };
-}
-
 function findTile(index: BoardIndex, name: string) {
   return index.tiles.get(name) ?? index.unplaced.find((tile) => tile.name === name);
 }
 
-function askedTiles(index: BoardIndex, stackIds: readonly string[]): ReadonlySet<string> {
-  return new Set(stackIds.flatMap((id) => index.tileOfStack.get(id)?.name ?? []));
+/** The places that a question is about, and the one where its frame may belong. */
+function askedTiles(index: BoardIndex, question: BoardQuestion | null): ReadonlySet<string> {
+  if (!question) return new Set();
+  const named = question.stackIds.flatMap((id) => index.tileOfStack.get(id)?.name ?? []);
+  return new Set(
+    [...named, question.tile, questionMove(index, question)?.tile].filter((name) => typeof name === "string"),
+  );
 }

@@ -18,26 +18,34 @@ interface SmallBoardProps {
   readonly onChoose: (name: string | null) => void;
   readonly docket: ReactNode;
   readonly saved: ReactNode;
+  /** What the docket's question opens; null: none. */
+  readonly askedPlace: string | null;
 }
 
-/** The board where there is no room for it: the table, or one tile at a time. */
-export function SmallBoard({ index, chosen, onChoose, docket, saved }: SmallBoardProps) {
+/** The board where there is no room for it: the table, or one tile at a time, with the docket where it is about that tile. */
+export function SmallBoard({ index, chosen, onChoose, docket, askedPlace, saved }: SmallBoardProps) {
   const tile = chosen === null ? undefined : findTile(index, chosen);
-  if (tile || chosen === LOOSE) return <OneTile index={index} tile={tile ?? null} onChoose={onChoose} />;
+  const isOne = tile !== undefined || chosen === LOOSE;
   return (
     <>
-      {docket}
-      {index.loose.length > 0 && (
-        <p className="border-b border-hairline px-3 py-2">
-          <Button size="slim" onClick={() => onChoose(LOOSE)}>
-            {countOf(index.loose.length, "loose frame")}
-          </Button>
-        </p>
+      {(!isOne || askedPlace === chosen) && docket}
+      {isOne ? (
+        <OneTile index={index} tile={tile ?? null} onChoose={onChoose} />
+      ) : (
+        <>
+          {index.loose.length > 0 && (
+            <p className="border-b border-hairline px-3 py-2">
+              <Button size="slim" onClick={() => onChoose(LOOSE)}>
+                {countOf(index.loose.length, "loose frame")}
+              </Button>
+            </p>
+          )}
+          <div className="flex-1">
+            <TileTable index={index} chosen={chosen} onChoose={onChoose} />
+          </div>
+          <StatusLine index={index} saved={saved} />
+        </>
       )}
-      <div className="flex-1">
-        <TileTable index={index} chosen={chosen} onChoose={onChoose} />
-      </div>
-      <StatusLine index={index} saved={saved} />
     </>
   );
 }
@@ -79,7 +87,6 @@ function OneTile({ index, tile, onChoose }: OneTileProps) {
           className="max-h-[50dvh] w-full object-contain"
         />
       )}
-      {tile && tile.questions.length > 0 && <TileQuestions tile={tile} />}
       {size &&
         (tile ? (
           <Bench key={tile.name} index={index} tile={tile} widthPx={size.width} mouth={null} onClose={null} />
@@ -87,18 +94,6 @@ function OneTile({ index, tile, onChoose }: OneTileProps) {
           <LooseBench index={index} widthPx={size.width} onClose={null} />
         ))}
     </div>
-  );
-}
-
-function TileQuestions({ tile }: { readonly tile: BoardTile }) {
-  return (
-    <ul className="bg-ochre-wash px-4 py-2 text-sm text-ochre-on">
-      {tile.questions.map((question) => (
-        <li key={question.id}>
-          <span className="font-semibold">{question.message}</span> {question.evidence}
-        </li>
-      ))}
-    </ul>
   );
 }
 

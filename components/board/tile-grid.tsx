@@ -6,6 +6,7 @@ import { Bench, LooseBench } from "@/components/board/bench";
 import { ColumnNumbers } from "@/components/board/column-numbers";
 import { gridLines, neighbourPlace, type GridLine, type GridPlace } from "@/components/board/grid-rows";
 import { hasHoleLink } from "@/components/board/hole";
+import { QuestionGesture } from "@/components/board/question-gesture";
 import { TileRow } from "@/components/board/tile-row";
 import { useElementSize } from "@/components/board/use-element-size";
 import type { BoardIndex, BoardTile } from "@/lib/board/board-index";
@@ -21,6 +22,8 @@ interface TileGridProps {
   readonly asked: ReadonlySet<string>;
   /** The place the docket's question is about: brought into view when the docket turns; null: none. */
   readonly askedPlace: string | null;
+  /** What the docket's question would bring together; null: nothing. */
+  readonly askedMove: { readonly frameId: string; readonly tile: string } | null;
 }
 
 /** The padding of the well, both sides, px. */
@@ -29,7 +32,7 @@ const WELL_PADDING_PX = 32;
 const NUMBERS_AND_EDGES_PX = 62;
 
 /** The sheet: tiles in their rows on the well, the bench unfolded between them. Only rows in view are drawn. */
-export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlace }: TileGridProps) {
+export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlace, askedMove }: TileGridProps) {
   const [sizeRef, size] = useElementSize();
   const scroller = useRef<HTMLDivElement | null>(null);
   const [scrollerElement, setScrollerElement] = useState<HTMLDivElement | null>(null);
@@ -74,6 +77,9 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlac
     [sizeRef],
   );
 
+  const moveTo = askedMove && index.tiles.get(askedMove.tile);
+  const moveToLine = lines.findIndex((line) => line.kind === "row" && line.row === moveTo?.row);
+  const moveToTopPx = virtualizer.measurementsCache[moveToLine]?.start;
   const items = virtualizer.getVirtualItems();
   const tabStop = findTabStop({ index, chosen, lines: items.flatMap((item) => lines[item.index] ?? []) });
   const focusPlace = (place: GridPlace) => {
@@ -127,14 +133,30 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlac
             </div>
           ) : null;
         })}
+        {askedMove && moveTo && moveToTopPx !== undefined && (
+          <QuestionGesture
+            frameId={askedMove.frameId}
+            tile={{
+              left: tileLeftPx(moveTo, layout),
+              top: moveToTopPx,
+              width: layout.tileWidthPx,
+              height: layout.pictureHeightPx + layout.captionHeightPx,
+            }}
+          />
+        )}
       </div>
     </div>
   );
 }
 
+/** Left edge of a tile on the sheet, px. */
+function tileLeftPx({ column }: BoardTile, layout: BoardLayout): number {
+  return ((column ?? 1) - 1) * (layout.tileWidthPx + layout.gapPx) + layout.lettersWidthPx;
+}
+
 const NO_MARKS: Parameters<typeof TileRow>[0]["marks"] = [];
 
-interface LineProps extends Omit<TileGridProps, "isAllSeams" | "askedPlace"> {
+interface LineProps extends Omit<TileGridProps, "isAllSeams" | "askedPlace" | "askedMove"> {
   readonly line: GridLine;
   readonly layout: BoardLayout;
   readonly projectId: string;
@@ -148,7 +170,6 @@ function Line({ line, widthPx, ...rest }: LineProps) {
   const { index, layout, onChoose } = rest;
   if (line.kind === "loose") return <LooseBench index={index} widthPx={widthPx} onClose={() => onChoose(null)} />;
   if (line.kind === "bench") {
-    const left = ((line.tile.column ?? 1) - 1) * (layout.tileWidthPx + layout.gapPx) + layout.lettersWidthPx;
     return (
       <Bench
         key={line.tile.name}
@@ -156,7 +177,7 @@ function Line({ line, widthPx, ...rest }: LineProps) {
         tile={line.tile}
         widthPx={widthPx}
         mouth={{
-          leftPx: line.tile.row === null ? null : left,
+          leftPx: line.tile.row === null ? null : tileLeftPx(line.tile, layout),
           widthPx: layout.tileWidthPx,
           gapPx: layout.gapPx,
           opens: line.opens,

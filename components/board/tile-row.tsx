@@ -65,7 +65,7 @@ export const TileRow = memo(function TileRow({ row, tiles = [], isFirst = false,
         </span>
         {names.map((name) => {
           const hole = index.holes.get(name);
-          if (hole) return <Hole key={name} projectId={projectId} hole={hole} layout={layout} />;
+          if (hole) return <Hole key={name} {...{ projectId, hole, layout }} isAsked={rest.asked.has(name)} />;
           const tile = index.tiles.get(name) ?? byName.get(name);
           return tile ? (
             <Tile

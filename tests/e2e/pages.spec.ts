@@ -1,24 +1,15 @@
-import AxeBuilder from "@axe-core/playwright";
 import { expect, test, type Page } from "@playwright/test";
+import { findSerious } from "./support/axe";
 import { LEAD, inventPerson, signInByHttp } from "./support/people";
 import { addAccount } from "./support/server";
 import { getShoot } from "./support/shoot";
 import { makeProject, sendFile, sendFolder, waitUntilSorted } from "./support/uploads";
 
-/** WCAG 2.2 AA and below (W3C), as far as a program can tell, by axe-core. */
-const STANDARDS = ["wcag2a", "wcag2aa", "wcag21a", "wcag21aa", "wcag22aa", "best-practice"];
 const SIZES = [
   { name: "wide", width: 1440, height: 900 },
   { name: "narrow", width: 390, height: 844 },
 ] as const;
 const SCHEMES = ["light", "dark"] as const;
-
-async function findSerious(page: Page): Promise<string[]> {
-  const { violations } = await new AxeBuilder({ page }).withTags(STANDARDS).analyze();
-  return violations
-    .filter(({ impact }) => impact === "serious" || impact === "critical")
-    .map(({ id, nodes }) => `${id}: ${nodes.map(({ target }) => target.join(" ")).join(", ")}`);
-}
 
 /** Looks at one page in both schemes and at both sizes. */
 async function expectAccessible(page: Page, address: string, settled: (page: Page) => Promise<void>): Promise<void> {

@@ -16,14 +16,14 @@ const KIND = "walk-rows-turning-top-left";
 const SEED = 7;
 const SIZE = { widthPx: 600, heightPx: 400 };
 
-/** The shoot that the tests bring in, drawn once a run. */
-export async function getShoot(): Promise<Shoot> {
-  const base = path.join(process.env.E2E_STORAGE_DIR ?? "", "shoot");
+/** The shoot that the tests bring in, or one of another kind (tests/support/shoots/kinds.ts), drawn once a run. */
+export async function getShoot(kind = KIND, seed = SEED): Promise<Shoot> {
+  const base = path.join(process.env.E2E_STORAGE_DIR ?? "", `shoot-${kind}-${seed}`);
   const folder = path.join(base, "frames");
   const truthFile = path.join(base, "truth.json");
   if (!existsSync(truthFile)) {
     const draft = await mkdtemp(`${base}-`);
-    const truth = await generateShoot(KIND, SEED, path.join(draft, "frames"), SIZE);
+    const truth = await generateShoot(kind, seed, path.join(draft, "frames"), SIZE);
     await writeFile(path.join(draft, "truth.json"), JSON.stringify(truth));
     await rm(base, { recursive: true, force: true });
     await rename(draft, base);

@@ -18,6 +18,7 @@ import {
 } from "@/lib/board/docket-walk";
 import type { BoardQuestion } from "@/lib/board/model";
 import { countOf } from "@/lib/board/words";
+import { newId } from "@/lib/ids";
 
 export interface Docket {
   /** Null: none is open. */
@@ -72,7 +73,7 @@ export function useDocket({ index, chosen, onChoose }: DocketInput): Docket {
     postponed: order.filter(({ key }) => walk.postponed.includes(key)).length,
     place: question && questionPlace(index, question),
     answer: ({ label, answer }) => {
-      if (!question || !run(settleDraft(question, answer, () => crypto.randomUUID()))) return false;
+      if (!question || !run(settleDraft(question, answer, newId))) return false;
       const next = goTo(answerShown(questions, walk));
       announce(
         `${label}: answered. ${next ? `${countOf(order.length - 1, "question")} left. ${said(next)}` : "No open questions."}`,

@@ -132,7 +132,7 @@ test("a seam's question shows both tiles at the middle of what they share", () =
 test("the bench wraps evenly: 12 frames are two rows of 6, 7 are one", () => {
   expect(benchCrops(12, 1120).perRow).toBe(6);
   expect(benchCrops(7, 1120)).toEqual({ perRow: 7, widthPx: 149, heightPx: 99 });
-  expect(benchCrops(8, 1144)).toEqual({ perRow: 8, widthPx: 132, heightPx: 88 });
+  expect(benchCrops(8, 1124)).toEqual({ perRow: 8, widthPx: 130, heightPx: 87 });
   expect(benchCrops(5, 330).perRow).toBe(2);
   expect(benchCrops(3, 120).widthPx).toBe(120);
 });

@@ -194,7 +194,7 @@ function inside(wished: number, seen: number, spans: readonly { readonly from: n
 
 const BENCH_GAP_PX = 12;
 /** Narrowest and widest crop on the bench. */
-const CROP_LEAST_PX = 132;
+const CROP_LEAST_PX = 130;
 const CROP_MOST_PX = 232;
 /** In two rows and more, crops grow until they fill the width: no strip beside them stays empty. */
 const CROP_MOST_WRAPPED_PX = 280;

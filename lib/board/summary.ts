@@ -1,6 +1,6 @@
 import { expectedNoise } from "@/lib/board/expected-noise";
 import { isSetAside, type BoardIndex, type BoardTile } from "@/lib/board/board-index";
-import { countOf, exposureText, percent, trimmed } from "@/lib/board/words";
+import { countOf, exposureText, groupDigits, percent, trimmed } from "@/lib/board/words";
 import type { BoardFrame } from "@/lib/board/model";
 
 /** Exponent of display brightness: exposure values from a ratio of mean levels (analysis.md, method 8). */
@@ -13,7 +13,7 @@ export function boardStatus(index: BoardIndex): string[] {
   const overlaps = index.seams.flatMap((seam) => (seam.overlap === null ? [] : [seam.overlap]));
   const sizes = [...tiles.values()].map((tile) => tile.inUse);
   return [
-    `${tiles.size} of ${countOf(tiles.size + holes.size, "tile")}`,
+    `${groupDigits(tiles.size)} of ${countOf(tiles.size + holes.size, "tile")}`,
     ...(unplaced.length > 0 ? [`${countOf(unplaced.length, "stack")} without a place`] : []),
     `${countOf(setAside, "frame")} set aside`,
     countOf(loose.length, "loose frame"),

@@ -88,33 +88,84 @@ export function motionBlur(
   data.set(scratch.subarray(0, data.length));
 }
 
-function addShifted(
-  from: Float32Array,
-  into: Float32Array,
-  size: FrameSize,
-  shift: { xPx: number; yPx: number; weight: number },
-): void {
+interface Shift {
+  readonly xPx: number;
+  readonly yPx: number;
+  readonly weight: number;
+}
+
+function addShifted(from: Float32Array, into: Float32Array, size: FrameSize, shift: Shift): void {
   const { widthPx, heightPx } = size;
   const wholeX = Math.floor(shift.xPx);
   const wholeY = Math.floor(shift.yPx);
   const partX = shift.xPx - wholeX;
   const partY = shift.yPx - wholeY;
+  const firstX = Math.min(widthPx, Math.max(0, -wholeX));
+  const endX = Math.max(firstX, Math.min(widthPx, widthPx - 1 - wholeX));
+  const weights: Corners = [
+    shift.weight * (1 - partY) * (1 - partX),
+    shift.weight * (1 - partY) * partX,
+    shift.weight * partY * (1 - partX),
+    shift.weight * partY * partX,
+  ];
   for (let y = 0; y < heightPx; y++) {
     const above = Math.min(heightPx - 1, Math.max(0, y + wholeY)) * widthPx;
     const below = Math.min(heightPx - 1, Math.max(0, y + wholeY + 1)) * widthPx;
-    for (let x = 0; x < widthPx; x++) {
-      const left = Math.min(widthPx - 1, Math.max(0, x + wholeX));
-      const right = Math.min(widthPx - 1, Math.max(0, x + wholeX + 1));
-      const at = (y * widthPx + x) * 3;
-      for (let channel = 0; channel < 3; channel++) {
-        const upper =
-          (1 - partX) * (from[(above + left) * 3 + channel] as number) +
-          partX * (from[(above + right) * 3 + channel] as number);
-        const lower =
-          (1 - partX) * (from[(below + left) * 3 + channel] as number) +
-          partX * (from[(below + right) * 3 + channel] as number);
-        into[at + channel] = (into[at + channel] as number) + shift.weight * ((1 - partY) * upper + partY * lower);
-      }
-    }
+    const row = { at: y * widthPx, above, below, wholeX };
+    addInside(from, into, { ...row, from: firstX, to: endX }, weights);
+    for (let x = 0; x < firstX; x++) addAtEdge(from, into, { ...row, x, widthPx }, weights);
+    for (let x = endX; x < widthPx; x++) addAtEdge(from, into, { ...row, x, widthPx }, weights);
+  }
+}
+
+/** Weights of the upper left, upper right, lower left and lower right pixel. */
+type Corners = readonly [number, number, number, number];
+
+interface ShiftedRow {
+  /** Index of the row's first pixel, and of the two rows it is taken from. */
+  readonly at: number;
+  readonly above: number;
+  readonly below: number;
+  readonly wholeX: number;
+}
+
+/** Channels lie side by side and are shifted alike, so one flat loop does all three. */
+function addInside(
+  from: Float32Array,
+  into: Float32Array,
+  row: ShiftedRow & { readonly from: number; readonly to: number },
+  [upperLeft, upperRight, lowerLeft, lowerRight]: Corners,
+): void {
+  const up = (row.above + row.wholeX - row.at) * 3;
+  const down = (row.below + row.wholeX - row.at) * 3;
+  const end = (row.at + row.to) * 3;
+  for (let i = (row.at + row.from) * 3; i < end; i++) {
+    into[i] =
+      (into[i] as number) +
+      upperLeft * (from[i + up] as number) +
+      upperRight * (from[i + up + 3] as number) +
+      lowerLeft * (from[i + down] as number) +
+      lowerRight * (from[i + down + 3] as number);
+  }
+}
+
+/** Where a neighbour would lie outside, the edge is repeated. */
+function addAtEdge(
+  from: Float32Array,
+  into: Float32Array,
+  row: ShiftedRow & { readonly x: number; readonly widthPx: number },
+  [upperLeft, upperRight, lowerLeft, lowerRight]: Corners,
+): void {
+  const left = Math.min(row.widthPx - 1, Math.max(0, row.x + row.wholeX));
+  const right = Math.min(row.widthPx - 1, Math.max(0, row.x + row.wholeX + 1));
+  for (let channel = 0; channel < 3; channel++) {
+    const level = (pixel: number) => from[pixel * 3 + channel] as number;
+    const at = (row.at + row.x) * 3 + channel;
+    into[at] =
+      (into[at] as number) +
+      upperLeft * level(row.above + left) +
+      upperRight * level(row.above + right) +
+      lowerLeft * level(row.below + left) +
+      lowerRight * level(row.below + right);
   }
 }

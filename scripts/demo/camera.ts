@@ -1,7 +1,7 @@
 import { gaussianBlur, motionBlur } from "./blur";
 import type { FrameSize, Pose } from "./pose";
 import type { Raster } from "./raster";
-import { EXTRA_SCRATCH_ROWS, resample } from "./resample";
+import { resample } from "./resample";
 import { makeRandom, mixSeeds } from "./seeded-random";
 
 /** How one frame is exposed. */
@@ -38,14 +38,16 @@ const NORMALS = (() => {
 export function makeCamera(scene: Raster, size: FrameSize): Camera {
   const samples = size.widthPx * size.heightPx * 3;
   const pixels = new Float32Array(samples);
-  const scratch = new Float32Array(samples + EXTRA_SCRATCH_ROWS * size.widthPx * 3);
+  // Few frames are blurred.
+  let scratch: Float32Array | undefined;
   return {
     size,
     expose(exposure) {
-      resample(scene, exposure.pose, size, pixels, scratch);
+      resample(scene, exposure.pose, size, pixels);
       exposure.paint?.(pixels);
-      if (exposure.softSigmaPx > 0) gaussianBlur(pixels, size, exposure.softSigmaPx, scratch);
-      if (exposure.motion) motionBlur(pixels, size, exposure.motion, scratch);
+      if (exposure.softSigmaPx > 0 || exposure.motion) scratch ??= new Float32Array(samples);
+      if (exposure.softSigmaPx > 0 && scratch) gaussianBlur(pixels, size, exposure.softSigmaPx, scratch);
+      if (exposure.motion && scratch) motionBlur(pixels, size, exposure.motion, scratch);
       return develop(pixels, size, exposure);
     },
   };

@@ -1,9 +1,8 @@
-import { type Camera, makeCamera } from "./camera";
-import { DEMO_FRAME_SIZE, type DemoFrame, type DemoTruth, planDemo } from "./demo-plan";
-import { drawCobbles } from "./harbour/cobbles";
+import { availableParallelism } from "node:os";
+import { Worker } from "node:worker_threads";
+import { type DemoTruth, planDemo } from "./demo-plan";
 import { drawHarbour } from "./harbour/draw-harbour";
-import { mixSeeds } from "./seeded-random";
-import { writeFrame } from "./write-frame";
+import type { TakeFrames } from "./take-frames-thread";
 
 /** A frame that is on the disk, whole. */
 export interface WrittenFrame {
@@ -13,8 +12,8 @@ export interface WrittenFrame {
 }
 
 const DEFAULT_SEED = 1;
-const SHADING_EV = 0.22;
-const NOISE_LEVELS = 2.4;
+/** Each holds 40 MB of buffers, and the product has work of its own. */
+const MOST_THREADS = 4;
 
 /**
  * Makes the demo's shoot: 108 JPEG files of an invented harbour, as a camera would have left them on its card.
@@ -30,61 +29,38 @@ export async function makeDemoShoot(
 ): Promise<DemoTruth> {
   const truth = planDemo(seed);
   const total = truth.frames.length;
-  const scene = await drawHarbour(seed);
-  const camera = makeCamera(scene, DEMO_FRAME_SIZE);
-  const strayCamera = makeCamera(drawCobbles(DEMO_FRAME_SIZE, seed), DEMO_FRAME_SIZE);
-  const writing: Promise<Buffer>[] = [];
-  for (const [index, frame] of truth.frames.entries()) {
-    // One frame is drawn while the two before it are encoded on sharp's own threads.
-    await writing[writing.length - 2];
-    const pixels = expose(frame.place ? camera : strayCamera, frame, mixSeeds(seed, 911, index));
-    writing.push(
-      writeDemoFrame(directory, frame, pixels).then((bytes) => {
-        onWritten({ file: frame.file, total });
-        return bytes;
-      }),
-    );
+  // They start up while the scene is drawn.
+  const threads = Array.from({ length: Math.min(MOST_THREADS, availableParallelism()) }, startThread);
+  try {
+    const scene = await drawHarbour(seed);
+    const task: TakeFrames = { directory, seed, scene, next: new Int32Array(new SharedArrayBuffer(4)) };
+    await Promise.all(threads.map((thread) => takeFrames(thread, task, (file) => onWritten({ file, total }))));
+  } finally {
+    await Promise.all(threads.map(({ worker }) => worker.terminate()));
   }
-  await Promise.all(writing);
   return truth;
 }
 
-function expose(camera: Camera, frame: DemoFrame, noiseSeed: number): Buffer {
-  const pose = frame.place
-    ? frame.pose
-    : { ...frame.pose, centreXPx: camera.size.widthPx / 2, centreYPx: camera.size.heightPx / 2 };
-  return camera.expose({
-    pose,
-    softSigmaPx: frame.motion ? 0 : frame.softSigmaPx,
-    motion: frame.motion,
-    gainEv: frame.lightEv,
-    shadingEv: SHADING_EV,
-    noiseLevels: NOISE_LEVELS,
-    noiseSeed,
-  });
+interface Thread {
+  readonly worker: Worker;
+  /** Settles when it has ended: of itself, or by what went wrong in it. */
+  readonly ended: Promise<void>;
 }
 
-function writeDemoFrame(directory: string, frame: DemoFrame, pixels: Buffer): Promise<Buffer> {
-  return writeFrame(
-    directory,
-    {
-      file: frame.file,
-      orientation: 1,
-      modifiedMs: frame.localMs,
-      exif: {
-        localMs: frame.localMs,
-        hasFraction: true,
-        offsetMinutes: 120,
-        make: "Aldmoor",
-        model: "Aldmoor F2",
-        serial: "4402117",
-        lens: "Aldmoor 70-200 mm f/4",
-        exposure: "1/250",
-        aperture: 8,
-        iso: 100,
-        focalLengthMm: 105,
-      },
-    },
-    { pixels, size: DEMO_FRAME_SIZE },
-  );
+function startThread(): Thread {
+  const worker = new Worker(new URL("./thread.mjs", import.meta.url));
+  const ended = new Promise<void>((resolve, reject) => {
+    worker.once("error", reject);
+    worker.once("exit", (code) => (code === 0 ? resolve() : reject(new Error("a thread that draws the demo ended"))));
+  });
+  // Told of where it is awaited, once the scene is drawn.
+  ended.catch(() => undefined);
+  return { worker, ended };
+}
+
+/** Lets one thread take frames until none is left. */
+async function takeFrames({ worker, ended }: Thread, task: TakeFrames, onWritten: (file: string) => void) {
+  worker.on("message", onWritten);
+  worker.postMessage(task);
+  await ended;
 }

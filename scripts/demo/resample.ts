@@ -28,89 +28,77 @@ const LANCZOS = (() => {
 const clampIndex = (index: number, count: number) => (index < 0 ? 0 : index >= count ? count - 1 : index);
 
 /** Fills `into` (red, green, blue interleaved) with what the camera sees; the scene's edge is repeated outside it. */
-export function resample(scene: Raster, pose: Pose, size: FrameSize, into: Float32Array, scratch: Float32Array): void {
-  if (isPlainShift(pose)) resampleShifted(scene, pose, size, { into, scratch });
+export function resample(scene: Raster, pose: Pose, size: FrameSize, into: Float32Array): void {
+  if (isPlainShift(pose)) resampleShifted(scene, pose, size, into);
   else resampleMapped(scene, pose, size, into);
 }
 
-/** Rows of scratch that `resample` needs beyond the frame's own. */
-export const EXTRA_SCRATCH_ROWS = TAPS;
+/** Weights as whole numbers of 1/4096: whole numbers are quicker, and the same on every machine. */
+const WEIGHT_ONE = 4096;
+const WHOLE_LANCZOS = Int32Array.from(LANCZOS, (weight) => Math.round(weight * WEIGHT_ONE));
+/** What is kept of a level between the two passes: 1/64. */
+const KEPT_BITS = 6;
+const FROM_KEPT = 1 / (WEIGHT_ONE << KEPT_BITS);
 
-function resampleShifted(
-  scene: Raster,
-  pose: Pose,
-  size: FrameSize,
-  buffers: { into: Float32Array; scratch: Float32Array },
-): void {
-  const { into, scratch } = buffers;
+/** Down first, row by row, then across: each row stays near the processor between the two. */
+function resampleShifted(scene: Raster, pose: Pose, size: FrameSize, into: Float32Array): void {
   const left = pose.centreXPx - size.widthPx / 2;
   const top = pose.centreYPx - size.heightPx / 2;
   const startX = Math.floor(left);
   const startY = Math.floor(top);
-  const acrossAt = Math.round((left - startX) * PHASES) * TAPS;
-  const downAt = Math.round((top - startY) * PHASES) * TAPS;
-  const rowLength = size.widthPx * 3;
-  for (let row = 0; row < size.heightPx + TAPS - 1; row++) {
-    const sceneRow = clampIndex(startY - 2 + row, scene.heightPx);
-    shiftRow(
-      scene,
-      { sceneRow, startX, weightsAt: acrossAt },
-      scratch.subarray(row * rowLength, (row + 1) * rowLength),
-    );
-  }
-  const [a, b, c, d, e, f] = weightsAt(downAt);
+  const across = Math.round((left - startX) * PHASES) * TAPS;
+  const down = Math.round((top - startY) * PHASES) * TAPS;
+  const row = new Int32Array((size.widthPx + TAPS - 1) * 3);
   for (let y = 0; y < size.heightPx; y++) {
-    const base = y * rowLength;
-    for (let i = base; i < base + rowLength; i++) {
-      into[i] =
-        a * (scratch[i] as number) +
-        b * (scratch[i + rowLength] as number) +
-        c * (scratch[i + 2 * rowLength] as number) +
-        d * (scratch[i + 3 * rowLength] as number) +
-        e * (scratch[i + 4 * rowLength] as number) +
-        f * (scratch[i + 5 * rowLength] as number);
-    }
+    sumDown(scene, { startX: startX - 2, startY: startY + y - 2, weightsAt: down }, row);
+    sumAcross(row, across, into, y * size.widthPx * 3);
+  }
+}
+
+/** Fills `row` with levels times 64, each the weighted sum of six pixels below each other. */
+function sumDown(
+  { data, widthPx, heightPx }: Raster,
+  from: { startX: number; startY: number; weightsAt: number },
+  row: Int32Array,
+): void {
+  const [a, b, c, d, e, f] = weightsAt(from.weightsAt);
+  const rowAt = (tap: number) => (clampIndex(from.startY + tap, heightPx) * widthPx + from.startX) * 3;
+  const [i0, i1, i2, i3, i4, i5] = [rowAt(0), rowAt(1), rowAt(2), rowAt(3), rowAt(4), rowAt(5)];
+  const first = Math.min(row.length, Math.max(0, -from.startX * 3));
+  const end = Math.max(first, Math.min(row.length, (widthPx - from.startX) * 3));
+  // Channels lie side by side and are summed alike, so one flat loop does all three.
+  for (let i = first; i < end; i++) {
+    row[i] =
+      (Math.imul(a, data[i0 + i] as number) +
+        Math.imul(b, data[i1 + i] as number) +
+        Math.imul(c, data[i2 + i] as number) +
+        Math.imul(d, data[i3 + i] as number) +
+        Math.imul(e, data[i4 + i] as number) +
+        Math.imul(f, data[i5 + i] as number)) >>
+      KEPT_BITS;
+  }
+  for (let i = first - 1; i >= 0; i--) row[i] = row[i + 3] as number;
+  for (let i = end; i < row.length; i++) row[i] = row[i - 3] as number;
+}
+
+function sumAcross(row: Int32Array, at: number, into: Float32Array, start: number): void {
+  const [a, b, c, d, e, f] = weightsAt(at);
+  const count = row.length - (TAPS - 1) * 3;
+  for (let i = 0; i < count; i++) {
+    into[start + i] =
+      FROM_KEPT *
+      (Math.imul(a, row[i] as number) +
+        Math.imul(b, row[i + 3] as number) +
+        Math.imul(c, row[i + 6] as number) +
+        Math.imul(d, row[i + 9] as number) +
+        Math.imul(e, row[i + 12] as number) +
+        Math.imul(f, row[i + 15] as number));
   }
 }
 
 function weightsAt(at: number): [number, number, number, number, number, number] {
-  const weight = (tap: number) => LANCZOS[at + tap] as number;
+  const weight = (tap: number) => WHOLE_LANCZOS[at + tap] as number;
   return [weight(0), weight(1), weight(2), weight(3), weight(4), weight(5)];
-}
-
-function shiftRow(
-  scene: Raster,
-  from: { sceneRow: number; startX: number; weightsAt: number },
-  into: Float32Array,
-): void {
-  const { data, widthPx } = scene;
-  const [a, b, c, d, e, f] = weightsAt(from.weightsAt);
-  const rowStart = from.sceneRow * widthPx * 3;
-  const count = into.length / 3;
-  const firstInside = Math.min(count, Math.max(0, 2 - from.startX));
-  const afterInside = Math.max(firstInside, Math.min(count, widthPx - TAPS + 3 - from.startX));
-  const offset = rowStart + (from.startX - 2) * 3;
-  // Channels lie side by side and are shifted alike, so one flat loop does all three.
-  for (let i = firstInside * 3; i < afterInside * 3; i++) {
-    const j = offset + i;
-    into[i] =
-      a * (data[j] as number) +
-      b * (data[j + 3] as number) +
-      c * (data[j + 6] as number) +
-      d * (data[j + 9] as number) +
-      e * (data[j + 12] as number) +
-      f * (data[j + 15] as number);
-  }
-  const weights = [a, b, c, d, e, f];
-  for (let x = 0; x < count; x++) {
-    if (x === firstInside) x = afterInside;
-    for (let channel = 0; channel < 3 && x < count; channel++) {
-      into[x * 3 + channel] = weights.reduce((sum, weight, tap) => {
-        const column = clampIndex(from.startX - 2 + x + tap, widthPx);
-        return sum + weight * (data[rowStart + column * 3 + channel] as number);
-      }, 0);
-    }
-  }
 }
 
 function resampleMapped(scene: Raster, pose: Pose, size: FrameSize, into: Float32Array): void {

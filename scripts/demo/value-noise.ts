@@ -26,12 +26,12 @@ export function addNoiseOctave(field: Field, octave: NoiseOctave): void {
   const upper = new Float32Array(columns);
   const lower = new Float32Array(columns);
   const blended = new Float32Array(columns);
-  const cellOf = new Int32Array(widthPx);
   const weight = new Float32Array(widthPx);
+  const cellEnd = new Int32Array(columns);
   for (let x = 0; x < widthPx; x++) {
     const at = x / octave.cellWidthPx;
-    cellOf[x] = Math.floor(at);
     weight[x] = smooth(at - Math.floor(at));
+    cellEnd[Math.floor(at)] = x + 1;
   }
   let filledRow = Number.NaN;
   for (let y = 0; y < heightPx; y++) {
@@ -46,21 +46,24 @@ export function addNoiseOctave(field: Field, octave: NoiseOctave): void {
     for (let i = 0; i < columns; i++) {
       blended[i] = octave.strength * ((upper[i] ?? 0) + down * ((lower[i] ?? 0) - (upper[i] ?? 0)));
     }
-    addRow(data, y * widthPx, { blended, cellOf, weight });
+    addRow(data, y * widthPx, { blended, cellEnd, weight });
   }
 }
 
+/** @param row.cellEnd - for each cell of the lattice the first px after it */
 function addRow(
   data: Float32Array,
   start: number,
-  row: { blended: Float32Array; cellOf: Int32Array; weight: Float32Array },
+  row: { blended: Float32Array; cellEnd: Int32Array; weight: Float32Array },
 ): void {
-  const { blended, cellOf, weight } = row;
-  for (let x = 0; x < cellOf.length; x++) {
-    const cell = cellOf[x] as number;
+  const { blended, cellEnd, weight } = row;
+  const { length } = weight;
+  let x = 0;
+  for (let cell = 0; x < length; cell++) {
     const left = blended[cell] as number;
-    data[start + x] =
-      (data[start + x] as number) + left + (weight[x] as number) * ((blended[cell + 1] as number) - left);
+    const rise = (blended[cell + 1] as number) - left;
+    const end = cellEnd[cell] as number;
+    for (; x < end; x++) data[start + x] = (data[start + x] as number) + left + (weight[x] as number) * rise;
   }
 }
 

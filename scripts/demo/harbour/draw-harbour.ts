@@ -28,8 +28,18 @@ function layOver(raster: Raster, colours: Buffer): void {
   }
 }
 
-async function layDrawing(raster: Raster, drawing: Drawing, grain: Grain): Promise<void> {
-  const [colours, materials] = await Promise.all([drawing.renderColours(), drawing.renderMaterials()]);
+type Rendered = Promise<readonly [colours: Buffer, materials: Buffer]>;
+
+/** Begins at once, on sharp's own threads. */
+function render(drawing: Drawing): Rendered {
+  const rendered = Promise.all([drawing.renderColours(), drawing.renderMaterials()]);
+  // Told of where it is awaited; until then a failed one only waits.
+  rendered.catch(() => undefined);
+  return rendered;
+}
+
+async function layDrawing(raster: Raster, rendered: Rendered, grain: Grain): Promise<void> {
+  const [colours, materials] = await rendered;
   texturise(colours, materials, grain);
   layOver(raster, colours);
 }
@@ -100,17 +110,22 @@ const SATURATION_LOSS = 0.27;
  */
 export async function drawHarbour(seed: number): Promise<Raster> {
   const { widthPx, heightPx } = SCENE_SIZE;
-  const raster: Raster = { data: new Uint8Array(widthPx * heightPx * 3), widthPx, heightPx };
+  // Shared, so that several threads can take frames of it.
+  const data = new Uint8Array(new SharedArrayBuffer(widthPx * heightPx * 3));
+  const raster: Raster = { data, widthPx, heightPx };
+  // Both are drawn while sky and grain are made here.
+  const background = render(drawBackground(seed));
+  const town = render(drawTown(seed));
   const grain = makeGrain(seed);
   drawSky(raster, seed);
-  await layDrawing(raster, drawBackground(seed), grain);
+  await layDrawing(raster, background, grain);
   hazeOver(raster);
-  await layDrawing(raster, drawTown(seed), grain);
+  await layDrawing(raster, town, grain);
   drawForeshore(raster, grain, seed);
   const ashore = new Drawing(SCENE_SIZE);
   drawForeshoreThings(ashore, seed);
   for (const boat of planStranded(seed)) drawBoat(ashore, boat, "whole");
-  await layDrawing(raster, ashore, grain);
+  await layDrawing(raster, render(ashore), grain);
   const afloat = planAfloat(seed);
   const mirrored = new Drawing(SCENE_SIZE);
   for (const boat of afloat) drawBoat(mirrored, boat, "mirrored");
@@ -118,7 +133,7 @@ export async function drawHarbour(seed: number): Promise<Raster> {
   const upright = new Drawing(SCENE_SIZE);
   drawWaterMarks(upright, seed);
   for (const boat of afloat) drawBoat(upright, boat, "afloat");
-  await layDrawing(raster, upright, grain);
+  await layDrawing(raster, render(upright), grain);
   light(raster, seed);
   softenLikeALens(raster);
   return raster;

@@ -5,16 +5,11 @@ import { questions } from "@/db/schema/board";
 import { files, frames, stacks } from "@/db/schema/frames";
 import { projects } from "@/db/schema/projects";
 import type { ProjectAccess } from "@/lib/auth/gate";
+import { findPersonChoices } from "@/lib/board/choice-reads";
+import { sortingFacts } from "@/lib/board/sorting-facts";
 import type { FileId } from "@/lib/ids";
 import { stemOf } from "@/lib/intake/picture-files";
-import {
-  type FixedStack,
-  SOFT_LIMIT,
-  type SortFacts,
-  type SortFrame,
-  type SortInput,
-  type SortOptions,
-} from "@/lib/sorting/types";
+import { SOFT_LIMIT, type SortFrame, type SortInput, type SortOptions } from "@/lib/sorting/types";
 
 /** What a sorting works on, and the state of the project that it was read at. */
 export interface SortBasis {
@@ -23,6 +18,8 @@ export interface SortBasis {
   readonly contentVersion: number;
   /** The board covers this content already. */
   readonly isCovered: boolean;
+  /** Only what people decided is kept. */
+  readonly isAnew: boolean;
   /** Of each frame, the file whose registration image stands for it. */
   readonly fileIds: ReadonlyMap<string, FileId>;
 }
@@ -40,23 +37,27 @@ export async function findSortBasis(access: ProjectAccess): Promise<SortBasis | 
       .where(and(eq(questions.projectId, projectId), isNotNull(questions.settledAtMs))),
   ]);
   if (!project) return null;
-  const { revision, contentVersion, sortedVersion, ...settings } = project;
+  const { revision, contentVersion, sortedVersion, isAnew, rows, columns, ...settings } = project;
+  // Read after the rest: should somebody choose in between, the revision has moved on and the proposal is not stored.
+  const choices = await findPersonChoices(projectId);
+  const settledQuestionKeys = questionRows.map(({ key }) => key);
+  const decided = { frames: frameRows, stacks: stackRows, grid: { rows, columns }, settledQuestionKeys, choices };
   return {
     input: {
       frames: frameRows.flatMap(toSortFrame),
-      facts: toFacts(frameRows, stackRows, questionRows),
+      facts: sortingFacts(decided, isAnew),
       options: toOptions(settings),
     },
     revision,
     contentVersion,
     isCovered: contentVersion === sortedVersion,
+    isAnew,
     fileIds: new Map(frameRows.map(({ id, fileId }) => [id, fileId])),
   };
 }
 
 type ProjectId = ProjectAccess["projectId"];
 type FrameRow = Awaited<ReturnType<typeof selectFrames>>[number];
-type StackRow = Awaited<ReturnType<typeof selectStacks>>[number];
 
 function selectProject(projectId: ProjectId) {
   return database()
@@ -64,6 +65,9 @@ function selectProject(projectId: ProjectId) {
       revision: projects.revision,
       contentVersion: projects.contentVersion,
       sortedVersion: projects.sortedVersion,
+      isAnew: projects.isAnewWanted,
+      rows: projects.rows,
+      columns: projects.columns,
       overlapWanted: projects.overlapWanted,
       framesLeast: projects.framesLeast,
       framesMost: projects.framesMost,
@@ -104,6 +108,7 @@ function selectStacks(projectId: ProjectId) {
       column: stacks.column,
       take: stacks.take,
       isChosenTake: stacks.isChosenTake,
+      referenceId: stacks.referenceId,
       isSettled: stacks.isSettled,
       placedBy: stacks.placedBy,
     })
@@ -115,26 +120,6 @@ function selectStacks(projectId: ProjectId) {
 function toSortFrame({ id, name, folder, lastModifiedMs, metadata, measurements }: FrameRow): SortFrame[] {
   if (!metadata || !measurements) return [];
   return [{ id, name: stemOf(name), folder, lastModifiedMs, metadata, measurements }];
-}
-
-function toFacts(
-  frameRows: readonly FrameRow[],
-  stackRows: readonly StackRow[],
-  questionRows: readonly { readonly key: string }[],
-): SortFacts {
-  const byPerson = frameRows.filter(({ placedBy }) => placedBy === "person");
-  return {
-    stacks: stackRows.map((stack) => toFixedStack(stack, frameRows)).filter(({ frameIds }) => frameIds.length > 0),
-    looseFrameIds: byPerson.filter(({ stackId }) => stackId === null).map(({ id }) => id),
-    setAside: Object.fromEntries(byPerson.map(({ id, setAside }) => [id, setAside])),
-    settledQuestionKeys: questionRows.map(({ key }) => key),
-  };
-}
-
-function toFixedStack({ isSettled, placedBy, ...stack }: StackRow, frameRows: readonly FrameRow[]): FixedStack {
-  const own = frameRows.filter(({ stackId }) => stackId === stack.id);
-  own.sort((a, b) => (a.orderTaken ?? 0) - (b.orderTaken ?? 0));
-  return { ...stack, frameIds: own.map(({ id }) => id), byPerson: isSettled || placedBy === "person" };
 }
 
 function toOptions(

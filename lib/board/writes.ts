@@ -1,13 +1,18 @@
 import "server-only";
-import { and, eq, inArray, isNull, notInArray, sql } from "drizzle-orm";
+import { and, eq, inArray, isNotNull, isNull, notInArray, sql } from "drizzle-orm";
 import { type Transaction, writeTransaction } from "@/db/client";
 import { changes, questions, seams } from "@/db/schema/board";
 import { frames, stacks } from "@/db/schema/frames";
 import { projects } from "@/db/schema/projects";
 import type { ProjectAccess } from "@/lib/auth/gate";
+import type { Change } from "@/lib/board/changes";
+import { diffBoards } from "@/lib/board/diff-boards";
+import { getBoardWithin } from "@/lib/board/reads";
+import { inheritedShares } from "@/lib/board/sorting-facts";
 import type { SortBasis } from "@/lib/board/sorting-reads";
+import { countOf } from "@/lib/board/words";
 import { publish } from "@/lib/events/publish";
-import { frameIdSchema, newId, type ProjectId, stackIdSchema } from "@/lib/ids";
+import { frameIdSchema, newId, type ProjectId, stackIdSchema, type UserId } from "@/lib/ids";
 import type { Proposal, ProposedFrame, ProposedQuestion, ProposedStack } from "@/lib/sorting/types";
 
 /** Rows of one insert: SQLite takes 32 766 values a statement, and a stack has 16. */
@@ -26,6 +31,7 @@ export async function storeProposal(
   const { projectId } = access;
   return writeTransaction(async (tx) => {
     const revision = basis.revision + 1;
+    const before = await getBoardWithin(tx, projectId);
     const [project] = await tx
       .update(projects)
       .set({
@@ -37,6 +43,7 @@ export async function storeProposal(
         sortedVersion: basis.contentVersion,
         sortedAtMs: nowMs,
         sortError: null,
+        ...(basis.isAnew && { isAnewWanted: false }),
       })
       .where(
         and(
@@ -47,11 +54,12 @@ export async function storeProposal(
       )
       .returning({ id: projects.id });
     if (!project) return false;
-    await storeStacks(tx, projectId, proposal.stacks);
+    await storeStacks(tx, projectId, proposal.stacks, await findShares(tx, projectId, proposal));
     await storeFrames(tx, projectId, proposal.frames);
     await storeSeams(tx, projectId, proposal);
     await storeQuestions(tx, projectId, proposal.questions);
-    await recordChange(tx, projectId, { revision, payload: summaryOf(proposal), atMs: nowMs });
+    const steps = diffBoards(before, await getBoardWithin(tx, projectId));
+    await recordSorting(tx, projectId, { revision, proposal, isAnew: basis.isAnew, steps, atMs: nowMs });
     await publish(tx, projectId, { type: "board.changed", revision }, nowMs);
     return true;
   });
@@ -65,13 +73,32 @@ export async function recordSortFailure(access: ProjectAccess, sortError: string
   });
 }
 
+/** Whoever merges most of a new stack's frames now. */
+async function findShares(tx: Transaction, projectId: ProjectId, proposal: Proposal): Promise<Map<string, UserId>> {
+  const rows = await tx
+    .select({ frameId: frames.id, userId: stacks.shareUserId })
+    .from(frames)
+    .innerJoin(stacks, eq(stacks.id, frames.stackId))
+    .where(and(eq(frames.projectId, projectId), isNotNull(stacks.shareUserId)));
+  const shareOfFrame = new Map(rows.flatMap(({ frameId, userId }) => (userId ? [[frameId as string, userId]] : [])));
+  return inheritedShares(proposal.stacks, shareOfFrame);
+}
+
 /** Keeps a known stack's mark, share and who placed it: the computation knows nothing of them. */
-async function storeStacks(tx: Transaction, projectId: ProjectId, proposed: readonly ProposedStack[]): Promise<void> {
+async function storeStacks(
+  tx: Transaction,
+  projectId: ProjectId,
+  proposed: readonly ProposedStack[],
+  shares: ReadonlyMap<string, UserId>,
+): Promise<void> {
   const ids = proposed.map(({ id }) => stackIdSchema.parse(id));
   await tx.delete(stacks).where(and(eq(stacks.projectId, projectId), notInArray(stacks.id, ids)));
   // Places are unique at every moment: all are freed before the new ones are taken.
   await tx.update(stacks).set({ row: null, column: null }).where(eq(stacks.projectId, projectId));
-  const rows = proposed.map((stack) => toStackRow(projectId, stack));
+  const rows = proposed.map((stack) => ({
+    ...toStackRow(projectId, stack),
+    shareUserId: shares.get(stack.id) ?? null,
+  }));
   for (const part of parts(rows)) {
     await tx
       .insert(stacks)
@@ -127,8 +154,9 @@ async function storeFrames(tx: Transaction, projectId: ProjectId, proposed: read
         shiftXPx: frame.shift?.xPx ?? null,
         shiftYPx: frame.shift?.yPx ?? null,
         pauseBeforeSeconds: frame.pauseBeforeSeconds,
-        confidence: frame.confidence,
-        reason: frame.reason,
+        // Of what a person did, the person's word stays.
+        confidence: sql`case when ${frames.placedBy} = 'person' then ${frames.confidence} else ${frame.confidence} end`,
+        reason: sql`case when ${frames.placedBy} = 'person' then ${frames.reason} else ${frame.reason} end`,
       })
       .where(and(eq(frames.id, frameIdSchema.parse(frame.id)), eq(frames.projectId, projectId)));
   }
@@ -179,21 +207,25 @@ async function storeQuestions(
   }
 }
 
-async function recordChange(
-  tx: Transaction,
-  projectId: ProjectId,
-  change: { revision: number; payload: Readonly<Record<string, unknown>>; atMs: number },
-): Promise<void> {
-  await tx.insert(changes).values({ id: newId(), projectId, userId: null, type: "sort", ...change });
+interface Sorting {
+  readonly revision: number;
+  readonly proposal: Proposal;
+  readonly isAnew: boolean;
+  readonly steps: readonly Change[];
+  readonly atMs: number;
 }
 
-function summaryOf(proposal: Proposal) {
-  return {
-    engineVersion: proposal.engineVersion,
+async function recordSorting(tx: Transaction, projectId: ProjectId, sorting: Sorting): Promise<void> {
+  const { proposal, isAnew, ...change } = sorting;
+  const counts = {
     frames: proposal.frames.length,
     stacks: proposal.stacks.length,
     questions: proposal.questions.length,
   };
+  const result = `${countOf(counts.frames, "frame")} into ${countOf(counts.stacks, "stack")}`;
+  const sentence = isAnew ? `sorted ${result} anew; what people decided stayed` : `sorted ${result}`;
+  const payload = { engineVersion: proposal.engineVersion, isAnew, ...counts };
+  await tx.insert(changes).values({ id: newId(), projectId, userId: null, type: "sort", payload, sentence, ...change });
 }
 
 function parts<Row>(rows: readonly Row[]): Row[][] {

@@ -5,6 +5,7 @@ import { files, uploads } from "@/db/schema/frames";
 import { members, projects } from "@/db/schema/projects";
 import { removals } from "@/db/schema/removals";
 import type { ProjectAccess, SignedInUser } from "@/lib/auth/gate";
+import { wantSortingAnew } from "@/lib/board/sorting-writes";
 import { AppError } from "@/lib/errors/app-error";
 import { newId, projectIdSchema, type ProjectId } from "@/lib/ids";
 import { requestJob } from "@/lib/jobs/queue";
@@ -35,12 +36,24 @@ export async function createProject(
   return id;
 }
 
+/** What stacks and places follow from: changed, the earlier results no longer hold. The rest only raises questions. */
+const SORTED_BY = ["longestPauseSeconds", "expectedRows", "expectedColumns"] as const;
+
 /** Name, archive and settings at once, as PATCH sends them. What the proposal rests on asks for a new sorting. */
 export async function changeProject(access: ProjectAccess, change: ProjectChange): Promise<void> {
   const { framesPerTile, isArchived, name, ...settings } = change;
   const asksForSorting = framesPerTile !== undefined || Object.keys(settings).length > 0;
   const nowMs = Date.now();
   await writeTransaction(async (tx) => {
+    const [before] = await tx
+      .select({
+        longestPauseSeconds: projects.longestPauseSeconds,
+        expectedRows: projects.expectedRows,
+        expectedColumns: projects.expectedColumns,
+      })
+      .from(projects)
+      .where(eq(projects.id, access.projectId));
+    const isAnew = SORTED_BY.some((name) => settings[name] !== undefined && settings[name] !== before?.[name]);
     await tx
       .update(projects)
       .set({
@@ -48,10 +61,11 @@ export async function changeProject(access: ProjectAccess, change: ProjectChange
         ...(name !== undefined && { name }),
         ...(framesPerTile && { framesLeast: framesPerTile.least, framesMost: framesPerTile.most }),
         ...(isArchived !== undefined && { archivedAtMs: isArchived ? nowMs : null }),
-        ...(asksForSorting && { contentVersion: sql`${projects.contentVersion} + 1` }),
+        ...(asksForSorting && !isAnew && { contentVersion: sql`${projects.contentVersion} + 1` }),
       })
       .where(eq(projects.id, access.projectId));
-    if (asksForSorting) await requestJob(tx, sortJobRequest(access.projectId, 0), nowMs);
+    if (isAnew) await wantSortingAnew(tx, access, "changed settings that the sorting follows", nowMs);
+    else if (asksForSorting) await requestJob(tx, sortJobRequest(access.projectId, 0), nowMs);
   });
 }
 

@@ -37,7 +37,8 @@ export function appraiseStack(input: AppraisalInput): StackDraft {
     frames.map((frame, at) => reasonFor(frame, sharpness[at], deviations[at], input)),
     frames.map((frame) => Object.hasOwn(input.settled, frame.id)),
   );
-  const reference = chooseReference(frames, sharpness, setAside);
+  const chosen = frames.find((frame, at) => frame.id === input.fixed?.referenceId && setAside[at] === null);
+  const reference = chosen ?? chooseReference(frames, sharpness, setAside);
   const hub = reference ?? frames[0];
   if (!hub) throw new RangeError("a stack needs one frame or more");
   const origin = chain[frames.indexOf(hub)] ?? null;

@@ -37,7 +37,7 @@ export function gatherStacks(
   const stackOf = fixedStackOf(facts);
   const members = new Map<string, { fixed: FixedStack | null; frames: SortFrame[] }>();
   const usedIds = new Set(facts.stacks.map((stack) => stack.id));
-  for (const run of runs) {
+  for (const run of runs.flatMap((each) => cutAtFacts(each, stackOf))) {
     const fixed = run.flatMap((frame) => stackOf.get(frame.id) ?? [])[0] ?? null;
     const id = fixed?.id ?? freeId(run[0]?.id ?? "", usedIds);
     usedIds.add(id);
@@ -50,6 +50,20 @@ export function gatherStacks(
   return [...members.entries()]
     .map(([id, { fixed, frames }]) => ({ id, fixed, frames: [...frames].sort((a, b) => at(a) - at(b)) }))
     .sort((a, b) => at(a.frames[0]) - at(b.frames[0]));
+}
+
+/** A new frame may join two fixed stacks into one run; it then goes with the earlier one, and they stay two. */
+function cutAtFacts(run: readonly SortFrame[], stackOf: ReadonlyMap<string, FixedStack>): SortFrame[][] {
+  const parts: { fixed: FixedStack | null; frames: SortFrame[] }[] = [];
+  for (const frame of run) {
+    const fixed = stackOf.get(frame.id) ?? null;
+    const last = parts.at(-1);
+    if (last && (!fixed || !last.fixed || last.fixed === fixed)) {
+      last.frames.push(frame);
+      last.fixed ??= fixed;
+    } else parts.push({ fixed, frames: [frame] });
+  }
+  return parts.map(({ frames }) => frames);
 }
 
 function freeId(frameId: string, used: ReadonlySet<string>): string {

@@ -1,4 +1,5 @@
 import type { StackDraft } from "./draft";
+import { mode } from "./robust";
 import { boxOf } from "./walks";
 import type { Spot } from "./place-stacks";
 
@@ -16,23 +17,42 @@ const NOWHERE: Place = { row: null, column: null };
  * before A1 has then no place.
  */
 export function numberPlaces(stacks: readonly StackDraft[], spots: readonly Spot[]): Place[] {
-  const box = boxOf(spots.flatMap((spot) => spot.label ?? []));
-  if (!box) return spots.map(() => NOWHERE);
-  const anchor = stacks.find((stack) => stack.fixed?.row && spots[stack.index]?.label);
-  const label = anchor && spots[anchor.index]?.label;
-  let down = 1 - box.top;
-  let across = 1 - box.left;
-  if (anchor?.fixed && label) {
-    down = (anchor.fixed.row ?? 1) - label.row;
-    across = (anchor.fixed.column ?? 1) - label.column;
-    if (!stacks.some((stack) => stack.fixed?.byPerson && stack.fixed.row !== null)) {
-      down = Math.max(down, 1 - box.top);
-      across = Math.max(across, 1 - box.left);
+  const box = boxOf(spots.flatMap((spot) => spot.label ?? [])) ?? { top: 1, left: 1 };
+  const placed = stacks.flatMap(({ index, fixed }) => {
+    const { row = null, column = null } = fixed ?? {};
+    return row === null || column === null ? [] : [{ row, column, label: spots[index]?.label ?? null }];
+  });
+  const isAbsolute = stacks.some(({ fixed }) => fixed?.byPerson && fixed.row !== null);
+  const down = lineOffset(
+    placed.flatMap(({ row, label }) => (label ? [row - label.row] : [])),
+    box.top,
+    isAbsolute,
+  );
+  const across = lineOffset(
+    placed.flatMap(({ column, label }) => (label ? [column - label.column] : [])),
+    box.left,
+    isAbsolute,
+  );
+  return spots.map((spot, index) => {
+    const fixed = stacks[index]?.fixed;
+    // By the fact itself, not by its label: what pictures say cannot move it.
+    if (fixed && fixed.row !== null && fixed.column !== null) {
+      return { row: fixed.row + down.found, column: fixed.column + across.found };
     }
-  }
-  return spots.map((spot) => {
     if (!spot.label) return NOWHERE;
-    const [row, column] = [spot.label.row + down, spot.label.column + across];
+    const [row, column] = [spot.label.row + down.offset, spot.label.column + across.offset];
     return row < 1 || column < 1 ? NOWHERE : { row, column };
   });
+}
+
+/**
+ * @param known - line minus label of each stack that has both
+ * @param first - the least label
+ * @returns what is added to labels, and how many lines were found before the first
+ */
+function lineOffset(known: readonly number[], first: number, isAbsolute: boolean): { offset: number; found: number } {
+  const usual = mode(known);
+  if (usual === undefined) return { offset: 1 - first, found: 0 };
+  const found = isAbsolute ? 0 : Math.max(0, 1 - first - usual);
+  return { offset: usual + found, found };
 }

@@ -79,6 +79,8 @@ export function placeStacks(
   const spots = stacks.map(({ index, fixed }): Spot => {
     const none = { label: null, isStray: false, isCertainStray: false, isUnsure: false };
     if (fixed && fixed.row !== null) return { ...none, label: labels.get(index) ?? null, basis: "fixed" };
+    // A person took it out of the grid, or made it without a place.
+    if (fixed?.byPerson) return { ...none, basis: "none" };
     if (strays.has(index)) return { ...none, basis: "none", isStray: true, isCertainStray: strays.get(index) === true };
     const label = labels.get(index);
     if (label) return { ...none, label, basis: "pictures" };

@@ -46,8 +46,10 @@ export interface FixedStack {
   readonly column: number | null;
   readonly take: number;
   readonly isChosenTake: boolean;
-  /** A person placed or settled it: its row and column are absolute and its frames final. */
+  /** A person placed or settled it: its row and column (or that it has none) are absolute and its frames final. */
   readonly byPerson: boolean;
+  /** Chosen by a person: it stays the reference as long as it is in use. */
+  readonly referenceId?: string | null;
 }
 
 export interface SortFacts {
@@ -58,6 +60,8 @@ export interface SortFacts {
   readonly setAside: Readonly<Record<string, SetAsideReason | null>>;
   /** Keys of questions that a person has settled; they are not asked again. */
   readonly settledQuestionKeys: readonly string[];
+  /** The grid is this large at the least: people may have added empty rows or columns. Left out: as the frames fill it. */
+  readonly grid?: { readonly rows: number; readonly columns: number };
 }
 
 /** Settings a project may give; null: found by the computation. */

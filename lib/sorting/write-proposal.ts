@@ -25,11 +25,10 @@ export function writeProposal(draft: SortedDraft, facts: SortFacts): Proposal {
     .sort((a, b) => b.severity - a.severity || (a.key < b.key ? -1 : 1));
   return {
     engineVersion: ENGINE_VERSION,
-    rows: draft.places.reduce((most, place) => Math.max(most, place.row ?? 0), 0),
-    columns: draft.places.reduce((most, place) => Math.max(most, place.column ?? 0), 0),
+    ...gridSize(draft, facts),
     shotOrder: shotOrderOf(draft),
     stacks: kept.map((stack) => writeStack(draft, stack, draft.positions[stack.index] ?? null)),
-    frames: writeFrames(draft, kept),
+    frames: writeFrames(draft, kept, facts),
     seams: draft.seams.map((seam) => ({
       stackId: draft.stacks[seam.a]?.id ?? "",
       neighbourId: draft.stacks[seam.b]?.id ?? "",
@@ -39,6 +38,16 @@ export function writeProposal(draft: SortedDraft, facts: SortFacts): Proposal {
     questions,
     longestPauseSeconds: draft.split.limit?.seconds ?? null,
   };
+}
+
+/** As far as stacks lie, and no smaller than it was, lines found before the first one added. */
+function gridSize({ stacks, places }: SortedDraft, { grid }: SortFacts): Pick<Proposal, "rows" | "columns"> {
+  const most = (axis: "row" | "column", known: number | undefined): number => {
+    const fixed = stacks.find((stack) => stack.fixed?.[axis]);
+    const found = fixed ? (places[fixed.index]?.[axis] ?? 0) - (fixed.fixed?.[axis] ?? 0) : 0;
+    return places.reduce((last, place) => Math.max(last, place[axis] ?? 0), known === undefined ? 0 : known + found);
+  };
+  return { rows: most("row", grid?.rows), columns: most("column", grid?.columns) };
 }
 
 function shotOrderOf(draft: SortedDraft): Proposal["shotOrder"] {
@@ -75,6 +84,9 @@ const EVEN_CHANCE = 4;
 
 function placeReason(draft: SortedDraft, stack: StackDraft): { confidence: number; reason: string } {
   const spot = draft.layout.spots[stack.index];
+  if (draft.places[stack.index]?.row === null && stack.fixed?.byPerson) {
+    return { confidence: 1, reason: "Left without a place by a person." };
+  }
   if (draft.places[stack.index]?.row === null) return { confidence: 0, reason: "Nothing tells where it belongs." };
   if (spot?.basis === "fixed") {
     const isPerson = stack.fixed?.byPerson === true;
@@ -105,7 +117,7 @@ function placeReason(draft: SortedDraft, stack: StackDraft): { confidence: numbe
   };
 }
 
-function writeFrames(draft: SortedDraft, kept: readonly StackDraft[]): ProposedFrame[] {
+function writeFrames(draft: SortedDraft, kept: readonly StackDraft[], facts: SortFacts): ProposedFrame[] {
   const homes = new Map<string, { stack: StackDraft; entry: FrameDraft }>();
   for (const stack of kept) for (const entry of stack.frames) homes.set(entry.frame.id, { stack, entry });
   return draft.order.map((frame, orderTaken): ProposedFrame => {
@@ -113,7 +125,7 @@ function writeFrames(draft: SortedDraft, kept: readonly StackDraft[]): ProposedF
     const before = draft.order[orderTaken - 1];
     const pauseBeforeSeconds = before ? pauseSeconds(before, frame) : null;
     const common = { id: frame.id, orderTaken, pauseBeforeSeconds };
-    if (!home) return { ...common, ...looseFrame(draft, frame) };
+    if (!home) return { ...common, ...looseFrame(draft, frame, facts) };
     const { entry, stack } = home;
     return {
       ...common,
@@ -128,11 +140,12 @@ function writeFrames(draft: SortedDraft, kept: readonly StackDraft[]): ProposedF
 
 type LooseFrame = Omit<ProposedFrame, "id" | "orderTaken" | "pauseBeforeSeconds">;
 
-function looseFrame(draft: SortedDraft, frame: SortFrame): LooseFrame {
+function looseFrame(draft: SortedDraft, frame: SortFrame, { setAside }: SortFacts): LooseFrame {
   const isBlack = draft.black.has(frame.id);
+  const byPerson = Object.hasOwn(setAside, frame.id);
   return {
     stackId: null,
-    setAside: isBlack ? "stray" : null,
+    setAside: byPerson ? (setAside[frame.id] ?? null) : isBlack ? "stray" : null,
     relativeSharpness: null,
     shift: null,
     confidence: isBlack ? 0.99 : 0.8,

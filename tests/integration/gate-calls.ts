@@ -102,6 +102,9 @@ export const GATE_CALLS: Readonly<Record<string, readonly GateCall[]>> = {
   "api/projects/[projectId]/progress/route.ts": look(ofProject("/progress")),
   "api/projects/[projectId]/record/route.ts": look(ofProject("/record")),
   "api/projects/[projectId]/record/mine/route.ts": look(ofProject("/record/mine")),
+  "api/projects/[projectId]/sorting/route.ts": [
+    { method: "POST", audience: "edit", status: 202, ...ofProject("/sorting"), init: () => ({ method: "POST" }) },
+  ],
   "api/projects/[projectId]/manifest/route.ts": look(ofProject("/manifest")),
   "api/projects/[projectId]/manifest.csv/route.ts": look(ofProject("/manifest.csv")),
   "api/projects/[projectId]/frames/[frameId]/crop/route.ts": look(ofFrame("crop?x=0&y=0&w=16&h=16")),

@@ -1,4 +1,5 @@
 import { Picture } from "@/components/board/picture";
+import { TilePeople } from "@/components/together/tile-people";
 import type { BoardTile } from "@/lib/board/board-index";
 import type { BoardLayout, PicturePart } from "@/lib/board/layout";
 import { previewUrl, thumbnailUrl } from "@/lib/frames/picture-urls";
@@ -35,6 +36,7 @@ export function TilePicture({ projectId, tile, part, layout }: TilePictureProps)
           }}
         />
       )}
+      {layout.size !== "map" && <TilePeople tile={tile.name} />}
     </span>
   );
 }

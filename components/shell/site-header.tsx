@@ -11,10 +11,12 @@ interface SiteHeaderProps {
   readonly person: { readonly name: string; readonly email: string } | null;
   /** Beside the mark: the project's name and what belongs to it. */
   readonly children?: ReactNode;
+  /** At the right, before the menus. */
+  readonly beside?: ReactNode;
 }
 
 /** The line at the top of every page. */
-export async function SiteHeader({ person, children }: SiteHeaderProps) {
+export async function SiteHeader({ person, children, beside }: SiteHeaderProps) {
   const theme = parseTheme((await cookies()).get(THEME_COOKIE)?.value);
   return (
     <header className="flex min-h-14 flex-wrap items-center gap-x-5 gap-y-1 px-4 py-2 sm:px-5">
@@ -26,7 +28,8 @@ export async function SiteHeader({ person, children }: SiteHeaderProps) {
         <span className="max-[22rem]:sr-only">Stackyard</span>
       </Link>
       {children !== undefined && <div className="min-w-0 max-sm:order-last max-sm:w-full">{children}</div>}
-      <div className="ml-auto flex items-center gap-1">
+      <div className="ml-auto flex flex-wrap items-center justify-end gap-1">
+        {beside}
         <ThemeMenu initial={theme} />
         {person && <AccountMenu name={person.name} email={person.email} />}
       </div>

@@ -28,13 +28,26 @@ export const conflictSchema = z.object({
 });
 export type Conflict = z.infer<typeof conflictSchema>;
 
+const toldStepSchema = z.object({
+  revision: z.int(),
+  person: z.object({ id: z.string(), name: z.string() }),
+  sentence: z.string(),
+});
+export type ToldStep = z.infer<typeof toldStepSchema>;
+
 /**
  * `GET /api/projects/{id}/board?since=REVISION`: nothing new; the steps in between; or the whole board, where the
  * steps are too many, or hold what steps do not carry (frames that came in).
  */
 export const boardSinceSchema = z.union([
   z.object({ unchanged: z.literal(true), revision: z.int() }),
-  z.object({ since: z.int(), revision: z.int(), changes: z.array(changeSchema) }),
+  z.object({
+    since: z.int(),
+    revision: z.int(),
+    changes: z.array(changeSchema),
+    /** Who did the newest of them, oldest first. */
+    told: z.array(toldStepSchema),
+  }),
   z.intersection(boardSchema, z.object({ full: z.literal(true) })),
 ]);
 

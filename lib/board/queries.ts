@@ -10,6 +10,8 @@ export const boardKeys = {
   all: (projectId: string) => ["projects", projectId, "board"] as const,
   board: (projectId: string) => ["projects", projectId, "board", "whole"] as const,
   since: (projectId: string, revision: number) => ["projects", projectId, "board", "since", revision] as const,
+  /** What others did lately, as far as this page was told. */
+  told: (projectId: string) => ["projects", projectId, "board", "told"] as const,
   undo: (projectId: string) => ["projects", projectId, "board", "undo"] as const,
 };
 
@@ -72,6 +74,7 @@ export async function catchUpBoard(client: QueryClient, projectId: string, revis
       retry: 2,
     });
     client.setQueryData(queryKey, (now) => now && afterDifference(now, answer));
+    if ("told" in answer) client.setQueryData(boardKeys.told(projectId), answer.told);
     const now = client.getQueryData(queryKey);
     if (now && now.revision > known.revision) continue;
     // The difference did not fit what is known, or the server knows of nothing newer: all of it once.

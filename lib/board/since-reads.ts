@@ -2,6 +2,7 @@ import "server-only";
 import { and, asc, eq, gt, sql } from "drizzle-orm";
 import type { z } from "zod";
 import { database } from "@/db/client";
+import { users } from "@/db/schema/accounts";
 import { changes } from "@/db/schema/board";
 import type { ProjectAccess } from "@/lib/auth/gate";
 import type { boardSinceSchema } from "@/lib/board/command-answers";
@@ -9,6 +10,9 @@ import { getBoard, getRevision } from "@/lib/board/reads";
 
 /** More steps than this weigh as much as the board, and take longer to apply than to draw anew. Our own. */
 const STEPS_MOST = 500;
+
+/** Who did what is told of the newest few steps: a page says no more at once. */
+const TOLD_MOST = 3;
 
 type BoardSince = z.infer<typeof boardSinceSchema>;
 
@@ -33,12 +37,22 @@ async function listSteps({ projectId }: ProjectAccess, since: number): Promise<B
     .where(later);
   if (!size || size.newest === null || size.sortings > 0 || size.steps > STEPS_MOST) return null;
   const rows = await database()
-    .select({ revision: changes.revision, steps: changes.steps })
+    .select({
+      revision: changes.revision,
+      steps: changes.steps,
+      personId: users.id,
+      name: users.name,
+      sentence: changes.sentence,
+    })
     .from(changes)
+    .leftJoin(users, eq(users.id, changes.userId))
     .where(later)
     .orderBy(asc(changes.revision));
   // Every revision has its row; where one is missing (since is too old, or from another database) steps tell nothing.
   const newest = rows.at(-1)?.revision ?? since;
   if (rows.length !== newest - since || rows.length < size.rows) return null;
-  return { since, revision: newest, changes: rows.flatMap(({ steps }) => steps) };
+  const told = rows.slice(-TOLD_MOST).flatMap(({ personId, name, sentence, revision }) => {
+    return personId === null || name === null ? [] : [{ revision, person: { id: personId, name }, sentence }];
+  });
+  return { since, revision: newest, changes: rows.flatMap(({ steps }) => steps), told };
 }

@@ -4,6 +4,7 @@ import { useEffect } from "react";
 import { boardKeys, catchUpBoard } from "@/lib/board/queries";
 import { eventsUrl, type ProjectEvent, projectEventSchema, STREAM_EVENT_NAME } from "@/lib/events/schema";
 import { frameKeys } from "@/lib/frames/queries";
+import { presenceKeys } from "@/lib/presence/queries";
 import { projectKeys } from "@/lib/projects/queries";
 
 /** Many files in a second must not be as many fetches, ms. */
@@ -74,6 +75,10 @@ function gatherInvalidations(client: QueryClient, projectId: string) {
   };
   return {
     add(event: ProjectEvent) {
+      if (event.type === "people.moved") {
+        void client.invalidateQueries({ queryKey: presenceKeys.all(projectId) });
+        return;
+      }
       // People wait for each other's changes: these are not gathered.
       if (event.type === "board.changed") followBoard(client, projectId, event.revision);
       if (event.type === "missed") followBoard(client, projectId, Infinity);

@@ -1,5 +1,5 @@
+import type { ReactNode } from "react";
 import type { BoardViewName } from "@/components/board/use-board-place";
-import { UndoButtons } from "@/components/together/undo-buttons";
 import { classNames } from "@/components/ui/class-names";
 
 interface BoardBarProps {
@@ -7,6 +7,8 @@ interface BoardBarProps {
   readonly onShow: (view: BoardViewName) => void;
   readonly isAllSeams: boolean;
   readonly onAllSeams: (isAll: boolean) => void;
+  /** At the right. */
+  readonly tools: ReactNode;
 }
 
 const VIEWS = [
@@ -14,8 +16,8 @@ const VIEWS = [
   { name: "table", label: "Table" },
 ] as const;
 
-/** The slim bar above the sheet: how it is drawn. */
-export function BoardBar({ view, onShow, isAllSeams, onAllSeams }: BoardBarProps) {
+/** The slim bar above the sheet: how it is drawn, and what can be done with all of it. */
+export function BoardBar({ view, onShow, isAllSeams, onAllSeams, tools }: BoardBarProps) {
   return (
     <div className="flex flex-wrap items-center gap-x-5 border-b border-hairline bg-tray px-4 text-sm">
       <div role="group" aria-label="How the board is drawn" className="flex gap-5">
@@ -45,9 +47,7 @@ export function BoardBar({ view, onShow, isAllSeams, onAllSeams }: BoardBarProps
           All overlaps
         </label>
       )}
-      <div className="ml-auto flex flex-wrap items-center gap-x-5">
-        <UndoButtons />
-      </div>
+      <div className="ml-auto flex flex-wrap items-center gap-x-3">{tools}</div>
     </div>
   );
 }

@@ -10,13 +10,11 @@ import {
   WorkingBoard,
 } from "@/components/board/board-states";
 import { Sheet } from "@/components/board/sheet";
-import { BoardCommandsContext } from "@/components/board/board-commands";
 import { useBoardPlace } from "@/components/board/use-board-place";
 import { useLiveBoard } from "@/components/board/use-live-board";
 import { ConnectionStrip } from "@/components/together/connection-strip";
-import { RefusalDialog } from "@/components/together/refusal-dialog";
-import { SaidLine } from "@/components/together/said-line";
 import { SaveState } from "@/components/together/save-state";
+import { Together } from "@/components/together/together";
 import { useBoardWork } from "@/components/together/use-board-work";
 import { indexBoard } from "@/lib/board/board-index";
 
@@ -54,7 +52,7 @@ export function Board({ projectId, userId, canEdit }: BoardProps) {
     return <WorkingBoard progress={progress} />;
   }
   return (
-    <BoardCommandsContext value={work.commands}>
+    <Together {...{ projectId, userId, work }} chosen={place.chosen} board={index.board}>
       <div
         ref={(element) => setTopPx(element ? element.getBoundingClientRect().top + window.scrollY : 0)}
         // The sheet fills the window below header and ticket, so that rail and grid scroll on their own.
@@ -78,10 +76,8 @@ export function Board({ projectId, userId, canEdit }: BoardProps) {
           isWide={isWide}
           saved={canEdit ? <SaveState queue={work.queue} /> : null}
         />
-        <SaidLine said={work.said} />
-        <RefusalDialog board={index.board} refusals={work.queue.refusals} onAnswer={work.answer} />
       </div>
-    </BoardCommandsContext>
+    </Together>
   );
 }
 

@@ -12,6 +12,7 @@ import { LOOSE, type BoardViewName } from "@/components/board/use-board-place";
 import { useElementSize } from "@/components/board/use-element-size";
 import { useDocket } from "@/components/board/use-docket";
 import { TimeRail } from "@/components/rail/time-rail";
+import { BoardTools } from "@/components/together/board-tools";
 import type { BoardIndex } from "@/lib/board/board-index";
 import { questionMove } from "@/lib/board/docket-answers";
 import type { BoardQuestion } from "@/lib/board/model";
@@ -36,8 +37,9 @@ export function Sheet({ index, chosen, onChoose, view, onShow, isWide, saved }: 
   const asked = useMemo(() => askedTiles(index, question), [index, question]);
   const askedMove = useMemo(() => question && questionMove(index, question), [index, question]);
   const docketLine = <Docket index={index} docket={docket} chosen={chosen} onShowTile={onChoose} />;
+  const tools = <BoardTools index={index} onChoose={onChoose} />;
   if (!isWide) {
-    return <SmallBoard {...{ index, chosen, onChoose, saved }} docket={docketLine} askedPlace={docket.place} />;
+    return <SmallBoard {...{ index, chosen, onChoose, tools, saved }} docket={docketLine} askedPlace={docket.place} />;
   }
   return (
     <>
@@ -45,7 +47,7 @@ export function Sheet({ index, chosen, onChoose, view, onShow, isWide, saved }: 
         <TimeRail index={index} chosen={chosen} onChoose={onChoose} />
         <div className="flex min-h-0 flex-col">
           {docketLine}
-          <BoardBar view={view} onShow={onShow} isAllSeams={isAllSeams} onAllSeams={setIsAllSeams} />
+          <BoardBar view={view} onShow={onShow} isAllSeams={isAllSeams} onAllSeams={setIsAllSeams} tools={tools} />
           {view === "grid" ? (
             <TileGrid
               {...{ index, chosen, onChoose, isAllSeams, asked, askedMove }}

@@ -17,17 +17,19 @@ interface SmallBoardProps {
   readonly chosen: string | null;
   readonly onChoose: (name: string | null) => void;
   readonly docket: ReactNode;
+  readonly tools: ReactNode;
   readonly saved: ReactNode;
   /** What the docket's question opens; null: none. */
   readonly askedPlace: string | null;
 }
 
 /** The board where there is no room for it: the table, or one tile at a time, with the docket where it is about that tile. */
-export function SmallBoard({ index, chosen, onChoose, docket, askedPlace, saved }: SmallBoardProps) {
+export function SmallBoard({ index, chosen, onChoose, docket, askedPlace, tools, saved }: SmallBoardProps) {
   const tile = chosen === null ? undefined : findTile(index, chosen);
   const isOne = tile !== undefined || chosen === LOOSE;
   return (
     <>
+      <div className="flex flex-wrap items-center gap-x-3 border-b border-hairline bg-tray px-3 py-1">{tools}</div>
       {(!isOne || askedPlace === chosen) && docket}
       {isOne ? (
         <OneTile index={index} tile={tile ?? null} onChoose={onChoose} />

@@ -16,6 +16,7 @@ export function TakeChoice({ tile, chosenId, onChoose }: TakeChoiceProps) {
       {tile.takes.map((take) => (
         <Button
           key={take.id}
+          data-take={take.id}
           size="slim"
           tone={take.id === chosenId ? "plain" : "bare"}
           aria-pressed={take.id === chosenId}

@@ -20,7 +20,8 @@ export function PeopleHere({ projectId, userId }: { readonly projectId: string; 
 /** "Mona is here", "Mona and Jonas are here", "Mona, Jonas and 3 more are here". */
 export function hereText(names: readonly string[]): string {
   if (names.length === 0) return "";
-  const shown = names.length > NAMES_MOST ? [...names.slice(0, NAMES_MOST - 1), `${names.length - NAMES_MOST + 1} more`] : names;
+  const shown =
+    names.length > NAMES_MOST ? [...names.slice(0, NAMES_MOST - 1), `${names.length - NAMES_MOST + 1} more`] : names;
   const list = shown.length === 1 ? shown[0] : `${shown.slice(0, -1).join(", ")} and ${shown.at(-1)}`;
   return `${list} ${names.length === 1 ? "is" : "are"} here`;
 }

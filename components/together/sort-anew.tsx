@@ -10,44 +10,51 @@ import { askToSort } from "@/lib/board/mutations";
 
 /** Has the frames sorted again; asked for once more, because it may move what nobody looked at yet. */
 export function SortAnew({ projectId }: { readonly projectId: string }) {
-  const { canEdit, announce } = useBoardCommands();
+  const { canEdit } = useBoardCommands();
   const [isOpen, setIsOpen] = useState(false);
-  const asking = useMutation({
-    mutationFn: () => askToSort(projectId),
-    onSuccess: () => {
-      setIsOpen(false);
-      announce("The frames are sorted anew. The board changes by itself when that is done.");
-    },
-  });
   if (!canEdit) return null;
   return (
     <>
       <Button size="slim" tone="bare" onClick={() => setIsOpen(true)}>
         Sort anew
       </Button>
-      <Dialog
-        isOpen={isOpen}
-        onOpenChange={setIsOpen}
-        title="Sort the frames anew?"
-        description={
-          <p>
-            What nobody decided is found again from the pictures and their times: which frames belong together, and where
-            each stack lies. Everything that a person placed, set aside or settled stays as it is.
-          </p>
-        }
-      >
-        {asking.error && (
-          <Notice tone="madder" live="alert">
-            {asking.error.message}
-          </Notice>
-        )}
-        <DialogAnswers>
-          <Button tone="petrol" isBusy={asking.isPending} onClick={() => asking.mutate()}>
-            Sort anew
-          </Button>
-          <Button onClick={() => setIsOpen(false)}>Keep it as it is</Button>
-        </DialogAnswers>
-      </Dialog>
+      {isOpen && <SortAnewDialog projectId={projectId} onClose={() => setIsOpen(false)} />}
     </>
+  );
+}
+
+function SortAnewDialog({ projectId, onClose }: { readonly projectId: string; readonly onClose: () => void }) {
+  const { announce } = useBoardCommands();
+  const asking = useMutation({
+    mutationFn: () => askToSort(projectId),
+    onSuccess: () => {
+      onClose();
+      announce("The frames are sorted anew. The board changes by itself when that is done.");
+    },
+  });
+  return (
+    <Dialog
+      isOpen
+      onOpenChange={(isOpen) => !isOpen && onClose()}
+      title="Sort the frames anew?"
+      description={
+        <p>
+          What nobody decided is found again from the pictures and their times: which frames belong together, and where
+          each stack lies. Everything that a person placed, set aside or settled stays as it is.
+        </p>
+      }
+    >
+      {asking.error && (
+        <Notice tone="madder" live="alert">
+          {asking.error.message}
+        </Notice>
+      )}
+      <DialogAnswers>
+        <Button tone="petrol" isBusy={asking.isPending} onClick={() => asking.mutate()}>
+          Sort anew
+        </Button>
+        <Button onClick={onClose}>Keep it as it is</Button>
+      </DialogAnswers>
+    </Dialog>
   );
 }

@@ -1,7 +1,7 @@
 "use client";
 
-import { useQueryClient } from "@tanstack/react-query";
-import { useEffect } from "react";
+import { useQuery, useQueryClient } from "@tanstack/react-query";
+import { useEffect, useMemo } from "react";
 import { presenceQuery, sendPresence } from "@/lib/presence/queries";
 
 /** Well within what the server takes for silence (45 s), ms. */
@@ -27,4 +27,16 @@ export function usePresence(projectId: string, tile: string | null): void {
       document.removeEventListener("visibilitychange", tell);
     };
   }, [client, projectId, tile]);
+}
+
+/** Who else has which tile open, by the tile's name. */
+export function usePeopleOnTiles(projectId: string, userId: string): ReadonlyMap<string, readonly string[]> {
+  const { data } = useQuery(presenceQuery(projectId));
+  return useMemo(() => {
+    const names = new Map<string, string[]>();
+    for (const { userId: other, name, tile } of data?.people ?? []) {
+      if (other !== userId && tile !== null) names.set(tile, [...(names.get(tile) ?? []), name]);
+    }
+    return names;
+  }, [data, userId]);
 }

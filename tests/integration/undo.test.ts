@@ -203,6 +203,10 @@ describe("what has happened since a revision", () => {
     const since = await calls.since(0);
     if (!("changes" in since)) throw new Error("steps were expected");
     expect(since).toMatchObject({ since: 0, revision: 2 });
+    expect(since.told.map(({ person, sentence }) => [person.name.length > 0, sentence])).toEqual([
+      [true, "moved HARB0019 from A3 to A4"],
+      [true, "added row B"],
+    ]);
     const { frames, stacks, grid } = applyChanges(start, since.changes);
     expect({ frames, stacks, grid }).toEqual(
       expect.objectContaining(

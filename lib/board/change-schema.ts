@@ -30,6 +30,11 @@ export const changeSchema: z.ZodType<Change> = z.discriminatedUnion("on", [
     by: z.union([z.literal(1), z.literal(-1)]),
   }),
   z.object({ on: z.literal("grid"), before: gridSizeSchema, after: gridSizeSchema }),
-  z.object({ on: z.literal("question"), question: questionSchema, isOpen: z.boolean() }),
+  z.object({
+    on: z.literal("question"),
+    question: questionSchema,
+    isOpen: z.boolean(),
+    isWithdrawn: z.boolean().optional(),
+  }),
   z.object({ on: z.literal("seams"), before: z.array(seamSchema), after: z.array(seamSchema) }),
 ]);

@@ -20,8 +20,17 @@ export type Change =
   | { readonly on: "no-stack"; readonly stack: BoardStack }
   | { readonly on: "line"; readonly axis: "row" | "column"; readonly at: number; readonly by: 1 | -1 }
   | { readonly on: "grid"; readonly before: GridSize; readonly after: GridSize }
-  | { readonly on: "question"; readonly question: BoardQuestion; readonly isOpen: boolean }
+  | QuestionChange
   | { readonly on: "seams"; readonly before: readonly BoardSeam[]; readonly after: readonly BoardSeam[] };
+
+/** A question is asked or goes: answered, or withdrawn by the sorting, which may ask it again. */
+export interface QuestionChange {
+  readonly on: "question";
+  readonly question: BoardQuestion;
+  readonly isOpen: boolean;
+  /** It goes (or came, where the change is inverted) without anybody's answer. */
+  readonly isWithdrawn?: boolean;
+}
 
 export interface GridSize {
   readonly rows: number;

@@ -7,7 +7,7 @@ import { changes } from "@/db/schema/board";
 import { members, projects } from "@/db/schema/projects";
 import type { ProjectAccess } from "@/lib/auth/gate";
 import { allows } from "@/lib/auth/roles";
-import { applyChanges, ChangeConflict } from "@/lib/board/changes";
+import { applyChanges, type Change, ChangeConflict } from "@/lib/board/changes";
 import type { CommandAnswer } from "@/lib/board/command-answers";
 import type { BoardCommand, PlannedCommand } from "@/lib/board/command-schema";
 import { explainConflict } from "@/lib/board/conflict-reads";
@@ -59,7 +59,7 @@ async function carryOut(tx: Transaction, order: Order): Promise<CommandAnswer> {
     afterRevision = plan.afterRevision;
     const after = { ...applyChanges(board, plan.steps), revision: board.revision + 1 };
     await requireShares(tx, projectId, board, after);
-    await storeDifference(tx, board, after, { ...order, projectId, withdrawn: plan.withdrawn });
+    await storeDifference(tx, board, after, { ...order, projectId, withdrawn: withdrawnBy(plan.steps) });
     await record(tx, order, { before: board, after, plan });
     keepBoard(projectId, { board: after, changeId: order.command.id });
     return { id: order.command.id, revision: after.revision, changes: [...plan.steps] };
@@ -67,6 +67,11 @@ async function carryOut(tx: Transaction, order: Order): Promise<CommandAnswer> {
     if (error instanceof ChangeConflict) throw await explainConflict(tx, projectId, board, error, afterRevision);
     throw error;
   }
+}
+
+function withdrawnBy(steps: readonly Change[]): Set<string> {
+  const closed = steps.filter((change) => change.on === "question" && !change.isOpen);
+  return new Set(closed.flatMap((change) => ("isWithdrawn" in change && change.isWithdrawn ? change.question.id : [])));
 }
 
 /** What was answered to this id before. @throws AppError invalid where somebody else, or another command, has used it */
@@ -99,7 +104,7 @@ async function planOrder(tx: Transaction, board: Board, { access, command }: Ord
     after: applyChanges(board, steps),
     nameOf: await nameOfAssignee(tx, command),
   });
-  return { steps, sentence, undoes: null, afterRevision: null, withdrawn: new Set() };
+  return { steps, sentence, undoes: null, afterRevision: null };
 }
 
 async function nameOfAssignee(tx: Transaction, command: PlannedCommand): Promise<() => string> {

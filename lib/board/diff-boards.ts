@@ -1,4 +1,4 @@
-import type { Change, FramePatch, StackPatch } from "@/lib/board/changes";
+import type { Change, FramePatch, QuestionChange, StackPatch } from "@/lib/board/changes";
 import type { Board, BoardFrame, BoardStack } from "@/lib/board/model";
 
 const FRAME_FIELDS = [
@@ -79,6 +79,33 @@ function diffFields<Entity extends object, Field extends keyof Entity>(
     after[field] = is[field];
   }
   return { before, after };
+}
+
+/**
+ * What several changes come to, as one step. Each question goes the way it went in them: withdrawn or answered.
+ * @param changes - lead from `before` to `after`
+ */
+export function sumOfChanges(before: Board, after: Board, changes: readonly Change[]): Change[] {
+  const first = new Map<string, QuestionChange>();
+  const last = new Map<string, QuestionChange>();
+  for (const change of changes) {
+    if (change.on !== "question") continue;
+    if (!first.has(change.question.id)) first.set(change.question.id, change);
+    last.set(change.question.id, change);
+  }
+  return diffBoards(before, after).map((change) => {
+    if (change.on !== "question") return change;
+    // How a question that opens was closed before, how one that closes goes now.
+    const like = (change.isOpen ? first : last).get(change.question.id);
+    return like?.isWithdrawn ? { ...change, isWithdrawn: true } : change;
+  });
+}
+
+/** What a sorting did to the board. The questions that it does not ask any more were not answered. */
+export function stepsOfSorting(before: Board, after: Board): Change[] {
+  return diffBoards(before, after).map((change) =>
+    change.on === "question" ? { ...change, isWithdrawn: true } : change,
+  );
 }
 
 function diffGrid({ grid: was }: Board, { grid: is }: Board): Change[] {

@@ -1,3 +1,4 @@
+import { closeAnswered } from "@/lib/board/answered-questions";
 import { ChangeConflict, type Change } from "@/lib/board/changes";
 import type { CommandOf, PlannedCommand } from "@/lib/board/command-schema";
 import { frameOf, framesOf, stackOf } from "@/lib/board/look-up";
@@ -15,10 +16,16 @@ import { planAddLine, planPlace, planRemoveLine, planTake } from "@/lib/board/pl
 import type { AnswerAction } from "@/lib/sorting/types";
 
 /**
- * What a command does to this board, as changes. Pure: server and browser plan alike.
+ * What a command does to this board, as changes, the questions that it answers by the way included. Pure: server and
+ * browser plan alike.
  * @throws ChangeConflict where what the command expects is not so (any more), or where it cannot be done
  */
 export function planCommand(board: Board, command: PlannedCommand): Change[] {
+  const changes = planAsked(board, command);
+  return [...changes, ...closeAnswered(board, changes)];
+}
+
+function planAsked(board: Board, command: PlannedCommand): Change[] {
   switch (command.type) {
     case "move-frames":
       return planMove(board, command);

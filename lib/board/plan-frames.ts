@@ -48,7 +48,19 @@ export function moveTo(board: Board, frames: readonly BoardFrame[], toStackId: s
   const movingIds = new Set(moving.map(({ id }) => id));
   const moves = moving.map((frame): Change => ({ on: "frame", id: frame.id, ...movePatches(frame, toStackId) }));
   const left = new Set(moving.flatMap(({ stackId }) => (stackId === null ? [] : [stackId])));
-  return [...moves, ...[...left].flatMap((stackId) => afterLeaving(board, stackId, movingIds))];
+  return [
+    ...moves,
+    ...[...left].flatMap((stackId) => afterLeaving(board, stackId, movingIds)),
+    ...(moves.length === 0 ? [] : unsettle(board, toStackId)),
+  ];
+}
+
+/** What a person called settled were its frames as they were: with others it must be looked at again. */
+function unsettle(board: Board, stackId: string | null): Change[] {
+  const stack = board.stacks.find(({ id }) => id === stackId);
+  return stack?.isSettled
+    ? [{ on: "stack", id: stack.id, before: { isSettled: true }, after: { isSettled: false } }]
+    : [];
 }
 
 export function moveToNew(board: Board, frames: readonly BoardFrame[], stackId: string, place: Place | null): Change[] {
@@ -93,8 +105,9 @@ function afterLeaving(board: Board, stackId: string, leaving: ReadonlySet<string
   const stack = stackOf(board, stackId);
   const staying = framesOf(board, stackId).filter(({ id }) => !leaving.has(id));
   if (staying.length === 0) return removeStack(board, stack);
-  if (stack.referenceId === null || !leaving.has(stack.referenceId)) return [];
-  return [setReference(stack, sharpestInUse(staying))];
+  const unsettled = unsettle(board, stackId);
+  if (stack.referenceId === null || !leaving.has(stack.referenceId)) return unsettled;
+  return [...unsettled, setReference(stack, sharpestInUse(staying))];
 }
 
 function removeStack(board: Board, stack: BoardStack): Change[] {

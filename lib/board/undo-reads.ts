@@ -7,7 +7,7 @@ import type { ProjectAccess } from "@/lib/auth/gate";
 import { allows } from "@/lib/auth/roles";
 import { applyChanges, ChangeConflict, invertChanges, type Change } from "@/lib/board/changes";
 import type { CommandOf } from "@/lib/board/command-schema";
-import { diffBoards } from "@/lib/board/diff-boards";
+import { sumOfChanges } from "@/lib/board/diff-boards";
 import type { Board } from "@/lib/board/model";
 import { describeUndo } from "@/lib/board/sentence";
 import { undoneSteps } from "@/lib/board/standing";
@@ -23,11 +23,7 @@ export interface Plan {
   readonly undoes: string | null;
   /** Everything after this revision is what it takes back; only what came later can be in its way. */
   readonly afterRevision: number | null;
-  /** Questions that go with the sorting that asked them. */
-  readonly withdrawn: ReadonlySet<string>;
 }
-
-const NONE: ReadonlySet<string> = new Set();
 
 /**
  * Takes back one step of the person's own, or takes back their taking it back.
@@ -63,7 +59,6 @@ export async function planUndo(
     sentence: describeUndo(step.sentence),
     undoes: step.id,
     afterRevision: step.revision,
-    withdrawn: NONE,
   };
 }
 
@@ -78,7 +73,7 @@ export async function planUndoBackTo(
   { toRevision }: CommandOf<"undo-back-to">,
 ): Promise<Plan> {
   const rows = await tx
-    .select({ type: changes.type, steps: changes.steps, sentence: changes.sentence })
+    .select({ steps: changes.steps, sentence: changes.sentence })
     .from(changes)
     .where(and(eq(changes.projectId, access.projectId), gt(changes.revision, toRevision)))
     .orderBy(desc(changes.revision));
@@ -90,16 +85,11 @@ export async function planUndoBackTo(
   const taken = rows.flatMap(({ steps }) => invertChanges(steps));
   requireDivisionRight(access, taken);
   return {
-    steps: diffBoards(board, applyChanges(board, taken)),
+    steps: sumOfChanges(board, applyChanges(board, taken), taken),
     sentence: `took back ${countOf(rows.length, "step")}, back to step ${toRevision}`,
     undoes: null,
     afterRevision: null,
-    withdrawn: new Set(rows.filter(({ type }) => type === "sort").flatMap(({ steps }) => steps.flatMap(askedBy))),
   };
-}
-
-function askedBy(change: Change): string[] {
-  return change.on === "question" && change.isOpen ? [change.question.id] : [];
 }
 
 /** The steps of a project that take others back, oldest first. */

@@ -6,10 +6,11 @@ import { frames, stacks } from "@/db/schema/frames";
 import { projects } from "@/db/schema/projects";
 import type { ProjectAccess } from "@/lib/auth/gate";
 import type { Change } from "@/lib/board/changes";
-import { diffBoards } from "@/lib/board/diff-boards";
+import { stepsOfSorting } from "@/lib/board/diff-boards";
 import { getBoardWithin } from "@/lib/board/reads";
 import { inheritedShares } from "@/lib/board/sorting-facts";
 import type { SortBasis } from "@/lib/board/sorting-reads";
+import { touchedTiles } from "@/lib/board/touched";
 import { countOf } from "@/lib/board/words";
 import { publish } from "@/lib/events/publish";
 import { frameIdSchema, newId, type ProjectId, stackIdSchema, type UserId } from "@/lib/ids";
@@ -58,8 +59,10 @@ export async function storeProposal(
     await storeFrames(tx, projectId, proposal.frames);
     await storeSeams(tx, projectId, proposal);
     await storeQuestions(tx, projectId, proposal.questions);
-    const steps = diffBoards(before, await getBoardWithin(tx, projectId));
-    await recordSorting(tx, projectId, { revision, proposal, isAnew: basis.isAnew, steps, atMs: nowMs });
+    const after = await getBoardWithin(tx, projectId);
+    const steps = stepsOfSorting(before, after);
+    const tiles = touchedTiles(before, after, steps);
+    await recordSorting(tx, projectId, { revision, proposal, isAnew: basis.isAnew, steps, tiles, atMs: nowMs });
     await publish(tx, projectId, { type: "board.changed", revision }, nowMs);
     return true;
   });
@@ -212,6 +215,7 @@ interface Sorting {
   readonly proposal: Proposal;
   readonly isAnew: boolean;
   readonly steps: readonly Change[];
+  readonly tiles: readonly string[];
   readonly atMs: number;
 }
 

@@ -1,3 +1,5 @@
+// Before anything that reads cookies.
+import "./people";
 import { expect } from "vitest";
 import { GET as getBoardRoute } from "@/app/api/projects/[projectId]/board/route";
 import { POST as postCommand } from "@/app/api/projects/[projectId]/commands/route";

@@ -107,6 +107,13 @@ describe("any sequence of commands", () => {
     );
   });
 
+  test("so too where two takes of one tile go at once", () => {
+    const merge = { type: "merge-stacks", intoStackId: "stack-1-1", stackIds: ["stack-3-6", "stack-3-6-take-2"] };
+    const command = boardCommandSchema.parse({ id: crypto.randomUUID(), revision: 0, ...merge });
+    const [step] = run([command as PlannedCommand]);
+    expect(step && applyChanges(step.after, invertChanges(step.changes))).toEqual(START);
+  });
+
   test("leaves every frame in exactly one place, every place with one stack a take and one chosen take", () => {
     fc.assert(
       fc.property(fc.array(anyCommand(), { maxLength: 12 }), (commands) => {

@@ -48,9 +48,11 @@ export function moveTo(board: Board, frames: readonly BoardFrame[], toStackId: s
   const movingIds = new Set(moving.map(({ id }) => id));
   const moves = moving.map((frame): Change => ({ on: "frame", id: frame.id, ...movePatches(frame, toStackId) }));
   const left = new Set(moving.flatMap(({ stackId }) => (stackId === null ? [] : [stackId])));
+  const held = new Set(board.frames.flatMap(({ id, stackId }) => (movingIds.has(id) ? [] : [stackId])));
+  const emptied = new Set([...left].filter((stackId) => !held.has(stackId)));
   return [
     ...moves,
-    ...[...left].flatMap((stackId) => afterLeaving(board, stackId, movingIds)),
+    ...[...left].flatMap((stackId) => afterLeaving(board, stackId, { leaving: movingIds, emptied })),
     ...(moves.length === 0 ? [] : unsettle(board, toStackId)),
   ];
 }
@@ -101,17 +103,26 @@ function movePatches(frame: BoardFrame, stackId: string | null): { before: Frame
   };
 }
 
-function afterLeaving(board: Board, stackId: string, leaving: ReadonlySet<string>): Change[] {
+interface Leaving {
+  /** Ids of the frames that go. */
+  readonly leaving: ReadonlySet<string>;
+  /** Ids of the stacks that have none left. */
+  readonly emptied: ReadonlySet<string>;
+}
+
+function afterLeaving(board: Board, stackId: string, { leaving, emptied }: Leaving): Change[] {
   const stack = stackOf(board, stackId);
+  if (emptied.has(stackId)) return removeStack(board, stack, emptied);
   const staying = framesOf(board, stackId).filter(({ id }) => !leaving.has(id));
-  if (staying.length === 0) return removeStack(board, stack);
   const unsettled = unsettle(board, stackId);
   if (stack.referenceId === null || !leaving.has(stack.referenceId)) return unsettled;
   return [...unsettled, setReference(stack, sharpestInUse(staying))];
 }
 
-function removeStack(board: Board, stack: BoardStack): Change[] {
-  const next = othersAt(board, stack).sort((a, b) => a.take - b.take)[0];
+function removeStack(board: Board, stack: BoardStack, emptied: ReadonlySet<string>): Change[] {
+  // Not one that goes with it.
+  const others = othersAt(board, stack).filter(({ id }) => !emptied.has(id));
+  const next = others.sort((a, b) => a.take - b.take)[0];
   const gone: Change = { on: "no-stack", stack };
   if (!stack.isChosenTake || !next) return [gone];
   return [gone, { on: "stack", id: next.id, before: { isChosenTake: false }, after: { isChosenTake: true } }];

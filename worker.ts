@@ -6,6 +6,7 @@ import { newId } from "@/lib/ids";
 import { createAnalysisPool } from "@/lib/imaging/analysis-pool";
 import { finishCompleteUploads } from "@/lib/intake/finish";
 import { createAnalyseFileHandler } from "@/lib/jobs/handlers/analyse-file";
+import { createMeasureStacksHandler } from "@/lib/jobs/handlers/measure-stacks";
 import { createSortProjectHandler } from "@/lib/jobs/handlers/sort-project";
 import { forgetWorkers } from "@/lib/jobs/queue";
 import { runJobs } from "@/lib/jobs/runner";
@@ -42,7 +43,11 @@ await prepareStorage();
 const concurrency = environment().workerConcurrency;
 const pool = createAnalysisPool({ size: concurrency });
 const upkeep = keepUp(stopping.signal);
-const handlers = [createAnalyseFileHandler(pool, concurrency), createSortProjectHandler(sortFrames)];
+const handlers = [
+  createAnalyseFileHandler(pool, concurrency),
+  createSortProjectHandler(sortFrames),
+  createMeasureStacksHandler(),
+];
 await runJobs({ workerId: newId(), handlers, signal: stopping.signal });
 await pool.close();
 await upkeep;

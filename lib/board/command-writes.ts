@@ -11,12 +11,14 @@ import { applyChanges, type Change, ChangeConflict } from "@/lib/board/changes";
 import type { CommandAnswer } from "@/lib/board/command-answers";
 import type { BoardCommand, PlannedCommand } from "@/lib/board/command-schema";
 import { explainConflict } from "@/lib/board/conflict-reads";
+import { unmeasuredSeams } from "@/lib/board/current-seams";
 import type { Board } from "@/lib/board/model";
 import { planCommand } from "@/lib/board/plan-command";
+import { requestMeasuring } from "@/lib/board/measure-writes";
 import { forgetBoard, getPlanningBoard, keepBoard } from "@/lib/board/planning-reads";
 import { storeDifference } from "@/lib/board/row-writes";
 import { describeCommand } from "@/lib/board/sentence";
-import { touchedTiles } from "@/lib/board/touched";
+import { stacksToMeasure, touchedTiles } from "@/lib/board/touched";
 import { type Plan, planUndo, planUndoBackTo } from "@/lib/board/undo-reads";
 import { AppError } from "@/lib/errors/app-error";
 import { publish } from "@/lib/events/publish";
@@ -151,6 +153,7 @@ async function record(
     undoes: plan.undoes,
     atMs: nowMs,
   });
-  // Here, in the same transaction, measuring anew what the command touched is asked for: `stacksToMeasure(before, after)`.
+  const touched = stacksToMeasure(before, after);
+  if (touched.length > 0 || unmeasuredSeams(after).length > 0) await requestMeasuring(tx, projectId, touched, nowMs);
   await publish(tx, projectId, { type: "board.changed", revision }, nowMs);
 }

@@ -37,7 +37,7 @@ export interface ClaimedJob {
   readonly runAfterMs: number;
 }
 
-/** Asks for a job, in the transaction of what made it necessary. */
+/** Asks for a job, in the transaction of what made it necessary. Of two askings the later payload counts. */
 export async function requestJob(tx: Transaction, request: JobRequest, nowMs: number): Promise<void> {
   const { delayMs, ...row } = request;
   const runAfterMs = nowMs + delayMs;
@@ -47,6 +47,7 @@ export async function requestJob(tx: Transaction, request: JobRequest, nowMs: nu
     .onConflictDoUpdate({
       target: jobs.key,
       set: {
+        payload: row.payload,
         runAfterMs,
         // One that runs stays running; its later `runAfterMs` makes it run again when it is done.
         state: sql`case when ${jobs.state} = 'running' then 'running' else 'waiting' end`,
@@ -55,6 +56,20 @@ export async function requestJob(tx: Transaction, request: JobRequest, nowMs: nu
         finishedAtMs: null,
       },
     });
+}
+
+/** What a job that is not done yet was asked for with, and when it is due; null: there is none. */
+export async function findRequested(
+  tx: Transaction,
+  key: string,
+): Promise<(Pick<ClaimedJob, "payload" | "runAfterMs"> & { isRunning: boolean }) | null> {
+  const [job] = await tx
+    .select({ payload: jobs.payload, runAfterMs: jobs.runAfterMs, state: jobs.state })
+    .from(jobs)
+    .where(and(eq(jobs.key, key), inArray(jobs.state, ["waiting", "running"])));
+  if (!job) return null;
+  const { state, ...requested } = job;
+  return { ...requested, isRunning: state === "running" };
 }
 
 /** The next job of a kind for this worker: compare-and-set on its state, so that nobody else has it. */

@@ -28,7 +28,7 @@ const BRACKET_LEVEL_EV = 1 / 3;
 /** Judges the frames of one stack against each other and chooses its reference. */
 export function appraiseStack(input: AppraisalInput): StackDraft {
   const { frames, store } = input;
-  const sharpness = input.isBracketed ? bracketSharpness(input) : frameSharpness(frames, input.softLimit);
+  const sharpness = stackSharpness(input);
   const chain = chainShifts(frames, store);
   const deviations = findDeviations(frames, chain).map((deviation) =>
     input.isBracketed && deviation?.kind === "exposure" ? null : deviation,
@@ -56,8 +56,13 @@ export function appraiseStack(input: AppraisalInput): StackDraft {
   return { index: input.index, id: input.id, fixed: input.fixed, frames: drafts, hub, reference };
 }
 
+/** How sharp each frame of a stack is against the others, in the same order. */
+export function stackSharpness(input: Pick<AppraisalInput, "frames" | "softLimit" | "isBracketed">): FrameSharpness[] {
+  return input.isBracketed ? bracketSharpness(input) : frameSharpness(input.frames, input.softLimit);
+}
+
 /** Frames of unlike exposure differ in sharpness by their light alone, so each is compared with its equals only. */
-function bracketSharpness({ frames, softLimit }: AppraisalInput): FrameSharpness[] {
+function bracketSharpness({ frames, softLimit }: Pick<AppraisalInput, "frames" | "softLimit">): FrameSharpness[] {
   const levels = frames.map((frame) => Math.round((lightOf(frame) ?? 0) / BRACKET_LEVEL_EV));
   const judged = new Map<SortFrame, FrameSharpness>();
   for (const level of new Set(levels)) {

@@ -35,7 +35,7 @@ export function findSeams(
     return sides.flatMap(({ side, other }): Seam[] => {
       if (!other) return [];
       const step = directStep(direct, stack.index, other.index) ?? positionStep(positions, stack, other);
-      const overlap = step && overlapOf(betweenMiddles(step, stack, other), side, stack);
+      const overlap = step && overlapAt(step, side, stack, other);
       return [{ a: stack.index, b: other.index, side, overlap }];
     });
   });
@@ -56,6 +56,15 @@ function positionStep(
   if (!from || !to) return null;
   const longSidePx = Math.max(a.hub.measurements.widthPx, a.hub.measurements.heightPx);
   return { x: (to.xPx - from.xPx) / longSidePx, y: (to.yPx - from.yPx) / longSidePx };
+}
+
+/**
+ * Overlap of two neighbouring stacks.
+ * @param step - corner of b's reference in a's, in long sides of a frame
+ * @returns fraction of the tile's side, 0 to 1
+ */
+export function overlapAt(step: Vector, side: "right" | "below", a: StackDraft, b: StackDraft): number {
+  return overlapOf(betweenMiddles(step, a, b), side, a);
 }
 
 /**

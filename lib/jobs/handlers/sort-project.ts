@@ -1,17 +1,13 @@
 import "server-only";
-import { setImmediate } from "node:timers/promises";
-import { createPairMeasurer } from "@/lib/analysis/pair-measurer";
 import { accessForJob, type ProjectAccess } from "@/lib/auth/gate";
-import { findSortBasis, type SortBasis } from "@/lib/board/sorting-reads";
+import { findSortBasis } from "@/lib/board/sorting-reads";
 import { recordSortFailure, storeProposal } from "@/lib/board/writes";
 import { hasWaitingFiles } from "@/lib/frames/reads";
-import { readRegistrationFile } from "@/lib/imaging/registration-file";
-import { measureSsim } from "@/lib/imaging/structural-similarity";
 import { listUnfinishedUploads } from "@/lib/intake/reads";
+import { measurerFor } from "@/lib/jobs/measure-stored";
 import type { JobHandler } from "@/lib/jobs/runner";
-import type { MeasurePair, SortFrames } from "@/lib/sorting/types";
+import type { SortFrames } from "@/lib/sorting/types";
 import { lastByteAtMs } from "@/lib/storage/disk";
-import { registrationPath } from "@/lib/storage/paths";
 
 /** An upload that has not moved for so long is stalled: the board does not wait for it. ms. */
 const STALLED_MS = 10_000;
@@ -29,7 +25,7 @@ export function createSortProjectHandler(sortFrames: SortFrames): JobHandler {
       const basis = await findSortBasis(access);
       if (!basis || basis.isCovered) return { type: "done" };
       try {
-        const proposal = await sortFrames(basis.input, measurerFor(basis, signal));
+        const proposal = await sortFrames(basis.input, measurerFor(basis.input.frames, basis.fileIds, signal));
         const isStored = await storeProposal(access, basis, proposal, Date.now());
         return isStored ? { type: "done" } : { type: "later", afterMs: 0 };
       } catch (error) {
@@ -53,23 +49,4 @@ async function isBusy(access: ProjectAccess): Promise<boolean> {
     if (movedAtMs !== null && Date.now() - movedAtMs < STALLED_MS) return true;
   }
   return false;
-}
-
-function measurerFor({ input, fileIds }: SortBasis, signal: AbortSignal): MeasurePair {
-  const sizes = new Map(input.frames.map(({ id, measurements }) => [id, measurements]));
-  return createPairMeasurer({
-    load: async (id) => {
-      const size = sizes.get(id);
-      const fileId = fileIds.get(id);
-      if (!size || !fileId) throw new Error(`no such frame: ${id}`);
-      const image = await readRegistrationFile(registrationPath(fileId));
-      return { image, widthPx: size.widthPx, heightPx: size.heightPx };
-    },
-    measureSsim,
-    giveWay: async () => {
-      // Lets the heartbeat through, and ends the sorting soon where the worker stops.
-      await setImmediate();
-      signal.throwIfAborted();
-    },
-  });
 }

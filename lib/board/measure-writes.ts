@@ -1,0 +1,93 @@
+import "server-only";
+import { and, eq } from "drizzle-orm";
+import { type Transaction, writeTransaction } from "@/db/client";
+import { changes as changeRows, seams } from "@/db/schema/board";
+import { frames, stacks } from "@/db/schema/frames";
+import { projects } from "@/db/schema/projects";
+import type { ProjectAccess } from "@/lib/auth/gate";
+import { applyChanges, type Change } from "@/lib/board/changes";
+import { type Measured, measuredChanges } from "@/lib/board/measured";
+import { getBoardWithin } from "@/lib/board/reads";
+import { touchedTiles } from "@/lib/board/touched";
+import { countOf } from "@/lib/board/words";
+import { publish } from "@/lib/events/publish";
+import { frameIdSchema, newId, type ProjectId, stackIdSchema } from "@/lib/ids";
+import { findRequested, requestJob } from "@/lib/jobs/queue";
+import { MEASURE_DELAY_MS, measureJobKey, measureJobRequest, measurePayloadSchema } from "@/lib/jobs/requests";
+
+/**
+ * Asks for measuring anew, in the transaction of a command: the stacks that it changed, and whatever neighbours it made.
+ * What is asked for within a second is measured together; one that waits is not put off, however busy people are.
+ */
+export async function requestMeasuring(
+  tx: Transaction,
+  projectId: ProjectId,
+  stackIds: readonly string[],
+  atMs: number,
+): Promise<void> {
+  const requested = await findRequested(tx, measureJobKey(projectId));
+  const before = requested ? measurePayloadSchema.parse(requested.payload).stackIds : [];
+  const delayMs = requested && !requested.isRunning ? requested.runAfterMs - atMs : MEASURE_DELAY_MS;
+  await requestJob(tx, measureJobRequest(projectId, [...new Set([...before, ...stackIds])], delayMs), atMs);
+}
+
+/**
+ * Stores what was measured, as one change by the computation: only what is still true of the newest board, and nothing
+ * that people decide. Where nothing is new nothing is recorded, so it may be repeated.
+ */
+export async function storeMeasured({ projectId }: ProjectAccess, measured: Measured, atMs: number): Promise<void> {
+  await writeTransaction(async (tx) => {
+    const before = await getBoardWithin(tx, projectId);
+    const steps = measuredChanges(before, measured);
+    if (steps.length === 0) return;
+    const after = applyChanges(before, steps);
+    const revision = before.revision + 1;
+    for (const step of steps) await storeStep(tx, projectId, step);
+    await tx.update(projects).set({ revision }).where(eq(projects.id, projectId));
+    const tiles = touchedTiles(before, after, steps);
+    await tx.insert(changeRows).values({
+      id: newId(),
+      projectId,
+      revision,
+      userId: null,
+      type: "measure",
+      payload: {},
+      steps,
+      sentence: `measured ${tiles.length > 0 ? countOf(tiles.length, "tile") : "seams"} again after changes`,
+      tiles,
+      atMs,
+    });
+    await publish(tx, projectId, { type: "board.changed", revision }, atMs);
+  });
+}
+
+async function storeStep(tx: Transaction, projectId: ProjectId, step: Change): Promise<void> {
+  if (step.on === "frame") {
+    const { relativeSharpness, shift } = step.after;
+    await tx
+      .update(frames)
+      .set({
+        ...(relativeSharpness !== undefined && { relativeSharpness }),
+        ...(shift !== undefined && { shiftXPx: shift?.xPx ?? null, shiftYPx: shift?.yPx ?? null }),
+      })
+      .where(and(eq(frames.id, frameIdSchema.parse(step.id)), eq(frames.projectId, projectId)));
+  }
+  if (step.on === "stack") {
+    const { spot, position } = step.after;
+    await tx
+      .update(stacks)
+      .set({
+        ...(spot && { spotX: spot.x, spotY: spot.y }),
+        ...(position && { positionXPx: position.xPx, positionYPx: position.yPx }),
+      })
+      .where(and(eq(stacks.id, stackIdSchema.parse(step.id)), eq(stacks.projectId, projectId)));
+  }
+  if (step.on !== "seams") return;
+  for (const { stackId, neighbourId, side, overlap } of step.after) {
+    const pair = { stackId: stackIdSchema.parse(stackId), neighbourId: stackIdSchema.parse(neighbourId) };
+    await tx
+      .insert(seams)
+      .values({ projectId, ...pair, side, overlap })
+      .onConflictDoUpdate({ target: [seams.stackId, seams.neighbourId], set: { side, overlap } });
+  }
+}

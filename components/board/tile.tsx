@@ -1,3 +1,4 @@
+import { Check } from "lucide-react";
 import { Comb } from "@/components/board/comb";
 import { TilePicture } from "@/components/board/tile-picture";
 import { classNames } from "@/components/ui/class-names";
@@ -85,6 +86,7 @@ function Caption({ tile, layout }: { readonly tile: BoardTile; readonly layout: 
       className="figures flex items-center gap-2 overflow-hidden bg-paper px-1.5 text-sm"
     >
       <span className="font-bold">{tile.name}</span>
+      {tile.stack.isSettled && <Check aria-hidden size={14} strokeWidth={3} className="-mx-1 shrink-0 text-quiet" />}
       {isFull && <Comb frames={tile.frames} />}
       <span className="ml-auto whitespace-nowrap">
         {tile.isFew ? (

@@ -12,7 +12,7 @@ import {
 } from "@/lib/board/layout";
 import { questionPictures } from "@/lib/board/question-pictures";
 import { railRuns } from "@/lib/board/rail";
-import { boardStatus, stackFacts } from "@/lib/board/summary";
+import { boardStatus, stackFacts, tileLabel } from "@/lib/board/summary";
 import { makeBoard, makeEventfulBoard } from "@/tests/support/make-board";
 
 const all = { left: true, right: true, above: true, below: true };
@@ -53,6 +53,15 @@ test("the status line says what the board holds", () => {
     "smallest overlap 18 %",
     "3 to 6 frames a tile",
   ]);
+});
+
+test("settled stacks are counted, and said of their tiles", () => {
+  const board = makeEventfulBoard();
+  const stacks = board.stacks.map((stack) => ({ ...stack, isSettled: ["stack-1-1", "stack-3-2"].includes(stack.id) }));
+  const index = indexBoard({ ...board, stacks });
+  expect(boardStatus(index).slice(0, 2)).toEqual(["17 of 18 tiles", "2 settled"]);
+  const tile = index.tiles.get("A1");
+  expect(tile && tileLabel(tile)).toBe("Tile A1, 6 of 6 frames in use, settled");
 });
 
 test("the bench's head gives settings, brightness and the noise of the mean", () => {

@@ -11,9 +11,11 @@ export function boardStatus(index: BoardIndex): string[] {
   const { board, tiles, holes, loose, unplaced } = index;
   const setAside = board.frames.filter(isSetAside).length;
   const overlaps = index.seams.flatMap((seam) => (seam.overlap === null ? [] : [seam.overlap]));
+  const settled = [...tiles.values()].filter(({ stack }) => stack.isSettled).length;
   const sizes = [...tiles.values()].map((tile) => tile.inUse);
   return [
     `${groupDigits(tiles.size)} of ${countOf(tiles.size + holes.size, "tile")}`,
+    ...(settled > 0 ? [`${groupDigits(settled)} settled`] : []),
     ...(unplaced.length > 0 ? [`${countOf(unplaced.length, "stack")} without a place`] : []),
     `${countOf(setAside, "frame")} set aside`,
     countOf(loose.length, "loose frame"),
@@ -74,6 +76,7 @@ export function tileLabel(tile: BoardTile): string {
     `${tile.inUse} of ${countOf(tile.frames.length, "frame")} in use`,
     ...(tile.isFew ? ["few"] : []),
     ...(tile.takes.length > 1 ? [`${tile.takes.length} takes`] : []),
+    ...(tile.stack.isSettled ? ["settled"] : []),
     ...(tile.questions.length > 0 ? [countOf(tile.questions.length, "question")] : []),
   ].join(", ");
 }

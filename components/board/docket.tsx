@@ -137,7 +137,7 @@ function Answers({ answers, onAnswer, onPostpone }: AnswersProps) {
     <>
       {answers.map((answer) => (
         <Button
-          key={answer.label}
+          key={answer.answer ?? "keep"}
           tone={answer.isRecommended ? "petrol" : "plain"}
           className="max-lg:min-h-11"
           onClick={() => onAnswer(answer)}

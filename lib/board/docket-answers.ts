@@ -24,12 +24,13 @@ function keepsAll(board: Board, action: BoardQuestion["answers"][number]["action
   );
 }
 
-/** @param makeId - for the stack that a split makes */
+/** @param makeId - for the stack that an answer makes */
 export function settleDraft(question: BoardQuestion, answer: number | null, makeId: () => string): CommandDraft {
-  const splits = answer !== null && question.answers[answer]?.action.type === "split-stack";
+  const type = answer === null ? null : question.answers[answer]?.action.type;
+  const makesStack = type === "split-stack" || type === "new-stack";
   return {
     type: "settle",
-    target: { kind: "question", questionId: question.id, answer, ...(splits ? { newStackId: makeId() } : {}) },
+    target: { kind: "question", questionId: question.id, answer, ...(makesStack ? { newStackId: makeId() } : {}) },
   };
 }
 

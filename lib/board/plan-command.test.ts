@@ -4,9 +4,10 @@ import { applyChanges, ChangeConflict, invertChanges, type Change } from "@/lib/
 import { boardCommandSchema, type PlannedCommand } from "@/lib/board/command-schema";
 import type { Board } from "@/lib/board/model";
 import { planCommand } from "@/lib/board/plan-command";
+import type { AnswerAction } from "@/lib/sorting/types";
 import { makeEventfulBoard } from "@/tests/support/make-board";
 
-const START: Board = canonical(withSecondTake(makeEventfulBoard()));
+const START: Board = canonical(withEveryAnswer(withSecondTake(makeEventfulBoard())));
 const FRAME_IDS = START.frames.map(({ id }) => id);
 const STACK_IDS = START.stacks.map(({ id }) => id);
 
@@ -55,7 +56,7 @@ function anyCommand(): fc.Arbitrary<PlannedCommand> {
       target: fc.record({
         kind: fc.constant("question"),
         questionId: fc.constantFrom(...START.questions.map(({ id }) => id)),
-        answer: fc.constantFrom(null, 0, 1),
+        answer: fc.constantFrom(null, ...Array.from({ length: 10 }, (_, at) => at)),
         newStackId: newId,
       }),
     }),
@@ -171,6 +172,52 @@ function withSecondTake(board: Board): Board {
   );
   return { ...board, stacks, frames };
 }
+
+/** One question more, that offers everything an answer may do, several at places that others touch too. */
+function withEveryAnswer(board: Board): Board {
+  const first = board.questions[0];
+  if (!first) throw new Error("the eventful board has questions");
+  const actions: readonly AnswerAction[] = [
+    { type: "keep" },
+    { type: "move-frames", frameIds: ["frame-3", "frame-17"], toStackId: "stack-1-4" },
+    { type: "move-frames", frameIds: ["frame-3"], toStackId: null },
+    { type: "set-aside", frameIds: ["frame-3"], reason: "soft" },
+    { type: "bring-back", frameIds: ["frame-66"] },
+    { type: "choose-take", stackId: "stack-3-6-take-2" },
+    { type: "merge-stacks", stackIds: ["stack-3-6", "stack-3-6-take-2"] },
+    { type: "split-stack", stackId: "stack-1-3", atFrameId: "frame-15" },
+    { type: "new-stack", frameIds: ["frame-17", "frame-20"] },
+    { type: "take-out", stackIds: ["stack-3-6", "stack-3-6-take-2", "stack-1-1"] },
+  ];
+  const answers = actions.map((action) => ({ label: action.type, action }));
+  return { ...board, questions: [...board.questions, { ...first, id: "question-all", key: "all", answers }] };
+}
+
+test("every kind of answer can be given, settles its question, and says so where it makes a stack", () => {
+  const question = START.questions.find(({ id }) => id === "question-all");
+  question?.answers.forEach(({ label }, answer) => {
+    const target = { kind: "question", questionId: "question-all", answer, newStackId: "new-1" } as const;
+    const command = { id: crypto.randomUUID(), revision: 0, type: "settle", target } as const;
+    const after = applyChanges(START, planCommand(START, command));
+    expect(after.questions.length, label).toBe(START.questions.length - 1);
+    expectWhole(after);
+    const isMade = after.stacks.some(({ id }) => id === "new-1");
+    expect(isMade, label).toBe(label === "split-stack" || label === "new-stack");
+    if (isMade) {
+      const unnamed = { ...command, target: { ...target, newStackId: undefined } };
+      expect(() => planCommand(START, unnamed)).toThrow(ChangeConflict);
+    }
+  });
+});
+
+test("stacks that are taken out of the grid keep their frames", () => {
+  const target = { kind: "question", questionId: "question-all", answer: 9 } as const;
+  const command = { id: crypto.randomUUID(), revision: 0, type: "settle", target } as const;
+  const after = applyChanges(START, planCommand(START, command));
+  const out = after.stacks.filter(({ row }) => row === null).map(({ id }) => id);
+  expect(out).toEqual(["stack-1-1", "stack-3-6", "stack-3-6-take-2"]);
+  expect(after.frames.map(({ stackId }) => stackId)).toEqual(START.frames.map(({ stackId }) => stackId));
+});
 
 function canonical(board: Board): Board {
   return applyChanges(board, []);

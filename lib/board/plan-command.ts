@@ -12,7 +12,7 @@ import {
   planSetAside,
   planSplit,
 } from "@/lib/board/plan-frames";
-import { planAddLine, planPlace, planRemoveLine, planTake } from "@/lib/board/plan-places";
+import { planAddLine, planPlace, planRemoveLine, planTake, planTakeOut } from "@/lib/board/plan-places";
 import type { AnswerAction } from "@/lib/sorting/types";
 
 /**
@@ -106,12 +106,22 @@ function planAction(board: Board, action: AnswerAction, newStackId: string | und
           )
         : [];
     }
+    case "take-out":
+      return planTakeOut(board, action.stackIds);
+    case "new-stack": {
+      const frames = action.frameIds.map((id) => frameOf(board, id));
+      return moveToNew(board, frames, requireId(newStackId, action.frameIds), null);
+    }
     case "split-stack": {
-      if (newStackId === undefined) throw new ChangeConflict("The new stack needs an id.", action.stackId);
       const frames = framesOf(board, action.stackId);
       const from = frames.findIndex(({ id }) => id === action.atFrameId);
       if (from < 1) throw new ChangeConflict("This frame is no longer in the stack.", action.atFrameId);
-      return moveToNew(board, frames.slice(from), newStackId, null);
+      return moveToNew(board, frames.slice(from), requireId(newStackId, [action.stackId]), null);
     }
   }
+}
+
+function requireId(newStackId: string | undefined, [subjectId = ""]: readonly string[]): string {
+  if (newStackId === undefined) throw new ChangeConflict("The new stack needs an id.", subjectId);
+  return newStackId;
 }

@@ -1,9 +1,11 @@
-import { ChangeConflict, type Change } from "@/lib/board/changes";
+import { applyChanges, ChangeConflict, type Change } from "@/lib/board/changes";
 import type { CommandOf } from "@/lib/board/command-schema";
 import { freeTake, othersAt, stackOf, stacksAt, type Place } from "@/lib/board/look-up";
 import type { Board, BoardStack } from "@/lib/board/model";
 
-export function planPlace(board: Board, { stackId, place, occupied, expect }: CommandOf<"place-stack">): Change[] {
+type Placing = Pick<CommandOf<"place-stack">, "stackId" | "place" | "occupied" | "expect">;
+
+export function planPlace(board: Board, { stackId, place, occupied, expect }: Placing): Change[] {
   const stack = stackOf(board, stackId);
   if (expect && (expect.row !== stack.row || expect.column !== stack.column || expect.take !== stack.take)) {
     throw new ChangeConflict("The stack has another place now.", stackId);
@@ -22,6 +24,16 @@ export function planPlace(board: Board, { stackId, place, occupied, expect }: Co
     case "push":
       return planPush(board, stack, place);
   }
+}
+
+/** Stacks leave the grid one after another, so that takes of one tile find each other gone. */
+export function planTakeOut(board: Board, stackIds: readonly string[]): Change[] {
+  let left = board;
+  return stackIds.flatMap((stackId) => {
+    const changes = planPlace(left, { stackId, place: null, occupied: "refuse" });
+    left = applyChanges(left, changes);
+    return changes;
+  });
 }
 
 /** Both places' stacks change over, all takes of each. A stack without a place sends the others out of the grid. */

@@ -90,6 +90,8 @@ const answerActionSchema = z.discriminatedUnion("type", [
   z.object({ type: z.literal("choose-take"), stackId: z.string() }),
   z.object({ type: z.literal("merge-stacks"), stackIds: idsSchema }),
   z.object({ type: z.literal("split-stack"), stackId: z.string(), atFrameId: z.string() }),
+  z.object({ type: z.literal("new-stack"), frameIds: idsSchema }),
+  z.object({ type: z.literal("take-out"), stackIds: idsSchema }),
 ]);
 
 export const questionSchema = z.object({

@@ -73,6 +73,7 @@ function questionOfStray(draft: SortedDraft, stack: StackDraft): ProposedQuestio
       answers: [
         { label: isOne ? "Leave it loose" : "Leave them loose", action: { type: "keep" } },
         ...(host && isKept(draft, host) ? [moveTo(draft, ids, host)] : []),
+        { label: isOne ? "Make it a stack" : "Make them one stack", action: { type: "new-stack", frameIds: ids } },
       ],
       severity: SEVERITY.stray,
     },

@@ -19,15 +19,21 @@ const MOST_SINGLE_QUESTIONS = 3;
 /** Doubts about places, seams and numbers of frames. */
 export function questionsOfGrid(draft: SortedDraft): ProposedQuestion[] {
   return [
-    ...gather(holeQuestions(draft), "hole", (count) => `${count} places of the grid have no stack.`),
-    ...gather(
-      thinQuestions(draft),
-      "thin-seam",
-      (count) => `${count} seams overlap by less than the ${percent(draft.options.overlapWanted)} wanted.`,
-      ({ stackIds }) => stackIds.map((id) => nameById(draft, id)).join("–"),
-    ),
-    ...gather(fewQuestions(draft), "few-frames", (count) => {
-      return `${count} stacks have fewer than the ${draft.options.framesPerTile.least} frames wanted.`;
+    ...gather(holeQuestions(draft), {
+      kind: "hole",
+      message: (count) => `${count} places of the grid have no stack.`,
+      answer: "Leave them empty",
+    }),
+    ...gather(thinQuestions(draft), {
+      kind: "thin-seam",
+      message: (count) => `${count} seams overlap by less than the ${percent(draft.options.overlapWanted)} wanted.`,
+      answer: "Accept the small overlaps",
+      nameOne: ({ stackIds }) => stackIds.map((id) => nameById(draft, id)).join("–"),
+    }),
+    ...gather(fewQuestions(draft), {
+      kind: "few-frames",
+      message: (count) => `${count} stacks have fewer than the ${draft.options.framesPerTile.least} frames wanted.`,
+      answer: "Merge them as they are",
     }),
     ...retakeQuestions(draft),
     ...doubledQuestions(draft),
@@ -36,11 +42,18 @@ export function questionsOfGrid(draft: SortedDraft): ProposedQuestion[] {
   ];
 }
 
+interface Gathering {
+  readonly kind: QuestionKind;
+  readonly message: (count: number) => string;
+  /** What accepts them all. */
+  readonly answer: string;
+  readonly nameOne?: (question: ProposedQuestion) => string;
+}
+
+/** Many doubts of one kind as one question: accepted all together, or mended one by one on the board. */
 function gather(
   questions: readonly ProposedQuestion[],
-  kind: QuestionKind,
-  messageFor: (count: number) => string,
-  nameOne: (question: ProposedQuestion) => string = ({ tile, message }) => tile ?? message,
+  { kind, message, answer, nameOne = ({ tile, message: own }) => tile ?? own }: Gathering,
 ): ProposedQuestion[] {
   if (questions.length <= MOST_SINGLE_QUESTIONS) return [...questions];
   const first = questions[0];
@@ -50,10 +63,11 @@ function gather(
     {
       ...first,
       key: `${kind} several`,
-      message: messageFor(questions.length),
+      message: message(questions.length),
       evidence: `${names.slice(0, 12).join(", ")}${names.length > 12 ? " and more" : ""}.`,
       frameIds: questions.flatMap((question) => question.frameIds),
       stackIds: [...new Set(questions.flatMap((question) => question.stackIds))],
+      answers: [{ label: answer, action: ACCEPT }],
     },
   ];
 }
@@ -118,9 +132,16 @@ function fewQuestions(draft: SortedDraft): ProposedQuestion[] {
     frameIds: [],
     stackIds: [stack.id],
     tile: tileOf(draft, stack.index),
-    answers: [{ label: "Merge it as it is", action: ACCEPT }],
+    answers: [{ label: "Merge it as it is", action: ACCEPT }, ...bringBack(stack)],
     severity: SEVERITY["few-frames"],
   }));
+}
+
+/** More frames to be had are those set aside. */
+function bringBack({ frames }: StackDraft): ProposedQuestion["answers"] {
+  const frameIds = frames.flatMap(({ frame, setAside }) => (setAside === null ? [] : [frame.id]));
+  if (frameIds.length === 0) return [];
+  return [{ label: `Bring back ${countOf(frameIds.length)}`, action: { type: "bring-back", frameIds } }];
 }
 
 function countOf(frames: number): string {
@@ -189,7 +210,13 @@ function softStackQuestions(draft: SortedDraft): ProposedQuestion[] {
         frameIds: [],
         stackIds: [stack.id],
         tile: tileOf(draft, index),
-        answers: [{ label: "Merge it as it is", action: ACCEPT }],
+        answers: [
+          { label: "Merge it as it is", action: ACCEPT },
+          {
+            label: "Set all aside",
+            action: { type: "set-aside", frameIds: framesInUse(stack).map(({ frame }) => frame.id), reason: "soft" },
+          },
+        ],
         severity: SEVERITY["soft-stack"],
       } satisfies ProposedQuestion,
     ];

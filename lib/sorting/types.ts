@@ -160,7 +160,11 @@ export type AnswerAction =
   | { readonly type: "bring-back"; readonly frameIds: readonly string[] }
   | { readonly type: "choose-take"; readonly stackId: string }
   | { readonly type: "merge-stacks"; readonly stackIds: readonly string[] }
-  | { readonly type: "split-stack"; readonly stackId: string; readonly atFrameId: string };
+  | { readonly type: "split-stack"; readonly stackId: string; readonly atFrameId: string }
+  /** Together in a stack of their own, without a place. */
+  | { readonly type: "new-stack"; readonly frameIds: readonly string[] }
+  /** Out of the grid; they stay stacks. */
+  | { readonly type: "take-out"; readonly stackIds: readonly string[] };
 
 export interface ProposedQuestion {
   /** The same doubt has the same key in every sorting. */

@@ -47,7 +47,7 @@ test("the docket of a shoot is worked to zero by keyboard only, and a new sortin
     if (left > 1)
       await expect(page.getByRole("group", { name: new RegExp(`^Question \\d+ of ${left - 1}$`) })).toBeFocused();
   }
-  await expect(page.getByText("No open questions")).toBeVisible();
+  await expect(page.getByText("No open questions", { exact: true })).toBeVisible();
   expect.soft(await findSerious(page), "no question left").toEqual([]);
   const waits = await page.evaluate(() => window.answerWaitsMs);
   expect(waits).toHaveLength(before.questions.length);

@@ -79,7 +79,7 @@ test("an answer does what it says, the next question comes by itself and has the
   expect(document.activeElement).toBe(group());
   expectOpen("C1");
   expect(said).toEqual([
-    expect.stringMatching(/^Move to A4: answered\. 2 questions left\. Are 3 frames enough for C1\?/),
+    expect.stringMatching(/^Move to A4: answered\. 2 questions open\. Are 3 frames enough for C1\?/),
   ]);
 });
 

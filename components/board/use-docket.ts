@@ -1,6 +1,6 @@
 "use client";
 
-import { useState } from "react";
+import { useEffect, useRef, useState } from "react";
 import { useBoardCommands } from "@/components/board/board-commands";
 import { LOOSE } from "@/components/board/use-board-place";
 import type { BoardIndex } from "@/lib/board/board-index";
@@ -58,12 +58,28 @@ export function useDocket({ index, chosen, onChoose }: DocketInput): Docket {
   const at = walkAt(questions, walk);
   const question = order[at] ?? null;
 
-  const goTo = (next: DocketWalk) => {
-    const shown = questions.find(({ key }) => key === next.shown) ?? null;
+  // Said once the next question stands there: an answer may have settled that one too.
+  const done = useRef<string | null>(null);
+  const latest = useRef({ announce, question, count: order.length });
+  useEffect(() => {
+    latest.current = { announce, question, count: order.length };
+  });
+  const key = question?.key ?? null;
+  useEffect(() => {
+    if (done.current === null) return;
+    const { announce: say, question: shown, count } = latest.current;
+    say(
+      `${done.current} ${shown ? `${countOf(count, "question")} open. ${shown.message} ${shown.evidence}` : "No open questions."}`.trim(),
+    );
+    done.current = null;
+  }, [key]);
+
+  const goTo = (next: DocketWalk, said: string) => {
+    done.current = said;
+    const shown = questions.find((candidate) => candidate.key === next.shown) ?? null;
     const place = shown && questionPlace(index, shown);
     setState({ walk: next, chosen });
     if (shown && place !== chosen) onChoose(place);
-    return shown;
   };
 
   return {
@@ -74,25 +90,15 @@ export function useDocket({ index, chosen, onChoose }: DocketInput): Docket {
     place: question && questionPlace(index, question),
     answer: ({ label, answer }) => {
       if (!question || !run(settleDraft(question, answer, newId))) return false;
-      const next = goTo(answerShown(questions, walk));
-      announce(
-        `${label}: answered. ${next ? `${countOf(order.length - 1, "question")} left. ${said(next)}` : "No open questions."}`,
-      );
+      goTo(answerShown(questions, walk), `${label}: answered.`);
       return true;
     },
     postpone: () => {
-      const next = goTo(postponeShown(questions, walk));
-      announce(next === question || !next ? "It stays open, and is the only one." : `Put off. ${said(next)}`);
+      if (order.length === 1) return announce("It stays open, and is the only one.");
+      goTo(postponeShown(questions, walk), "Put off.");
     },
-    turn: (step) => {
-      const next = goTo(turnWalk(questions, walk, step));
-      if (next) announce(said(next));
-    },
+    turn: (step) => goTo(turnWalk(questions, walk, step), ""),
   };
-}
-
-function said({ message, evidence }: BoardQuestion): string {
-  return `${message} ${evidence}`;
 }
 
 /** To the first question of a newly chosen tile, unless the docket shows one of it already. */

@@ -107,5 +107,11 @@ function isDone(board: Board, action: AnswerAction): boolean {
       return board.stacks.filter(({ id }) => action.stackIds.includes(id)).length < 2;
     case "split-stack":
       return all([action.atFrameId], ({ stackId }) => stackId !== action.stackId);
+    case "new-stack": {
+      const held = new Set(board.frames.flatMap(({ id, stackId }) => (action.frameIds.includes(id) ? [stackId] : [])));
+      return held.size === 1 && !held.has(null);
+    }
+    case "take-out":
+      return board.stacks.every(({ id, row }) => !action.stackIds.includes(id) || row === null);
   }
 }

@@ -4,6 +4,7 @@ import { DEMO_ACCOUNTS, DEMO_PASSWORD } from "@/lib/demo/accounts";
 import { makeDemo } from "@/lib/demo/make";
 import { removeDemo } from "@/lib/demo/remove";
 import { listDemoAccounts } from "@/lib/people/reads";
+import { withoutParameters } from "@/lib/errors/logs";
 import { readDemoState } from "@/lib/storage/demo-state";
 import { makeDemoShoot } from "./demo/make-demo-shoot";
 
@@ -33,7 +34,8 @@ try {
   if (command === "make" && address) await make(address);
   else if (command === "remove") await remove();
   else throw new Error("Use: make ADDRESS, or remove");
-} catch (error) {
+} catch (thrown) {
+  const error = withoutParameters(thrown);
   console.error(error instanceof Error ? error.message : String(error));
   process.exitCode = 1;
 } finally {

@@ -1,5 +1,6 @@
 /** `npm run --silent user -- add|password|disable|list`: accounts from the command line, also while the product runs. */
 import { closeDatabase } from "@/db/client";
+import { withoutParameters } from "@/lib/errors/logs";
 import { runUserCommand, UsageError } from "./user/run";
 
 const USAGE = `Usage, with the password on standard input where one is needed:
@@ -22,7 +23,8 @@ async function readPassword(): Promise<string> {
 process.umask(0o077);
 try {
   console.log(await runUserCommand(process.argv.slice(2), readPassword));
-} catch (error) {
+} catch (thrown) {
+  const error = withoutParameters(thrown);
   // One clear line: a stack trace helps nobody at a prompt.
   console.error(error instanceof Error ? error.message : String(error));
   if (error instanceof UsageError) console.error(USAGE);

@@ -3,6 +3,7 @@ import type { ProjectActions } from "@/components/projects/project-actions";
 import { ProjectMenu } from "@/components/projects/project-menu";
 import { ProjectStubs } from "@/components/projects/project-stubs";
 import type { Role } from "@/lib/auth/roles";
+import type { Progress } from "@/lib/frames/schema";
 
 /** What the list shows of a project. */
 export interface ListedProject {
@@ -12,7 +13,7 @@ export interface ListedProject {
   readonly frames: number;
   readonly tiles: number;
   readonly openQuestions: number;
-  readonly isSorting: boolean;
+  readonly progress: Progress;
   readonly members: readonly { readonly userId: string; readonly name: string; readonly role: Role }[];
   readonly bytes: number;
   readonly isArchived: boolean;
@@ -56,7 +57,7 @@ function ProjectTicket({ project, actions }: ProjectTicketProps) {
         </div>
         {project.role === "lead" && <ProjectMenu project={menuFacts(project)} actions={actions} />}
       </div>
-      <ProjectStubs project={project} />
+      <ProjectStubs project={{ id: project.id, name: project.name, status: { ...project, ...project.progress } }} />
     </article>
   );
 }

@@ -7,7 +7,7 @@ import { JobTicket } from "@/components/shell/job-ticket";
 vi.mock("next/navigation", () => ({ usePathname: () => "/projects/p1/board" }));
 
 const PROGRESS = { received: 108, analysed: 108, failed: 0, total: 108, sorted: true };
-const STATUS = { tiles: 17, openQuestions: 3, rows: 3, columns: 6 };
+const STATUS = { frames: 108, tiles: 17, openQuestions: 3, rows: 3, columns: 6 };
 
 // A loaded machine takes its time; what is waited for comes or the test fails.
 configure({ asyncUtilTimeout: 20_000 });
@@ -42,15 +42,16 @@ test("each stub leads to its view, and the present one is marked", () => {
   ]);
   expect(links.map((link) => link.getAttribute("aria-current"))).toEqual([null, "page", null]);
   expect(links.map((link) => link.textContent)).toEqual([
-    "1Bring in108 files",
-    "2Board3 questions",
+    "1Bring in108 frames",
+    "2Board17 tiles, 3 questions",
     "3Hand overready, 3 open",
   ]);
 });
 
 test("a newer count replaces the one the server rendered", async () => {
   show((url) => Response.json(url.endsWith("/progress") ? PROGRESS : { ...STATUS, openQuestions: 1 }));
-  expect(await screen.findByText("1 question")).toBeTruthy();
+  await screen.findByText("1 question");
+  expect(screen.getAllByRole("link")[1]?.textContent).toBe("2Board17 tiles, 1 question");
 });
 
 test("a session that ended is said, with the way back to this page", async () => {

@@ -5,8 +5,9 @@ import Link from "next/link";
 import { usePathname } from "next/navigation";
 import { Perforation } from "@/components/shell/perforation";
 import { ticketLines, type TicketLine } from "@/components/shell/ticket-lines";
-import { classNames } from "@/components/ui/class-names";
 import { TicketProblem } from "@/components/shell/ticket-problem";
+import { TicketWords } from "@/components/shell/ticket-words";
+import { classNames } from "@/components/ui/class-names";
 import { useProjectEvents } from "@/lib/events/use-project-events";
 import { progressQuery } from "@/lib/frames/queries";
 import type { Progress } from "@/lib/frames/schema";
@@ -75,13 +76,6 @@ function isBusy(progress: Progress | undefined): boolean {
   return progress !== undefined && progress.total > 0 && !(progress.sorted && progress.received === progress.total);
 }
 
-const LINE_TONES: Record<TicketLine["tone"], string> = {
-  quiet: "text-quiet",
-  ink: "text-quiet",
-  ochre: "text-ochre font-semibold",
-  madder: "text-madder font-semibold",
-};
-
 interface StubProps {
   readonly href: string;
   readonly number: number;
@@ -112,7 +106,7 @@ function Stub({ href, number, title, line, isHere }: StubProps) {
         >
           {title}
         </span>
-        <span className={classNames("figures block text-sm", LINE_TONES[line.tone])}>{line.text}</span>
+        <TicketWords line={line} />
       </span>
     </Link>
   );

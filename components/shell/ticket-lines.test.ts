@@ -7,6 +7,7 @@ const NOTHING: TicketStatus = {
   failed: 0,
   total: 0,
   sorted: false,
+  frames: 0,
   tiles: 0,
   openQuestions: 0,
 };
@@ -47,13 +48,27 @@ test("open questions are ochre on the board and named at the handover", () => {
     tiles: 17,
     openQuestions: 3,
   });
-  expect(lines.board).toEqual({ text: "3 questions", tone: "ochre" });
+  expect(lines.board).toEqual({ text: "17 tiles, 3 questions", tone: "ochre" });
   expect(lines.handover).toEqual({ text: "ready, 3 open", tone: "ochre" });
 });
 
+test("once all is measured, frames are counted: a raw file and its picture are one", () => {
+  const status = { total: 216, received: 216, analysed: 216, sorted: true, frames: 108, tiles: 18 };
+  expect(texts(status)[0]).toBe("108 frames");
+});
+
 test("unreadable files are said at the intake, as a failure", () => {
-  const { intake } = ticketLines({ ...NOTHING, total: 3, received: 3, analysed: 2, failed: 1, sorted: true, tiles: 1 });
-  expect(intake).toEqual({ text: "3 files, 1 unreadable", tone: "madder" });
+  const { intake } = ticketLines({
+    ...NOTHING,
+    total: 3,
+    received: 3,
+    analysed: 2,
+    failed: 1,
+    sorted: true,
+    frames: 2,
+    tiles: 1,
+  });
+  expect(intake).toEqual({ text: "2 frames, 1 unreadable", tone: "madder" });
 });
 
 test("frames added later leave the tiles in place while they are sorted", () => {

@@ -1,12 +1,13 @@
 import { countOf } from "@/lib/board/words";
 
-/** What the job ticket needs to know of a project. Counts of files are those of `/progress`. */
+/** What the job ticket and the list of projects need to know of a project. Counts of files are those of `/progress`. */
 export interface TicketStatus {
   readonly received: number;
   readonly analysed: number;
   readonly failed: number;
   readonly total: number;
   readonly sorted: boolean;
+  readonly frames: number;
   readonly tiles: number;
   readonly openQuestions: number;
 }
@@ -22,22 +23,23 @@ export function ticketLines(status: TicketStatus): Record<"intake" | "board" | "
   return { intake: intakeLine(status), board: boardLine(status), handover: handoverLine(status) };
 }
 
-function intakeLine({ received, analysed, failed, total }: TicketStatus): TicketLine {
+function intakeLine({ received, analysed, failed, total, frames }: TicketStatus): TicketLine {
   if (total === 0) return { text: "nothing yet", tone: "quiet" };
   // How many more wait in the browser is not known here.
   if (received < total)
     return { text: received === 0 ? "on the way" : `${countOf(received, "file")} in, more to come`, tone: "ink" };
   if (analysed + failed < received)
     return { text: `${analysed + failed} of ${countOf(received, "file")} measured`, tone: "ink" };
-  if (failed > 0) return { text: `${countOf(received, "file")}, ${failed} unreadable`, tone: "madder" };
-  return { text: countOf(received, "file"), tone: "ink" };
+  if (failed > 0) return { text: `${countOf(frames, "frame")}, ${failed} unreadable`, tone: "madder" };
+  return { text: countOf(frames, "frame"), tone: "ink" };
 }
 
 function boardLine({ received, sorted, tiles, openQuestions }: TicketStatus): TicketLine {
   if (received === 0) return { text: "not yet", tone: "quiet" };
   if (!sorted && tiles === 0) return { text: "sorting", tone: "ink" };
   if (!sorted) return { text: `${countOf(tiles, "tile")}, sorting again`, tone: "ink" };
-  if (openQuestions > 0) return { text: countOf(openQuestions, "question"), tone: "ochre" };
+  if (openQuestions > 0)
+    return { text: `${countOf(tiles, "tile")}, ${countOf(openQuestions, "question")}`, tone: "ochre" };
   if (tiles === 0) return { text: "no tiles found", tone: "madder" };
   return { text: `${countOf(tiles, "tile")}, no questions`, tone: "ink" };
 }

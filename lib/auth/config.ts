@@ -6,6 +6,7 @@ import { createSession, removeSession, SESSION_SECONDS } from "@/lib/auth/sessio
 import { tryPassword } from "@/lib/auth/sign-in";
 import { waitError } from "@/lib/auth/sign-in-message";
 import { environment, followAppUrl } from "@/lib/env";
+import { withoutParameters } from "@/lib/errors/logs";
 import { sessionIdSchema } from "@/lib/ids";
 import { emailSchema } from "@/lib/people/schema";
 import { authSecret } from "@/lib/storage/auth-secret";
@@ -22,7 +23,11 @@ export function authOptions(): NextAuthOptions {
     providers: [
       CredentialsProvider({
         credentials: { email: { type: "email" }, password: { type: "password" } },
-        authorize: (credentials, request) => authorize(credentials, request.headers ?? {}),
+        // next-auth hands the message of what is thrown to the browser, in an address.
+        authorize: (credentials, request) =>
+          authorize(credentials, request.headers ?? {}).catch((error: unknown) => {
+            throw withoutParameters(error);
+          }),
       }),
     ],
     callbacks: {

@@ -11,25 +11,32 @@ import type { FileId, FrameId, UploadId } from "@/lib/ids";
 import { REASONS } from "@/lib/imaging/picture-error";
 import type { Orientation } from "@/lib/metadata/types";
 
-/** Counts of one moment: one statement, so that no file is counted on one side only. */
+// Table names by hand: in a select from one table drizzle leaves them out.
+const filesWhere = (condition: string) =>
+  sql<number>`(select count(*) from files where files.project_id = projects.id and ${sql.raw(condition)})`;
+/** A raw file without its picture is in the manifest's list of what is unreadable, until the picture comes. */
+const RAW_ALONE = "(files.state = 'analysed' and files.is_raw and files.frame_id is null)";
+
+/** Counts of one moment, of `projects`: one statement, so that no file is counted on one side only. */
+export const progressColumns = {
+  received: filesWhere("true"),
+  analysed: filesWhere(`files.state in ('analysed', 'duplicate') and not ${RAW_ALONE}`),
+  failed: filesWhere(`(files.state = 'failed' or ${RAW_ALONE})`),
+  total: sql<number>`(select count(*) from ${uploads} where uploads.project_id = projects.id and uploads.cancelled_at_ms is null)`,
+  isCovered: sql<number>`projects.sorted_version = projects.content_version`,
+};
+
+/** What was read by `progressColumns`, as `/progress` says it. */
+export function toProgress(row: Record<keyof typeof progressColumns, number>): Progress {
+  const { received, analysed, failed, total, isCovered } = row;
+  const isAllIn = received > 0 && analysed + failed === received;
+  return { received, analysed, failed, total, sorted: isAllIn && isCovered === 1 };
+}
+
 export async function getProgress(access: ProjectAccess): Promise<Progress> {
-  // Table names by hand: in a select from one table drizzle leaves them out.
-  const filesWhere = (condition: string) =>
-    sql<number>`(select count(*) from files where files.project_id = projects.id and ${sql.raw(condition)})`;
-  const [row] = await database()
-    .select({
-      received: filesWhere("true"),
-      analysed: filesWhere("files.state in ('analysed', 'duplicate')"),
-      failed: filesWhere("files.state = 'failed'"),
-      total: sql<number>`(select count(*) from ${uploads} where uploads.project_id = projects.id and uploads.cancelled_at_ms is null)`,
-      isCovered: sql<number>`projects.sorted_version = projects.content_version`,
-    })
-    .from(projects)
-    .where(eq(projects.id, access.projectId));
+  const [row] = await database().select(progressColumns).from(projects).where(eq(projects.id, access.projectId));
   if (!row) throw new AppError("not_found", "This project has just been deleted.");
-  const { isCovered, ...counts } = row;
-  const isAllIn = counts.received > 0 && counts.analysed + counts.failed === counts.received;
-  return { ...counts, sorted: isAllIn && isCovered === 1 };
+  return toProgress(row);
 }
 
 /** Why the last sorting failed; null: it did not. */

@@ -17,3 +17,14 @@ test.each(["=1+1", "+1", "-1", "@x", "\tx", "\rx"])("text like %j cannot run as 
       .startsWith("'"),
   ).toBe(true);
 });
+
+test.each(["a;=1+1", "a;b;+1", ";-1"])(
+  "text like %j cannot run as a formula where cells are parted by semicolons",
+  (text) => {
+    for (const cell of writeCsv([[text]])
+      .split(";")
+      .slice(1))
+      expect(cell.startsWith("'")).toBe(cell !== "b");
+    expect(writeCsv([["a;b; c"]])).toBe("a;b; c\r\n");
+  },
+);

@@ -46,7 +46,8 @@ export function manifestToCsv(manifest: Manifest): string {
 
 /**
  * Rows as CSV: CRLF after each, cells in quotes where they hold a comma, a quote or a line break.
- * Text that a spreadsheet would run as a formula gets an apostrophe before it.
+ * Text that a spreadsheet would run as a formula gets an apostrophe before it, after a semicolon too: where the comma is
+ * the decimal sign, spreadsheets part cells there.
  * Source: RFC 4180; formulas: OWASP "CSV Injection" (from memory).
  */
 export function writeCsv(rows: readonly (readonly Cell[])[]): string {
@@ -56,6 +57,6 @@ export function writeCsv(rows: readonly (readonly Cell[])[]): string {
 function writeCell(cell: Cell): string {
   if (cell === null) return "";
   if (typeof cell !== "string") return String(cell);
-  const text = /^[=+\-@\t\r\n]/.test(cell) ? `'${cell}` : cell;
+  const text = cell.replace(/(^|;)(?=[=+\-@\t\r\n])/g, "$1'");
   return /[",\r\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text;
 }

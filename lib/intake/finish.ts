@@ -2,7 +2,7 @@ import "server-only";
 import type { UploadId } from "@/lib/ids";
 import { findUpload, listUnrecordedUploads } from "@/lib/intake/reads";
 import { recordFinishedUpload } from "@/lib/intake/writes";
-import { storedBytes, syncOriginal } from "@/lib/storage/disk";
+import { lastByteAtMs, storedBytes, syncOriginal } from "@/lib/storage/disk";
 
 /**
  * Records an upload whose last byte is in, once its bytes are safe on the disk. Called before the answer to that byte,
@@ -25,11 +25,14 @@ export async function finishIfComplete(id: UploadId): Promise<boolean> {
 /**
  * Recovery: a process that dies between the last byte and its record leaves a complete upload that no client will ever
  * send to again. Runs at the worker's start and every minute.
+ * @param untilMs - uploads whose last byte came later are left alone: a living process is about to record them
  * @returns how many were finished
  */
-export async function finishCompleteUploads(): Promise<number> {
+export async function finishCompleteUploads(untilMs: number): Promise<number> {
   let finished = 0;
   for (const { id } of await listUnrecordedUploads()) {
+    const movedAtMs = await lastByteAtMs(id);
+    if (movedAtMs === null || movedAtMs > untilMs) continue;
     if (await finishIfComplete(id)) finished += 1;
   }
   return finished;

@@ -28,7 +28,6 @@ function server(): Server {
     locker: new MemoryLocker(),
     maxSize: UPLOAD_MOST_BYTES,
     relativeLocation: true,
-    disableTerminationForFinishedUploads: true,
     // Without it the last part of the whole address counts, query and all: not what the gate has looked at.
     getFileIdFromRequest: (request) => new URL(request.url).pathname.split("/").at(-1),
     namingFunction: (request) => creationOf(request).id,

@@ -7,6 +7,8 @@ import { files, frames, stacks } from "@/db/schema/frames";
 import { members, projects } from "@/db/schema/projects";
 import type { ProjectAccess, SignedInUser } from "@/lib/auth/gate";
 import type { Role } from "@/lib/auth/roles";
+import { progressColumns, toProgress } from "@/lib/frames/reads";
+import type { Progress } from "@/lib/frames/schema";
 import type { ProjectId, UserId } from "@/lib/ids";
 
 export interface Member {
@@ -24,8 +26,7 @@ export interface ProjectSummary {
   /** Places of the grid that hold a stack. */
   readonly tiles: number;
   readonly openQuestions: number;
-  /** Something came in that the board does not cover yet. */
-  readonly isSorting: boolean;
+  readonly progress: Progress;
   readonly members: readonly Member[];
   /** Originals, bytes: what deleting the project frees at least. */
   readonly bytes: number;
@@ -57,7 +58,7 @@ const summaryColumns = {
   frames: sql<number>`(select count(*) from ${frames} ${ofProject})`,
   tiles: sql<number>`(select count(distinct "row" || ' ' || "column") from ${stacks} ${ofProject} and "row" is not null)`,
   openQuestions: sql<number>`(select count(*) from ${questions} ${ofProject} and settled_at_ms is null)`,
-  isSorting: sql<number>`${projects.contentVersion} <> ${projects.sortedVersion}`.mapWith(Boolean),
+  progress: progressColumns,
   bytes: sql<number>`(select coalesce(sum(bytes), 0) from ${files} ${ofProject})`,
 };
 
@@ -70,8 +71,9 @@ export async function listProjects(user: SignedInUser): Promise<ProjectSummary[]
     .where(eq(members.userId, user.id))
     .orderBy(sql`${projects.archivedAtMs} is not null`, desc(projects.createdAtMs), asc(projects.id));
   const people = await listMembersOf(rows.map((row) => row.id));
-  return rows.map(({ archivedAtMs, ...row }) => ({
+  return rows.map(({ archivedAtMs, progress, ...row }) => ({
     ...row,
+    progress: toProgress(progress),
     isArchived: archivedAtMs !== null,
     members: people.get(row.id) ?? [],
   }));
@@ -95,10 +97,11 @@ export async function getProject(access: ProjectAccess): Promise<Project> {
     .from(projects)
     .where(eq(projects.id, access.projectId));
   if (!row) throw new Error("the project went while it was read");
-  const { archivedAtMs, framesLeast, framesMost, ...rest } = row;
+  const { archivedAtMs, framesLeast, framesMost, progress, ...rest } = row;
   const people = await listMembersOf([access.projectId]);
   return {
     ...rest,
+    progress: toProgress(progress),
     role: access.role,
     isArchived: archivedAtMs !== null,
     framesPerTile: { least: framesLeast, most: framesMost },

@@ -55,6 +55,7 @@ export type ProjectSettings = Omit<ProjectChange, "name" | "isArchived">;
 
 /** What the job ticket reads of `GET /api/projects/{id}`. */
 export const projectStatusSchema = z.object({
+  frames: z.int(),
   tiles: z.int(),
   openQuestions: z.int(),
   rows: z.int(),

@@ -1,6 +1,6 @@
 import "server-only";
 import { eq, lte, sql } from "drizzle-orm";
-import { database, writeTransaction } from "@/db/client";
+import { database, writeTransaction, type Transaction } from "@/db/client";
 import { files, uploads } from "@/db/schema/frames";
 import { members, projects } from "@/db/schema/projects";
 import { removals } from "@/db/schema/removals";
@@ -36,37 +36,55 @@ export async function createProject(
   return id;
 }
 
-/** What stacks and places follow from: changed, the earlier results no longer hold. The rest only raises questions. */
-const SORTED_BY = ["longestPauseSeconds", "expectedRows", "expectedColumns"] as const;
+/** What the proposal rests on, as the table has it. */
+const SETTINGS = {
+  overlapWanted: projects.overlapWanted,
+  framesLeast: projects.framesLeast,
+  framesMost: projects.framesMost,
+  longestPauseSeconds: projects.longestPauseSeconds,
+  expectedRows: projects.expectedRows,
+  expectedColumns: projects.expectedColumns,
+};
+type SettingName = keyof typeof SETTINGS;
 
-/** Name, archive and settings at once, as PATCH sends them. What the proposal rests on asks for a new sorting. */
+/** What stacks and places follow from: changed, the earlier results no longer hold. The rest only raises questions. */
+const SORTED_BY: ReadonlySet<SettingName> = new Set(["longestPauseSeconds", "expectedRows", "expectedColumns"]);
+
+/** Name, archive and settings at once, as PATCH sends them. What the proposal rests on, changed, asks for a new sorting. */
 export async function changeProject(access: ProjectAccess, change: ProjectChange): Promise<void> {
-  const { framesPerTile, isArchived, name, ...settings } = change;
-  const asksForSorting = framesPerTile !== undefined || Object.keys(settings).length > 0;
+  const { framesPerTile, isArchived, name, ...rest } = change;
   const nowMs = Date.now();
+  const settings = {
+    ...rest,
+    ...(framesPerTile && { framesLeast: framesPerTile.least, framesMost: framesPerTile.most }),
+  };
   await writeTransaction(async (tx) => {
-    const [before] = await tx
-      .select({
-        longestPauseSeconds: projects.longestPauseSeconds,
-        expectedRows: projects.expectedRows,
-        expectedColumns: projects.expectedColumns,
-      })
-      .from(projects)
-      .where(eq(projects.id, access.projectId));
-    const isAnew = SORTED_BY.some((name) => settings[name] !== undefined && settings[name] !== before?.[name]);
+    const changed = await changedSettings(tx, access, settings);
+    const isAnew = changed.some((setting) => SORTED_BY.has(setting));
+    const asksForSorting = changed.length > 0 && !isAnew;
     await tx
       .update(projects)
       .set({
         ...settings,
         ...(name !== undefined && { name }),
-        ...(framesPerTile && { framesLeast: framesPerTile.least, framesMost: framesPerTile.most }),
         ...(isArchived !== undefined && { archivedAtMs: isArchived ? nowMs : null }),
-        ...(asksForSorting && !isAnew && { contentVersion: sql`${projects.contentVersion} + 1` }),
+        ...(asksForSorting && { contentVersion: sql`${projects.contentVersion} + 1` }),
       })
       .where(eq(projects.id, access.projectId));
     if (isAnew) await wantSortingAnew(tx, access, "changed settings that the sorting follows", nowMs);
     else if (asksForSorting) await requestJob(tx, sortJobRequest(access.projectId, 0), nowMs);
   });
+}
+
+/** Those that are other than they are now: a form sends them all, changed or not. */
+async function changedSettings(
+  tx: Transaction,
+  access: ProjectAccess,
+  settings: Partial<Record<SettingName, number | null | undefined>>,
+): Promise<SettingName[]> {
+  const [now] = await tx.select(SETTINGS).from(projects).where(eq(projects.id, access.projectId));
+  const names = Object.keys(SETTINGS) as SettingName[];
+  return names.filter((name) => settings[name] !== undefined && settings[name] !== now?.[name]);
 }
 
 export function renameProject(access: ProjectAccess, name: string): Promise<void> {

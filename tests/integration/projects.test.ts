@@ -152,7 +152,11 @@ test("settings that the sorting rests on ask for a new one; a new name does not"
   };
   expect(await (await patch(id, change)).json()).toMatchObject({ name: "New name", ...change });
   expect(await state()).toEqual([1, 1]);
+  // A form sends all of them, changed or not.
+  await patch(id, { ...change, name: "Newer name" });
+  expect(await state()).toEqual([1, 1]);
   expect(await (await patch(id, { longestPauseSeconds: null })).json()).toMatchObject({ longestPauseSeconds: null });
+  expect(await state()).toEqual([2, 1]);
 });
 
 test.each([

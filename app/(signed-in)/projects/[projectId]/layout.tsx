@@ -28,12 +28,12 @@ export default async function ProjectLayout({ params, children }: ProjectLayoutP
   const { projectId } = await params;
   const access = await openProject(projectId, "view");
   const [person, project, progress] = await Promise.all([openSession(), getProject(access), getProgress(access)]);
-  const { tiles, openQuestions, rows, columns } = project;
+  const { frames, tiles, openQuestions, rows, columns } = project;
   return (
     <div className="flex min-h-dvh flex-col">
       <SkipLink />
       <ProjectHeader person={person} project={project} />
-      <JobTicket projectId={projectId} progress={progress} status={{ tiles, openQuestions, rows, columns }} />
+      <JobTicket projectId={projectId} progress={progress} status={{ frames, tiles, openQuestions, rows, columns }} />
       <UploadsStrip projectId={projectId} />
       <main id="content" tabIndex={-1} className="flex flex-1 flex-col outline-none">
         {children}

@@ -78,6 +78,9 @@ export const recordSchema = z.object({
   people: z.array(z.object({ id: z.string(), name: z.string() })),
 });
 
+export type RecordPage = z.infer<typeof recordSchema>;
+export type RecordEntry = RecordPage["entries"][number];
+
 /** `POST /api/projects/{id}/presence` `{"tile": NAME or null}` and `GET`: who has the board open now, others and oneself. */
 export const presenceSchema = z.object({
   people: z.array(z.object({ userId: z.string(), name: z.string(), tile: z.string().nullable() })),

@@ -1,7 +1,7 @@
-import { type QueryClient, queryOptions, replaceEqualDeep } from "@tanstack/react-query";
+import { infiniteQueryOptions, type QueryClient, queryOptions, replaceEqualDeep } from "@tanstack/react-query";
 import type { z } from "zod";
 import { applyChanges, type Change } from "@/lib/board/changes";
-import { boardSinceSchema, undoStateSchema } from "@/lib/board/command-answers";
+import { boardSinceSchema, type RecordPage, recordSchema, undoStateSchema } from "@/lib/board/command-answers";
 import type { Board } from "@/lib/board/model";
 import { boardSchema } from "@/lib/board/schema";
 import { fetchJson } from "@/lib/http/fetch-json";
@@ -12,6 +12,7 @@ export const boardKeys = {
   since: (projectId: string, revision: number) => ["projects", projectId, "board", "since", revision] as const,
   /** What others did lately, as far as this page was told. */
   told: (projectId: string) => ["projects", projectId, "board", "told"] as const,
+  record: (projectId: string) => ["projects", projectId, "board", "record"] as const,
   undo: (projectId: string) => ["projects", projectId, "board", "undo"] as const,
 };
 
@@ -39,6 +40,57 @@ export function undoQuery(projectId: string) {
   return queryOptions({
     queryKey: boardKeys.undo(projectId),
     queryFn: ({ signal }) => fetchJson(`/api/projects/${projectId}/record/mine`, undoStateSchema, { signal }),
+  });
+}
+
+export interface RecordFilter {
+  /** Id of the person; null: anybody. */
+  readonly person: string | null;
+  /** Name of the tile; null: any, and steps that touched none. */
+  readonly tile: string | null;
+}
+
+/** The change record, newest first, a page of 100 after another. */
+export function recordQuery(projectId: string, filter: RecordFilter) {
+  return infiniteQueryOptions({
+    queryKey: [...boardKeys.record(projectId), filter],
+    queryFn: ({ pageParam, signal }) => fetchRecord(projectId, { ...filter, before: pageParam }, signal),
+    initialPageParam: null as number | null,
+    getNextPageParam: ({ next }) => next,
+  });
+}
+
+function fetchRecord(
+  projectId: string,
+  { person, tile, before }: RecordFilter & { readonly before: number | null },
+  signal?: AbortSignal,
+) {
+  const query = new URLSearchParams();
+  if (person !== null) query.set("person", person);
+  if (tile !== null) query.set("tile", tile);
+  if (before !== null) query.set("before", String(before));
+  return fetchJson(`/api/projects/${projectId}/record?${query}`, recordSchema, { signal });
+}
+
+/** How many steps came after a revision, and whose they are. */
+export function stepsAfterQuery(projectId: string, revision: number) {
+  return queryOptions({
+    queryKey: [...boardKeys.record(projectId), "after", revision],
+    queryFn: async ({ signal }) => {
+      const counts = new Map<string, number>();
+      let before: number | null = null;
+      do {
+        const page: RecordPage = await fetchRecord(projectId, { person: null, tile: null, before }, signal);
+        const later = page.entries.filter((entry) => entry.revision > revision);
+        for (const { person } of later) {
+          const name = person?.name ?? "the computation";
+          counts.set(name, (counts.get(name) ?? 0) + 1);
+        }
+        before = later.length < page.entries.length ? null : page.next;
+      } while (before !== null);
+      return [...counts].map(([name, count]) => ({ name, count }));
+    },
+    staleTime: 0,
   });
 }
 

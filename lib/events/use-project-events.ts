@@ -94,4 +94,5 @@ function followBoard(client: QueryClient, projectId: string, revision: number): 
   // Where it cannot be fetched now, the next event or the next look at the page asks again.
   catchUpBoard(client, projectId, revision).catch(() => undefined);
   void client.invalidateQueries({ queryKey: boardKeys.undo(projectId) });
+  void client.invalidateQueries({ queryKey: boardKeys.record(projectId) });
 }

@@ -48,6 +48,11 @@ const PAGES: Readonly<Record<string, PageRule>> = {
     answer: 200,
     audience: "view",
   },
+  "(signed-in)/projects/[projectId]/record/page.tsx": {
+    path: "/projects/PROJECT/record",
+    answer: 200,
+    audience: "view",
+  },
   "(signed-in)/projects/[projectId]/settings/page.tsx": {
     path: "/projects/PROJECT/settings",
     answer: 200,

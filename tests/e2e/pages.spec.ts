@@ -49,6 +49,7 @@ test("every page of an empty project is accessible", async ({ page }) => {
   const projectId = await makeProject(page.request, "Nothing yet");
   await expectAccessible(page, `/projects/${projectId}/intake`, headingShown);
   await expectAccessible(page, `/projects/${projectId}/board`, headingShown);
+  await expectAccessible(page, `/projects/${projectId}/record`, headingShown);
   await expectAccessible(page, `/projects/${projectId}/settings`, headingShown);
   await expectAccessible(page, "/projects", headingShown);
 });

@@ -4,7 +4,7 @@ import type { CropCentre } from "@/lib/board/layout";
 import type { BoardFrame } from "@/lib/board/model";
 import { distanceText, percent } from "@/lib/board/words";
 
-interface BenchFrameProps {
+export interface BenchFrameProps {
   readonly projectId: string;
   readonly frame: BoardFrame;
   /** Null: the whole frame. */
@@ -17,11 +17,35 @@ interface BenchFrameProps {
   readonly onCompare: (() => void) | null;
 }
 
-/** One frame on the bench: its crop at 100 %, or all of it, and what was measured. */
+/** One frame on the bench of somebody who may not change it: its crop at 100 %, or all of it, and what was measured. */
 export function BenchFrame(props: BenchFrameProps) {
-  const { projectId, frame, centre, size, isReference, isAsked, isWhy, onCompare } = props;
-  const crop = (
+  const { frame, size, onCompare } = props;
+  return (
+    <li style={{ width: size.widthPx }} className="text-sm">
+      {onCompare ? (
+        <button
+          type="button"
+          aria-label={`Compare ${frame.name} with the reference at 100 %`}
+          onClick={onCompare}
+          className="block"
+        >
+          <FramePicture {...props} />
+        </button>
+      ) : (
+        <FramePicture {...props} />
+      )}
+      <FrameName frame={frame} />
+      <p className={placeClass(props)}>{placeText(props)}</p>
+      <FrameReason {...props} />
+    </li>
+  );
+}
+
+/** The crop, with what marks it out in its corners. */
+export function FramePicture({ projectId, frame, centre, size, isReference, isAsked }: BenchFrameProps) {
+  return (
     <span
+      data-frame={frame.id}
       style={{ width: size.widthPx, height: size.heightPx }}
       className={classNames(
         "relative block overflow-hidden bg-well",
@@ -37,43 +61,57 @@ export function BenchFrame(props: BenchFrameProps) {
       )}
     </span>
   );
+}
+
+export function FrameName({ frame }: { readonly frame: BoardFrame }) {
   return (
-    <li data-frame={frame.id} style={{ width: size.widthPx }} className="text-sm">
-      {onCompare ? (
-        <button
-          type="button"
-          aria-label={`Compare ${frame.name} with the reference at 100 %`}
-          onClick={onCompare}
-          className="block"
-        >
-          {crop}
-        </button>
-      ) : (
-        crop
-      )}
-      <p className="figures mt-1 flex items-baseline gap-2">
-        <span className="min-w-0 truncate font-bold" title={fileNames(frame)}>
-          {frame.name}
-        </span>
-        <span className="ml-auto whitespace-nowrap">
-          <span className="sr-only">sharpness </span>
-          {frame.relativeSharpness === null ? "–" : percent(frame.relativeSharpness)}
-        </span>
-      </p>
-      <p className={classNames("figures", isAsked ? "text-ochre" : "text-quiet")}>{placeText(props)}</p>
-      {isWhy && (
-        <p className="mt-1 text-quiet">
-          {frame.reason} {frame.placedBy === "person" ? "A person put it here." : `${percent(frame.confidence)} sure.`}
-        </p>
-      )}
-    </li>
+    <p className="figures mt-1 flex items-baseline gap-2">
+      <span className="min-w-0 truncate font-bold" title={fileNames(frame)}>
+        {frame.name}
+      </span>
+      <span className="ml-auto whitespace-nowrap">
+        <span className="sr-only">sharpness </span>
+        {sharpnessText(frame)}
+      </span>
+    </p>
   );
 }
 
-function placeText({ frame, isReference, isAsked }: BenchFrameProps): string {
+/** Why it is in this stack, while that is asked. */
+export function FrameReason({ frame, isWhy }: BenchFrameProps) {
+  if (!isWhy) return null;
+  return (
+    <p className="mt-1 text-quiet">
+      {frame.reason} {frame.placedBy === "person" ? "A person put it here." : `${percent(frame.confidence)} sure.`}
+    </p>
+  );
+}
+
+/** How far it lies from the reference; empty for the reference itself. */
+export function placeText({ frame, isReference, isAsked }: BenchFrameProps): string {
   if (frame.stackId === null) return isAsked ? "under question" : "loose";
   if (isReference) return "\u00a0";
   return frame.shift === null ? "distance unknown" : `${distanceText(frame.shift)} away`;
+}
+
+export function placeClass({ isAsked }: BenchFrameProps): string {
+  return classNames("figures", isAsked ? "text-ochre" : "text-quiet");
+}
+
+/** "HARB0019, sharpness 97 %, 2 px away, set aside: soft". */
+export function frameLabel(props: BenchFrameProps): string {
+  const { frame, isReference } = props;
+  return [
+    frame.name,
+    ...(frame.relativeSharpness === null ? [] : [`sharpness ${percent(frame.relativeSharpness)}`]),
+    isReference ? "reference" : placeText(props),
+    ...(frame.setAside === null ? [] : [`set aside: ${frame.setAside}`]),
+    ...(props.isAsked ? ["asked about"] : []),
+  ].join(", ");
+}
+
+function sharpnessText({ relativeSharpness }: BoardFrame): string {
+  return relativeSharpness === null ? "–" : percent(relativeSharpness);
 }
 
 /** Paper in the crop's corner, so that no text lies on the picture. */

@@ -2,14 +2,19 @@
 
 import { X } from "lucide-react";
 import { useState, type ReactNode } from "react";
-import { BenchFrame } from "@/components/board/bench-frame";
+import { BenchFrames } from "@/components/board/bench-frames";
+import { useBoardCommands } from "@/components/board/board-commands";
 import { CompareDialog } from "@/components/board/compare-dialog";
+import { StackMenu } from "@/components/board/stack-menu";
 import { TakeChoice } from "@/components/board/take-choice";
+import { LOOSE } from "@/components/board/use-board-place";
 import { Button } from "@/components/ui/button";
+import { Chip } from "@/components/ui/chip";
 import { classNames } from "@/components/ui/class-names";
 import type { BoardIndex, BoardTile } from "@/lib/board/board-index";
 import { benchCrops, spotInFrame } from "@/lib/board/layout";
 import type { BoardFrame, BoardStack } from "@/lib/board/model";
+import { nameOfStack } from "@/lib/board/moving";
 import { stackFacts } from "@/lib/board/summary";
 import { countOf, percent } from "@/lib/board/words";
 
@@ -36,6 +41,7 @@ const SHEET_PX = 34;
 
 /** The frames of one tile at 100 %, at the same spot, with what was measured of each. */
 export function Bench({ index, tile, widthPx, mouth, onClose }: BenchProps) {
+  const { canEdit } = useBoardCommands();
   const [takeId, setTakeId] = useState(tile.stack.id);
   const [isWhy, setIsWhy] = useState(false);
   const [compared, setCompared] = useState<string | null>(null);
@@ -44,16 +50,18 @@ export function Bench({ index, tile, widthPx, mouth, onClose }: BenchProps) {
   const reference = index.framesById.get(stack.referenceId ?? "") ?? frames[0] ?? null;
   const crops = benchCrops(frames.length, widthPx - SHEET_PX);
   return (
-    <Sheet label={`Frames of ${tile.name}`} mouth={mouth}>
+    <Sheet label={`Frames of ${tile.name}`} drop={`stack:${stack.id}`} mouth={mouth}>
       <div className="flex flex-wrap items-center gap-x-4 gap-y-1">
         <h2 className="figures text-lg font-bold">{tile.name}</h2>
         <TakeChoice tile={tile} chosenId={stack.id} onChoose={setTakeId} />
-        {stackFacts({ ...tile, stack, reference }, frames).map((fact) => (
-          <span key={fact} className="figures text-sm text-quiet">
-            {fact}
-          </span>
-        ))}
+        {stack.isSettled && <Chip>settled</Chip>}
+        <span className="figures flex min-w-60 flex-1 flex-wrap gap-x-4 text-sm text-quiet">
+          {stackFacts({ ...tile, stack, reference }, frames).map((fact) => (
+            <span key={fact}>{fact}</span>
+          ))}
+        </span>
         <span className="ml-auto flex flex-wrap gap-2">
+          {canEdit && <StackMenu index={index} tile={tile} stack={stack} />}
           <Button size="slim" aria-expanded={isWhy} onClick={() => setIsWhy(!isWhy)}>
             Why here?
           </Button>
@@ -70,21 +78,21 @@ export function Bench({ index, tile, widthPx, mouth, onClose }: BenchProps) {
         </span>
       </div>
       {isWhy && <WhyHere tile={tile} stack={stack} />}
-      <ul className="mt-3 flex flex-wrap gap-3">
-        {frames.map((frame) => (
-          <BenchFrame
-            key={frame.id}
-            projectId={index.board.projectId}
-            frame={frame}
-            centre={spotInFrame(frame, spotPx(stack, reference ?? frame))}
-            size={crops}
-            isReference={frame.id === reference?.id}
-            isAsked={index.askedFrames.has(frame.id)}
-            isWhy={isWhy}
-            onCompare={frame.id === reference?.id ? null : () => setCompared(frame.id)}
-          />
-        ))}
-      </ul>
+      <BenchFrames
+        label={`Frames of ${nameOfStack(index, stack.id)}`}
+        perRow={crops.perRow}
+        hasPlaces={onClose !== null}
+        frames={frames.map((frame) => ({
+          projectId: index.board.projectId,
+          frame,
+          centre: spotInFrame(frame, spotPx(stack, reference ?? frame)),
+          size: crops,
+          isReference: frame.id === reference?.id,
+          isAsked: index.askedFrames.has(frame.id),
+          isWhy,
+          onCompare: frame.id === reference?.id ? null : () => setCompared(frame.id),
+        }))}
+      />
       {compared !== null && reference && (
         <CompareDialog
           index={index}
@@ -111,7 +119,7 @@ export function LooseBench({ index, widthPx, onClose }: LooseBenchProps) {
   const crops = benchCrops(index.loose.length, widthPx - SHEET_PX);
   return (
     <div className="pb-2">
-      <Sheet label="Loose frames" mouth={null}>
+      <Sheet label="Loose frames" drop={LOOSE} mouth={null}>
         <div className="flex flex-wrap items-center gap-x-5 gap-y-1">
           <h2 className="text-lg font-bold">{countOf(index.loose.length, "loose frame")}</h2>
           <span className="text-sm text-quiet">in no stack, so in no tile and in no merge</span>
@@ -121,31 +129,40 @@ export function LooseBench({ index, widthPx, onClose }: LooseBenchProps) {
             </Button>
           )}
         </div>
-        <ul className="mt-3 flex flex-wrap gap-3">
-          {index.loose.map((frame) => (
-            <BenchFrame
-              key={frame.id}
-              projectId={index.board.projectId}
-              frame={frame}
-              centre={null}
-              size={crops}
-              isReference={false}
-              isAsked={index.askedFrames.has(frame.id)}
-              isWhy
-              onCompare={null}
-            />
-          ))}
-        </ul>
+        <BenchFrames
+          label="Loose frames"
+          perRow={crops.perRow}
+          hasPlaces={onClose !== null}
+          frames={index.loose.map((frame) => ({
+            projectId: index.board.projectId,
+            frame,
+            centre: null,
+            size: crops,
+            isReference: false,
+            isAsked: index.askedFrames.has(frame.id),
+            isWhy: true,
+            onCompare: null,
+          }))}
+        />
       </Sheet>
     </div>
   );
 }
 
+interface SheetProps {
+  readonly label: string;
+  /** Where frames go that are put down on it. */
+  readonly drop: string;
+  readonly mouth: Mouth | null;
+  readonly children: ReactNode;
+}
+
 /** The paper of a bench, its edge open towards the tile. */
-function Sheet({ label, mouth, children }: { label: string; mouth: Mouth | null; children: ReactNode }) {
+function Sheet({ label, drop, mouth, children }: SheetProps) {
   return (
     <section
       data-bench
+      data-drop={drop}
       aria-label={label}
       className={classNames(
         "relative scroll-mt-12 scroll-mb-3 border-3 border-petrol bg-paper p-3.5 ring-2 ring-paper ring-inset",

@@ -32,7 +32,7 @@ export function Hole({ projectId, hole, layout, isAsked }: HoleProps) {
     <div
       role="group"
       aria-label={`${hole.name} is a hole: ${loss}`}
-      data-hole={hole.name}
+      data-place={hole.name}
       style={{
         ...STRIPES,
         width: layout.tileWidthPx,

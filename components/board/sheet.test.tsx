@@ -50,7 +50,7 @@ test("a tile says aloud what it holds, and opens its frames below its row", asyn
   expect(tile.getAttribute("aria-expanded")).toBe("false");
   await userEvent.click(tile);
   const bench = screen.getByRole("region", { name: "Frames of A3" });
-  expect(within(bench).getAllByRole("listitem")).toHaveLength(6);
+  expect(within(bench).getAllByRole("row")).toHaveLength(6);
   expect(within(bench).getByText("reference")).toBeDefined();
   expect(within(bench).getByText("1/250 s f/8 ISO 100 105 mm")).toBeDefined();
   await userEvent.keyboard("{Escape}");
@@ -94,7 +94,8 @@ test("the docket shows one question at a time and turns to the chosen tile's", a
 test("a frame is compared with the reference side by side", async () => {
   render(<Harness board={makeEventfulBoard()} />);
   await userEvent.click(screen.getByRole("button", { name: /^Tile A1/ }));
-  await userEvent.click(screen.getByRole("button", { name: "Compare HARB0002 with the reference at 100 %" }));
+  await userEvent.click(screen.getByRole("button", { name: "Actions for HARB0002" }));
+  await userEvent.click(screen.getByRole("menuitem", { name: "Compare with the reference" }));
   const dialog = screen.getByRole("dialog", { name: "A1: HARB0002 beside the reference" });
   const pictures = () =>
     within(dialog)
@@ -112,7 +113,7 @@ test("loose frames have a bench of their own, behind the corner cell", async () 
   render(<Harness board={makeEventfulBoard()} />);
   await userEvent.click(screen.getByRole("button", { name: "4 loose frames: frames in no stack" }));
   const bench = screen.getByRole("region", { name: "Loose frames" });
-  expect(within(bench).getAllByRole("listitem")).toHaveLength(4);
+  expect(within(bench).getAllByRole("row")).toHaveLength(4);
 });
 
 test("the other take of a tile can be laid on the bench", async () => {
@@ -151,6 +152,8 @@ test("arrow keys walk from place to place, a hole's link included; after a tile 
   const isFocused = (name: string) =>
     vi.waitFor(() => expect(document.activeElement?.getAttribute("data-tile")).toBe(name));
   await userEvent.click(screen.getByRole("button", { name: /^Tile B4/ }));
+  // Past the tile's own handle.
+  await userEvent.tab();
   await userEvent.tab();
   expect(screen.getByRole("region", { name: "Frames of B4" }).contains(document.activeElement)).toBe(true);
   screen.getByRole("button", { name: /^Tile B4/ }).focus();
@@ -188,5 +191,6 @@ test("with 2 000 stacks only the rows in view are drawn", () => {
   render(<Harness board={makeBoard({ rows: 100, columns: 20, framesPerTile: 3 })} />);
   const drawn = screen.getAllByRole("button", { name: /^Tile / });
   expect(drawn.length).toBeGreaterThan(20);
-  expect(drawn.length).toBeLessThan(500);
+  // 20 to a row: of 100 rows those that fill a window of 800 px, and a few beyond its edges.
+  expect(drawn.length / 20).toBeLessThan(30);
 });

@@ -2,8 +2,10 @@
 
 import { useMemo, useState, type ReactNode } from "react";
 import { Bench, LooseBench } from "@/components/board/bench";
+import { BoardHand } from "@/components/board/board-hand";
 import { BoardBar } from "@/components/board/board-bar";
 import { Docket } from "@/components/board/docket";
+import { SelectionBar } from "@/components/board/selection-bar";
 import { SmallBoard } from "@/components/board/small-board";
 import { StatusLine } from "@/components/board/status-line";
 import { TileGrid } from "@/components/board/tile-grid";
@@ -37,12 +39,17 @@ export function Sheet({ index, chosen, onChoose, view, onShow, isWide, saved }: 
   const asked = useMemo(() => askedTiles(index, question), [index, question]);
   const askedMove = useMemo(() => question && questionMove(index, question), [index, question]);
   const docketLine = <Docket index={index} docket={docket} chosen={chosen} onShowTile={onChoose} />;
-  const tools = <BoardTools index={index} onChoose={onChoose} />;
+  const tools = <BoardTools index={index} chosen={chosen} onChoose={onChoose} />;
   if (!isWide) {
-    return <SmallBoard {...{ index, chosen, onChoose, tools, saved }} docket={docketLine} askedPlace={docket.place} />;
+    return (
+      <BoardHand index={index}>
+        <SmallBoard {...{ index, chosen, onChoose, tools, saved }} docket={docketLine} askedPlace={docket.place} />
+        <SelectionBar index={index} />
+      </BoardHand>
+    );
   }
   return (
-    <>
+    <BoardHand index={index}>
       <div className="grid min-h-0 flex-1 grid-cols-[248px_minmax(0,1fr)] grid-rows-[minmax(0,1fr)]">
         <TimeRail index={index} chosen={chosen} onChoose={onChoose} />
         <div className="flex min-h-0 flex-col">
@@ -58,8 +65,9 @@ export function Sheet({ index, chosen, onChoose, view, onShow, isWide, saved }: 
           )}
         </div>
       </div>
+      <SelectionBar index={index} />
       <StatusLine index={index} saved={saved} />
-    </>
+    </BoardHand>
   );
 }
 

@@ -3,11 +3,15 @@
 import { useVirtualizer } from "@tanstack/react-virtual";
 import { useCallback, useEffect, useMemo, useRef, useState, type KeyboardEvent } from "react";
 import { Bench, LooseBench } from "@/components/board/bench";
+import { useBoardCommands } from "@/components/board/board-commands";
 import { ColumnNumbers } from "@/components/board/column-numbers";
+import { DropArea } from "@/components/board/drop-area";
 import { gridLines, neighbourPlace, type GridLine, type GridPlace } from "@/components/board/grid-rows";
 import { hasHoleLink } from "@/components/board/hole";
+import { useHand } from "@/components/board/hand";
 import { QuestionGesture } from "@/components/board/question-gesture";
 import { TileRow } from "@/components/board/tile-row";
+import { LOOSE } from "@/components/board/use-board-place";
 import { useElementSize } from "@/components/board/use-element-size";
 import type { BoardIndex, BoardTile } from "@/lib/board/board-index";
 import { gridOrigin, layoutBoard, picturePart, tileSteps, type BoardLayout } from "@/lib/board/layout";
@@ -26,13 +30,14 @@ interface TileGridProps {
   readonly askedMove: { readonly frameId: string; readonly tile: string } | null;
 }
 
-/** The padding of the well, both sides, px. */
-const WELL_PADDING_PX = 32;
+/** The padding of the well, both sides together, px: at the right there is room for a new column's places. */
+const WELL_PADDING_PX = 48;
 /** The line of numbers above the tiles, the room for an outline below it, the padding at the foot, px. */
 const NUMBERS_AND_EDGES_PX = 62;
 
 /** The sheet: tiles in their rows on the well, the bench unfolded between them. Only rows in view are drawn. */
 export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlace, askedMove }: TileGridProps) {
+  const { canEdit } = useBoardCommands();
   const [sizeRef, size] = useElementSize();
   const scroller = useRef<HTMLDivElement | null>(null);
   const [scrollerElement, setScrollerElement] = useState<HTMLDivElement | null>(null);
@@ -61,6 +66,17 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlac
     paddingStart: 6,
   });
   useEffect(() => virtualizer.measure(), [virtualizer, rowHeightPx]);
+  const hand = useHand();
+  useEffect(() => {
+    hand.reveal = (target) => {
+      const wished = target.kind === "place" ? Math.min(target.row, grid.rows) : 1;
+      const at = lines.findIndex((line) => line.kind === "row" && line.row === wished);
+      if (at >= 0) virtualizer.scrollToIndex(at, { align: "auto" });
+    };
+    return () => {
+      hand.reveal = null;
+    };
+  });
   useShowAsked(askedPlace, (name) => {
     const row = index.tiles.get(name)?.row ?? index.holes.get(name)?.row;
     const at = lines.findIndex((line) => line.kind === "row" && line.row === row);
@@ -93,6 +109,8 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlac
     const name = event.target instanceof HTMLElement ? event.target.dataset.tile : undefined;
     const from = name === undefined ? undefined : (index.tiles.get(name) ?? index.holes.get(name));
     const next = from ? neighbourPlace(index, from, event.key, hasHoleLink(layout)) : null;
+    // The keys belong to what is carried.
+    if (hand.get().carried) return;
     if (event.key === "Escape" && chosen !== null) onChoose(null);
     if (!next) return;
     event.preventDefault();
@@ -105,16 +123,14 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlac
       role="group"
       aria-label="Board: arrow keys move from place to place, Enter opens a tile"
       onKeyDown={onKeyDown}
-      className="relative min-h-0 flex-1 overflow-auto bg-well px-4 pb-4"
+      className="relative min-h-0 flex-1 overflow-auto bg-well pr-8 pb-8 pl-4"
     >
       <ColumnNumbers
-        columns={grid.columns}
-        layout={layout}
-        looseCount={index.loose.length}
-        chosen={chosen}
-        onChoose={onChoose}
+        {...{ index, layout, onChoose, canEdit }}
+        // Only what concerns it: choosing a tile leaves it as it is.
+        chosen={chosen === LOOSE ? LOOSE : null}
       />
-      <div className="relative" style={{ height: virtualizer.getTotalSize() }}>
+      <DropArea id="well" style={{ height: virtualizer.getTotalSize() }}>
         {items.map((item) => {
           const line = lines[item.index];
           return line ? (
@@ -127,7 +143,7 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlac
               style={{ transform: `translateY(${item.start}px)` }}
             >
               <Line
-                {...{ line, index, layout, chosen, onChoose, asked, tabStop, widthPx, partOf, projectId }}
+                {...{ line, index, layout, chosen, onChoose, asked, tabStop, widthPx, partOf, projectId, canEdit }}
                 marks={(line.kind === "row" && seams.get(line.row)) || NO_MARKS}
               />
             </div>
@@ -144,7 +160,7 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlac
             }}
           />
         )}
-      </div>
+      </DropArea>
     </div>
   );
 }
@@ -160,6 +176,7 @@ interface LineProps extends Omit<TileGridProps, "isAllSeams" | "askedPlace" | "a
   readonly line: GridLine;
   readonly layout: BoardLayout;
   readonly projectId: string;
+  readonly canEdit: boolean;
   readonly tabStop: string | null;
   readonly widthPx: number;
   readonly marks: Parameters<typeof TileRow>[0]["marks"];

@@ -1,5 +1,7 @@
 import { memo } from "react";
+import { EdgePlaces } from "@/components/board/edge-places";
 import { Hole } from "@/components/board/hole";
+import { LineMenu } from "@/components/board/line-menu";
 import { SeamChips } from "@/components/board/seam-chips";
 import { Tile } from "@/components/board/tile";
 import { Chip } from "@/components/ui/chip";
@@ -20,6 +22,7 @@ interface TileRowProps {
   readonly tabStop: string | null;
   readonly marks: readonly SeamMark[];
   readonly partOf: (tile: BoardTile) => PicturePart;
+  readonly canEdit: boolean;
   /** A row of the grid, 1 is the top; or, without it, `tiles` that have no place. */
   readonly row?: number;
   readonly tiles?: readonly BoardTile[];
@@ -48,20 +51,10 @@ export const TileRow = memo(function TileRow({ row, tiles = [], isFirst = false,
         style={{ gap: layout.gapPx, paddingBottom: layout.gapPx }}
       >
         <span
-          aria-hidden
           className="sticky left-0 z-10 flex shrink-0 items-center justify-end pr-2"
           style={{ width: layout.lettersWidthPx - layout.gapPx, height: layout.pictureHeightPx }}
         >
-          {row !== undefined && isLabelled(row, 14, layout.pictureHeightPx + layout.captionHeightPx + layout.gapPx) && (
-            <span
-              className={classNames(
-                "figures bg-paper font-bold",
-                layout.size === "map" ? "px-1 text-[0.75rem] leading-3.5" : "px-1.5 text-sm leading-5",
-              )}
-            >
-              {rowLetters(row)}
-            </span>
-          )}
+          {row !== undefined && <RowLetter {...{ index, layout, row }} canEdit={rest.canEdit} />}
         </span>
         {names.map((name) => {
           const hole = index.holes.get(name);
@@ -77,12 +70,41 @@ export const TileRow = memo(function TileRow({ row, tiles = [], isFirst = false,
               isChosen={name === rest.chosen}
               isTabStop={name === rest.tabStop || row === undefined}
               isAsked={rest.asked.has(name)}
+              canEdit={rest.canEdit}
               onChoose={() => rest.onChoose(name === rest.chosen ? null : name)}
             />
           ) : null;
         })}
         <SeamChips marks={rest.marks} layout={layout} />
+        {row !== undefined && rest.canEdit && (
+          <EdgePlaces row={row} rows={index.board.grid.rows} columns={index.board.grid.columns} layout={layout} />
+        )}
       </div>
     </>
   );
 });
+
+interface RowLetterProps extends Pick<TileRowProps, "index" | "layout" | "canEdit"> {
+  readonly row: number;
+}
+
+/** As high as a menu's target needs; without a menu a letter may stand closer. */
+const MENU_PX = 24;
+const LETTER_PX = 14;
+
+function RowLetter({ index, layout, row, canEdit }: RowLetterProps) {
+  const pitchPx = layout.pictureHeightPx + layout.captionHeightPx + layout.gapPx;
+  if (!isLabelled(row, canEdit ? MENU_PX : LETTER_PX, pitchPx)) return null;
+  if (canEdit) return <LineMenu index={index} axis="row" at={row} />;
+  return (
+    <span
+      aria-hidden
+      className={classNames(
+        "figures bg-paper font-bold",
+        layout.size === "map" ? "px-1 text-[0.75rem] leading-3.5" : "px-1.5 text-sm leading-5",
+      )}
+    >
+      {rowLetters(row)}
+    </span>
+  );
+}

@@ -76,6 +76,7 @@ const CELL = "px-2 py-1 sm:px-3";
 function Row({ row, isChosen, onChoose }: RowProps) {
   return (
     <tr
+      data-drop={row.name}
       className={classNames(
         "border-b border-hairline [contain-intrinsic-size:auto_37px] [content-visibility:auto]",
         isChosen && "bg-tray",

@@ -1,5 +1,8 @@
-import { Check } from "lucide-react";
+import { Check, GripHorizontal } from "lucide-react";
 import { Comb } from "@/components/board/comb";
+import { gripOf } from "@/components/board/grip";
+import { GRIP_HELP_ID } from "@/components/board/grip-help";
+import { useHand } from "@/components/board/hand";
 import { TilePicture } from "@/components/board/tile-picture";
 import { classNames } from "@/components/ui/class-names";
 import type { BoardTile } from "@/lib/board/board-index";
@@ -17,30 +20,65 @@ interface TileProps {
   readonly isTabStop: boolean;
   /** The docket's question names it. */
   readonly isAsked: boolean;
+  readonly canEdit: boolean;
   readonly onChoose: (name: string) => void;
 }
 
 /** One place of the grid with a stack: its picture, and its caption where there is room. */
-export function Tile({ projectId, tile, part, layout, isChosen, isTabStop, isAsked, onChoose }: TileProps) {
+export function Tile({ projectId, tile, part, layout, isChosen, isTabStop, isAsked, canEdit, onChoose }: TileProps) {
+  const isMap = layout.size === "map";
+  return (
+    <div
+      data-place={tile.name}
+      style={{ width: layout.tileWidthPx }}
+      className={classNames("group/tile relative shrink-0 focus-within:z-10", isChosen && "z-20", isAsked && "z-10")}
+    >
+      <button
+        type="button"
+        data-tile={tile.name}
+        // The map has no captions to take hold of.
+        data-grip={canEdit && isMap ? gripOf.stack(tile.stack.id) : undefined}
+        tabIndex={isTabStop ? 0 : -1}
+        aria-label={tileLabel(tile)}
+        aria-expanded={isChosen}
+        onClick={() => onChoose(tile.name)}
+        className={classNames(
+          // The numbers stay above: what is scrolled to must not end up under them.
+          "block w-full scroll-mt-12 scroll-mb-3 text-left outline-offset-0 focus-visible:outline-3 focus-visible:outline-ink focus-visible:ring-6 focus-visible:ring-paper",
+          isChosen && "outline-3 outline-petrol ring-5 ring-paper",
+          !isChosen && isAsked && "outline-2 outline-dashed outline-ochre ring-4 ring-ochre-wash",
+        )}
+      >
+        <TilePicture projectId={projectId} tile={tile} part={part} layout={layout} />
+        {isMap ? <MapMarks tile={tile} /> : <Notch tile={tile} isSlim={layout.size === "medium"} />}
+        {!isMap && <Caption tile={tile} layout={layout} grip={canEdit ? gripOf.stack(tile.stack.id) : undefined} />}
+      </button>
+      {canEdit && !isMap && <TileHandle tile={tile} layout={layout} isTabStop={isTabStop} isChosen={isChosen} />}
+    </div>
+  );
+}
+
+type TileHandleProps = Pick<TileProps, "tile" | "layout" | "isTabStop" | "isChosen">;
+
+/** A tab of paper on the caption's upper edge: takes hold of the stack. Out of sight until the tile is looked at. */
+function TileHandle({ tile, layout, isTabStop, isChosen }: TileHandleProps) {
+  const hand = useHand();
   return (
     <button
       type="button"
-      data-tile={tile.name}
+      data-handle
+      data-grip={gripOf.stack(tile.stack.id)}
       tabIndex={isTabStop ? 0 : -1}
-      aria-label={tileLabel(tile)}
-      aria-expanded={isChosen}
-      onClick={() => onChoose(tile.name)}
-      style={{ width: layout.tileWidthPx }}
+      aria-label={`Move ${tile.name}`}
+      aria-describedby={GRIP_HELP_ID}
+      onClick={() => hand.tap({ kind: "stack", stackId: tile.stack.id })}
+      style={{ bottom: layout.captionHeightPx }}
       className={classNames(
-        // The numbers stay above: what is scrolled to must not end up under them.
-        "relative block shrink-0 scroll-mt-12 scroll-mb-3 text-left outline-offset-0 focus-visible:z-10 focus-visible:outline-3 focus-visible:outline-ink focus-visible:ring-6 focus-visible:ring-paper",
-        isChosen && "z-20 outline-3 outline-petrol ring-5 ring-paper",
-        !isChosen && isAsked && "z-10 outline-2 outline-dashed outline-ochre ring-4 ring-ochre-wash",
+        "absolute right-0 inline-flex h-6 w-7 cursor-grab items-center justify-center bg-paper text-ink group-hover/tile:opacity-100 hover:bg-ink hover:text-paper focus-visible:opacity-100 pointer-coarse:hidden",
+        isChosen ? "opacity-100" : "opacity-0",
       )}
     >
-      <TilePicture projectId={projectId} tile={tile} part={part} layout={layout} />
-      {layout.size === "map" ? <MapMarks tile={tile} /> : <Notch tile={tile} isSlim={layout.size === "medium"} />}
-      {layout.size !== "map" && <Caption tile={tile} layout={layout} />}
+      <GripHorizontal aria-hidden size={16} />
     </button>
   );
 }
@@ -77,11 +115,17 @@ function MapMarks({ tile }: { readonly tile: BoardTile }) {
   ) : null;
 }
 
-function Caption({ tile, layout }: { readonly tile: BoardTile; readonly layout: BoardLayout }) {
+interface CaptionProps extends Pick<TileProps, "tile" | "layout"> {
+  /** The stack is dragged by its caption. */
+  readonly grip: string | undefined;
+}
+
+function Caption({ tile, layout, grip }: CaptionProps) {
   const isFull = layout.size === "full";
   const figures = `${tile.inUse}/${tile.frames.length}`;
   return (
     <span
+      data-grip={grip}
       style={{ height: layout.captionHeightPx }}
       className="figures flex items-center gap-2 overflow-hidden bg-paper px-1.5 text-sm"
     >

@@ -1,3 +1,9 @@
+"use client";
+
+import type { ReactNode } from "react";
+import { gripOf } from "@/components/board/grip";
+import { useInHand } from "@/components/board/hand";
+import { LOOSE } from "@/components/board/use-board-place";
 import { classNames } from "@/components/ui/class-names";
 import type { BoardFrame, BoardStack } from "@/lib/board/model";
 import { RAIL_LINE_PX, type RailRun as Run } from "@/lib/board/rail";
@@ -18,11 +24,15 @@ interface RailRunProps {
   readonly askedFrames: ReadonlySet<string>;
   readonly isChosen: boolean;
   readonly isTabStop: boolean;
+  readonly canEdit: boolean;
+  /** The handle on the boundary before it; null: it has none. */
+  readonly boundary: ReactNode;
   readonly onChoose: () => void;
 }
 
 /** One run of frames on the rail with the pause before it; a bracket where they are a stack. */
-export function RailRun({ run, at, name, take, askedFrames, isChosen, isTabStop, onChoose }: RailRunProps) {
+export function RailRun({ run, at, name, take, askedFrames, isChosen, isTabStop, canEdit, ...rest }: RailRunProps) {
+  const { boundary, onChoose } = rest;
   const inUse = run.frames.filter((frame) => frame.setAside === null).length;
   const counts = `${inUse}/${run.frames.length}`;
   const label =
@@ -35,14 +45,16 @@ export function RailRun({ run, at, name, take, askedFrames, isChosen, isTabStop,
       {run.pause && (
         <div
           style={{ height: run.pause.heightPx, marginLeft: BAR_LEFT_PX }}
-          className="figures flex items-center border-l-2 border-dotted border-line pl-2 text-[0.8125rem] text-quiet"
+          className="figures relative flex items-center border-l-2 border-dotted border-line pl-2 text-[0.8125rem] text-quiet"
         >
           {run.pause.text}
+          {boundary}
         </div>
       )}
       <button
         type="button"
         data-run={at}
+        data-drop={run.stackId === null ? LOOSE : `stack:${run.stackId}`}
         tabIndex={isTabStop ? 0 : -1}
         aria-label={label}
         aria-pressed={isChosen}
@@ -52,7 +64,7 @@ export function RailRun({ run, at, name, take, askedFrames, isChosen, isTabStop,
       >
         <span className="block flex-1">
           {run.frames.map((frame) => (
-            <FrameLine key={frame.id} frame={frame} isAsked={askedFrames.has(frame.id)} />
+            <FrameLine key={frame.id} frame={frame} isAsked={askedFrames.has(frame.id)} canEdit={canEdit} />
           ))}
         </span>
         {name === null ? (
@@ -75,12 +87,24 @@ export function RailRun({ run, at, name, take, askedFrames, isChosen, isTabStop,
   );
 }
 
-/** Length: sharpness. Hollow: set aside. Dotted: cannot tell. Ochre with a question mark: asked about. */
-function FrameLine({ frame, isAsked }: { readonly frame: BoardFrame; readonly isAsked: boolean }) {
+interface FrameLineProps {
+  readonly frame: BoardFrame;
+  readonly isAsked: boolean;
+  readonly canEdit: boolean;
+}
+
+/** Length: sharpness. Hollow: set aside. Dotted: cannot tell. Ochre with a question mark: asked about. Petrol: held. */
+function FrameLine({ frame, isAsked, canEdit }: FrameLineProps) {
+  const isHeld = useInHand(({ selected, carried }) => selected.has(frame.id) || !!carried?.frameIds.has(frame.id));
   const { relativeSharpness: sharpness } = frame;
   const share = sharpness === null ? 0.5 : Math.max(0.1, (sharpness - BAR_FROM) / (1 - BAR_FROM));
   return (
-    <span className="flex items-center" style={{ height: RAIL_LINE_PX }}>
+    <span
+      data-line={frame.id}
+      data-grip={canEdit ? gripOf.frame(frame.id) : undefined}
+      className={classNames("flex items-center", isHeld && "bg-tray shadow-[inset_3px_0_var(--petrol)]")}
+      style={{ height: RAIL_LINE_PX }}
+    >
       <span
         className={classNames("figures shrink-0 text-[0.8125rem] leading-none", isAsked ? "text-ochre" : "text-quiet")}
         style={{ width: BAR_LEFT_PX }}

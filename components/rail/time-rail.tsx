@@ -2,6 +2,9 @@
 
 import { useVirtualizer } from "@tanstack/react-virtual";
 import { useEffect, useMemo, useRef, useState, type KeyboardEvent } from "react";
+import { useBoardCommands } from "@/components/board/board-commands";
+import { DropArea } from "@/components/board/drop-area";
+import { BoundaryHandle } from "@/components/rail/boundary-handle";
 import { RailRun } from "@/components/rail/rail-run";
 import { LOOSE } from "@/components/board/use-board-place";
 import type { BoardIndex } from "@/lib/board/board-index";
@@ -17,6 +20,7 @@ interface TimeRailProps {
 /** "Order taken": every frame as a line, the pauses between them, and brackets that name the tiles. */
 export function TimeRail({ index, chosen, onChoose }: TimeRailProps) {
   const { board } = index;
+  const { canEdit } = useBoardCommands();
   const runs = useMemo(() => railRuns(board.frames, board.grid.longestPauseSeconds), [board]);
   const [scroller, setScroller] = useState<HTMLDivElement | null>(null);
   const nameOf = (stackId: string | null) => (stackId === null ? null : (index.tileOfStack.get(stackId)?.name ?? null));
@@ -64,14 +68,15 @@ export function TimeRail({ index, chosen, onChoose }: TimeRailProps) {
         onKeyDown={onKeyDown}
         className="min-h-0 flex-1 overflow-y-auto pr-2 pl-3"
       >
-        <div className="relative" style={{ height: virtualizer.getTotalSize() + 16 }}>
+        <DropArea id="rail" style={{ height: virtualizer.getTotalSize() + 16 }}>
           {items.map((item) => {
             const run = runs[item.index];
+            const before = runs[item.index - 1];
             const name = run ? nameOf(run.stackId) : null;
             return run ? (
               <div
                 key={item.key}
-                className="absolute top-2 left-0 w-full"
+                className="group/rail absolute top-2 left-0 w-full"
                 style={{ transform: `translateY(${item.start}px)` }}
               >
                 <RailRun
@@ -82,12 +87,23 @@ export function TimeRail({ index, chosen, onChoose }: TimeRailProps) {
                   askedFrames={index.askedFrames}
                   isChosen={(name ?? LOOSE) === chosen}
                   isTabStop={item.index === stopAt}
+                  canEdit={canEdit}
+                  boundary={
+                    before && run && canEdit && before.stackId !== run.stackId ? (
+                      <BoundaryHandle
+                        index={index}
+                        before={before}
+                        after={run}
+                        isTabStop={item.index === stopAt || item.index - 1 === stopAt}
+                      />
+                    ) : null
+                  }
                   onChoose={() => onChoose(name ?? LOOSE)}
                 />
               </div>
             ) : null;
           })}
-        </div>
+        </DropArea>
       </div>
     </section>
   );

@@ -13,14 +13,22 @@ interface MenuProps {
   readonly tone?: ButtonTone;
   readonly size?: ButtonSize;
   readonly align?: "start" | "end";
+  /** Of the trigger, beside the tone's. */
+  readonly className?: string;
+  readonly tabIndex?: number;
   readonly children: ReactNode;
 }
 
 /** A button that opens a list of actions: arrows, Home, End and first letters move in it, Escape closes it. */
-export function Menu({ trigger, label, tone = "bare", size = "slim", align = "end", children }: MenuProps) {
+export function Menu({ trigger, label, tone = "bare", size = "slim", align = "end", ...rest }: MenuProps) {
+  const { className, tabIndex, children } = rest;
   return (
     <DropdownMenu.Root modal={false}>
-      <DropdownMenu.Trigger aria-label={label} className={buttonClass({ tone, size })}>
+      <DropdownMenu.Trigger
+        aria-label={label}
+        tabIndex={tabIndex}
+        className={classNames(buttonClass({ tone, size }), className)}
+      >
         {trigger}
       </DropdownMenu.Trigger>
       <DropdownMenu.Portal>

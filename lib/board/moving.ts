@@ -81,7 +81,7 @@ export function targetKey(target: Target | null): string {
 }
 
 /**
- * The command that puts what is moved there; it names where the frames or the stack were seen.
+ * The command that puts what is moved there.
  * @param newStackId - for the stack that may have to be made
  * @returns null where nothing would change, or where a place that is taken needs its choice first
  */
@@ -100,22 +100,20 @@ export function commandFor(index: BoardIndex, moving: Moving, target: Target, ne
         : to === null
           ? { kind: "loose" }
           : { kind: "stack", stackId: to },
-    expect: Object.fromEntries(frames.map(({ id, stackId }) => [id, stackId])),
   };
 }
 
 function placeCommand(index: BoardIndex, stackId: string, target: Target): CommandDraft | null {
   const stack = index.tileOfStack.get(stackId)?.takes.find(({ id }) => id === stackId);
   if (!stack) return null;
-  const expect = { row: stack.row, column: stack.column, take: stack.take };
   if (target.kind === "out") {
-    return stack.row === null ? null : { type: "place-stack", stackId, place: null, expect };
+    return stack.row === null ? null : { type: "place-stack", stackId, place: null };
   }
   if (target.kind !== "place" || (stack.row === target.row && stack.column === target.column)) return null;
   const place = { row: target.row, column: target.column };
-  if (!tileAt(index, place)) return { type: "place-stack", stackId, place, expect };
+  if (!tileAt(index, place)) return { type: "place-stack", stackId, place };
   if (target.occupied === undefined) return null;
-  return { type: "place-stack", stackId, place, occupied: target.occupied, expect };
+  return { type: "place-stack", stackId, place, occupied: target.occupied };
 }
 
 /** Heights of the three answers within a tile that is taken, from the top: equal thirds. */

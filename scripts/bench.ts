@@ -1,4 +1,4 @@
-// npm run bench [-- --kinds clean,soft --seeds 301,302 --jobs 2 --no-speed --no-accuracy]
+// npm run bench [-- --kinds clean,soft --seeds 301,302 --jobs 2 --no-speed --no-accuracy --commands]
 import { availableParallelism } from "node:os";
 import { parseArgs } from "node:util";
 
@@ -23,12 +23,18 @@ const { values } = parseArgs({
     jobs: { type: "string", default: String(availableParallelism()) },
     "no-speed": { type: "boolean", default: false },
     "no-accuracy": { type: "boolean", default: false },
+    /** Round trips of commands on the production build, and nothing else. */
+    commands: { type: "boolean", default: false },
   },
 });
 const jobs = Number(values.jobs);
 
-if (!values["no-speed"]) writeTable(["speed", "figure"], await measureSpeed(jobs));
-if (!values["no-accuracy"]) {
+if (values.commands) {
+  const { measureCommands } = await import("./bench/commands");
+  writeTable(["commands over HTTP", "round trip"], await measureCommands());
+}
+if (!values.commands && !values["no-speed"]) writeTable(["speed", "figure"], await measureSpeed(jobs));
+if (!values.commands && !values["no-accuracy"]) {
   process.stdout.write(`\n| ${RESULT_HEAD.join(" | ")} |\n|${" --- |".repeat(RESULT_HEAD.length)}\n`);
   const results: ShootResult[] = [];
   for (const kind of values.kinds.split(",")) {

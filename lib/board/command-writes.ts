@@ -101,12 +101,9 @@ async function planOrder(tx: Transaction, board: Board, { access, command }: Ord
   if (command.type === "undo") return planUndo(tx, access, command);
   if (command.type === "undo-back-to") return planUndoBackTo(tx, access, board, command);
   const steps = planCommand(board, command);
-  const sentence = describeCommand(command, {
-    before: board,
-    after: applyChanges(board, steps),
-    nameOf: await nameOfAssignee(tx, command),
-  });
-  return { steps, sentence, undoes: null, afterRevision: null };
+  const nameOf = await nameOfAssignee(tx, command);
+  const describe = (after: Board) => describeCommand(command, { before: board, after, nameOf });
+  return { steps, describe, undoes: null, afterRevision: null };
 }
 
 async function nameOfAssignee(tx: Transaction, command: PlannedCommand): Promise<() => string> {
@@ -148,7 +145,7 @@ async function record(
     type: command.type,
     payload: command,
     steps: plan.steps,
-    sentence: plan.sentence,
+    sentence: plan.describe(after),
     tiles: touchedTiles(before, after, plan.steps),
     undoes: plan.undoes,
     atMs: nowMs,

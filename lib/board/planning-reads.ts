@@ -70,10 +70,8 @@ async function bringUpToDate(tx: Transaction, projectId: ProjectId, kept: KeptBo
   if (madeBy !== kept.changeId || !isGapless || since.some(({ type }) => type === "sort")) return null;
   const { revision, framesLeast, framesMost, overlapWanted } = project;
   try {
-    const board = applyChanges(
-      kept.board,
-      since.flatMap(({ steps }) => steps),
-    );
+    const steps = since.flatMap((row) => row.steps);
+    const board = steps.length === 0 ? kept.board : applyChanges(kept.board, steps);
     const framesPerTile = { least: framesLeast, most: framesMost };
     return { ...board, revision, grid: { ...board.grid, overlapWanted, framesPerTile } };
   } catch (error) {

@@ -22,6 +22,7 @@ export function touchedTiles(before: Board, after: Board, changes: readonly Chan
 function touchedStacks(board: Board, changes: readonly Change[]): Set<string> {
   const frameIds = new Set(changes.flatMap((change) => (change.on === "frame" ? [change.id] : [])));
   const ids = new Set(changes.flatMap(stackIdOf));
+  if (frameIds.size === 0) return ids;
   for (const { id, stackId } of board.frames) if (stackId !== null && frameIds.has(id)) ids.add(stackId);
   return ids;
 }

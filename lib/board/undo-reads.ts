@@ -18,7 +18,8 @@ import type { ProjectId } from "@/lib/ids";
 /** What a command comes to before it is stored. */
 export interface Plan {
   readonly steps: readonly Change[];
-  readonly sentence: string;
+  /** Its sentence in the record. */
+  readonly describe: (after: Board) => string;
   /** The step that it takes back. */
   readonly undoes: string | null;
   /** Everything after this revision is what it takes back; only what came later can be in its way. */
@@ -56,7 +57,7 @@ export async function planUndo(
   requireDivisionRight(access, step.steps);
   return {
     steps: invertChanges(step.steps),
-    sentence: describeUndo(step.sentence),
+    describe: () => describeUndo(step.sentence),
     undoes: step.id,
     afterRevision: step.revision,
   };
@@ -86,7 +87,7 @@ export async function planUndoBackTo(
   requireDivisionRight(access, taken);
   return {
     steps: sumOfChanges(board, applyChanges(board, taken), taken),
-    sentence: `took back ${countOf(rows.length, "step")}, back to step ${toRevision}`,
+    describe: () => `took back ${countOf(rows.length, "step")}, back to step ${toRevision}`,
     undoes: null,
     afterRevision: null,
   };

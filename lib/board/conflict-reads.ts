@@ -1,5 +1,5 @@
 import "server-only";
-import { and, desc, eq, gt, or, sql } from "drizzle-orm";
+import { and, desc, eq, gt, ne, or, sql } from "drizzle-orm";
 import type { Transaction } from "@/db/client";
 import { users } from "@/db/schema/accounts";
 import { changes } from "@/db/schema/board";
@@ -67,6 +67,8 @@ async function findLastChange(
     .where(
       and(
         eq(changes.projectId, projectId),
+        // Measuring decides nothing: it is never in the way.
+        ne(changes.type, "measure"),
         afterRevision === null ? undefined : gt(changes.revision, afterRevision),
         isFrame ? named : or(named, ofLines, eq(changes.undoes, subjectId)),
       ),

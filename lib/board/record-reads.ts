@@ -1,5 +1,5 @@
 import "server-only";
-import { and, asc, desc, eq, isNotNull, lt, or, sql } from "drizzle-orm";
+import { and, asc, desc, eq, isNotNull, lt, ne, or, sql } from "drizzle-orm";
 import type { z } from "zod";
 import { database } from "@/db/client";
 import { users } from "@/db/schema/accounts";
@@ -15,7 +15,7 @@ const ENTRIES_A_PAGE = 100;
 
 type Record = z.infer<typeof recordSchema>;
 
-/** Who did what, the newest first; the steps themselves are not read. */
+/** Who did what, the newest first, without what was only measured anew. The steps themselves are not read. */
 export async function listRecord(access: ProjectAccess, query: RecordQuery): Promise<Record> {
   const { projectId } = access;
   const db = database();
@@ -33,7 +33,7 @@ export async function listRecord(access: ProjectAccess, query: RecordQuery): Pro
     })
     .from(changes)
     .leftJoin(users, eq(users.id, changes.userId))
-    .where(and(eq(changes.projectId, projectId), ...conditions(query)))
+    .where(and(eq(changes.projectId, projectId), ne(changes.type, "measure"), ...conditions(query)))
     .orderBy(desc(changes.revision))
     .limit(ENTRIES_A_PAGE + 1);
   const page = rows.slice(0, ENTRIES_A_PAGE);

@@ -74,11 +74,13 @@ export async function planUndoBackTo(
   { toRevision }: CommandOf<"undo-back-to">,
 ): Promise<Plan> {
   const rows = await tx
-    .select({ steps: changes.steps, sentence: changes.sentence })
+    .select({ type: changes.type, steps: changes.steps, sentence: changes.sentence })
     .from(changes)
     .where(and(eq(changes.projectId, access.projectId), gt(changes.revision, toRevision)))
     .orderBy(desc(changes.revision));
-  if (rows.length === 0) throw new ChangeConflict("Nothing has been done since.", "grid");
+  // Measuring follows what people do; by itself it is nothing to take back.
+  const done = rows.filter(({ type }) => type !== "measure");
+  if (done.length === 0) throw new ChangeConflict("Nothing has been done since.", "grid");
   if (rows.some(({ sentence }) => sentence === "")) {
     const detail = "A sorting since then was recorded without its steps, so it cannot be taken back.";
     throw new ChangeConflict(`${detail} Choose a later step.`, "grid");
@@ -87,7 +89,7 @@ export async function planUndoBackTo(
   requireDivisionRight(access, taken);
   return {
     steps: sumOfChanges(board, applyChanges(board, taken), taken),
-    describe: () => `took back ${countOf(rows.length, "step")}, back to step ${toRevision}`,
+    describe: () => `took back ${countOf(done.length, "step")}, back to step ${toRevision}`,
     undoes: null,
     afterRevision: null,
   };

@@ -2,7 +2,10 @@ import { addMember, makePerson, makeProject, type Person, signInAs } from "../su
 import { beforeEach, describe, expect, test } from "vitest";
 import type { ProjectId } from "@/lib/ids";
 import type { Board } from "@/lib/board/model";
+import { accessForJob } from "@/lib/auth/gate";
 import { applyChanges } from "@/lib/board/changes";
+import { storeMeasured } from "@/lib/board/measure-writes";
+import { stackState } from "@/lib/board/measured";
 import { callsOn, type SentCommand } from "../support/board-calls";
 import { useDatabase } from "../support/database";
 import { makeEventfulBoard } from "../support/make-board";
@@ -37,6 +40,15 @@ const undo = (commandId: string): SentCommand => ({ type: "undo", commandId });
 function decided(board: Board) {
   const { frames, stacks, questions, grid } = applyChanges(board, []);
   return { frames, stacks, questions: questions.map(({ key }) => key), grid };
+}
+
+/** As the worker does after a command. */
+async function measure(frameId: string, relativeSharpness: number): Promise<void> {
+  const board = await calls.board();
+  const id = board.frames.find((frame) => frame.id === frameId)?.stackId ?? "";
+  const frames = [{ id: frameId, relativeSharpness, shift: null }];
+  const stack = { id, state: stackState(board, id), frames, spot: { x: 0.4, y: 0.55 } };
+  await storeMeasured(accessForJob({ projectId }), { stacks: [stack], seams: [] }, 0);
 }
 
 describe("undo", () => {
@@ -168,6 +180,23 @@ describe("going back to a step", () => {
       false,
       false,
     ]);
+  });
+
+  test("does not mind what was measured in between, nor count it", async () => {
+    await calls.done(move("frame-17", "stack-1-4"));
+    await measure("frame-17", 0.5);
+    const start = (await calls.board()).frames.find(({ id }) => id === "frame-17");
+    expect(start?.relativeSharpness).toBe(0.5);
+    await calls.refused({ type: "undo-back-to", toRevision: 1 });
+    await calls.done(setAside("frame-1"));
+    await calls.done({ type: "undo-back-to", toRevision: 0 });
+    const { entries } = await calls.record();
+    expect(entries.map(({ sentence }) => sentence)).toEqual([
+      "took back 2 steps, back to step 0",
+      "set HARB0003 aside in A1 (by hand)",
+      "moved HARB0019 from A3 to A4",
+    ]);
+    expect((await calls.board()).frames.find(({ id }) => id === "frame-17")?.stackId).toBe("stack-1-3");
   });
 
   test("says so where nothing has been done since", async () => {

@@ -71,6 +71,7 @@ export function sortingFacts(board: DecidedBoard, isAnew: boolean): SortFacts {
         : [];
     }),
     looseFrameIds: byPerson.filter(({ stackId }) => stackId === null).map(({ id }) => id),
+    heldFrameIds: byPerson.filter(({ stackId }) => stackId !== null).map(({ id }) => id),
     setAside: Object.fromEntries(setAside),
     settledQuestionKeys: board.settledQuestionKeys,
     grid: isAnew ? addedLines(board) : board.grid,

@@ -45,6 +45,15 @@ export function gatherStacks(
     if (known) known.frames.push(...run);
     else members.set(id, { fixed, frames: [...run] });
   }
+  // What a person put into a stack is in no run.
+  const inRuns = new Set(runs.flatMap((run) => run.map(({ id }) => id)));
+  for (const frame of order) {
+    const fixed = stackOf.get(frame.id);
+    if (!fixed || inRuns.has(frame.id)) continue;
+    const known = members.get(fixed.id);
+    if (known) known.frames.push(frame);
+    else members.set(fixed.id, { fixed, frames: [frame] });
+  }
   const place = new Map(order.map((frame, at) => [frame.id, at]));
   const at = (frame: SortFrame | undefined) => place.get(frame?.id ?? "") ?? 0;
   return [...members.entries()]

@@ -39,7 +39,7 @@ export async function sortFrames(
   onProgress({ step: "order", done: order.length, total: order.length });
 
   const black = findBlack(order, new Set(facts.stacks.flatMap((stack) => stack.frameIds)));
-  const left = new Set([...facts.looseFrameIds, ...black]);
+  const left = new Set([...facts.looseFrameIds, ...(facts.heldFrameIds ?? []), ...black]);
   const sorted = sequences.map((sequence) => without(sequence, left));
   const split = splitDoubles(
     await splitStacks(
@@ -50,9 +50,12 @@ export async function sortFrames(
     ),
   );
   const seeds = gatherStacks(split.runs, facts, order);
+  await store.measureAll(
+    seeds.flatMap(({ frames }) => frames.slice(1).map((frame, at) => [frames[at]?.id ?? "", frame.id] as const)),
+  );
   const stacks = appraiseAll(seeds, store, input);
   const graph = await collectEdges(stacks, store, (done, total) => onProgress({ step: "grid", done, total }));
-  const bodies = stacksByBody(stacks, sorted);
+  const bodies = stacksByBody(stacks, sequences);
   const layout = placeStacks(stacks, graph, bodies, options);
   const places = numberPlaces(stacks, layout.spots);
   const { takes, doubts } = chooseTakes(stacks, places);

@@ -56,6 +56,8 @@ export interface SortFacts {
   readonly stacks: readonly FixedStack[];
   /** Frames that a person left loose on purpose. */
   readonly looseFrameIds: readonly string[];
+  /** Frames that a person put into their stack, or set aside there: what was shot beside them does not follow them. */
+  readonly heldFrameIds?: readonly string[];
   /** Set aside or brought back by a person; null: in use whatever is measured. */
   readonly setAside: Readonly<Record<string, SetAsideReason | null>>;
   /** Keys of questions that a person has settled; they are not asked again. */

@@ -1,5 +1,6 @@
 import { currentSeams } from "@/lib/board/current-seams";
 import type { Board, BoardFrame, BoardQuestion, BoardSeam, BoardStack } from "@/lib/board/model";
+import { questionTile } from "@/lib/board/question-tile";
 import { tileName } from "@/lib/board/tile-name";
 
 /** One stack as it is drawn: at its place in the grid, or without one. */
@@ -51,7 +52,8 @@ export interface BoardIndex {
 export function indexBoard(board: Board): BoardIndex {
   const framesOfStack = groupBy(board.frames, (frame) => frame.stackId);
   const framesById = new Map(board.frames.map((frame) => [frame.id, frame]));
-  const questionsOf = groupBy(board.questions, (question) => question.tile);
+  const stacksById = new Map(board.stacks.map((stack) => [stack.id, stack]));
+  const questionsOf = groupBy(board.questions, (question) => questionTile(question, stacksById));
   const makeTile = (name: string, takes: readonly BoardStack[]): BoardTile => {
     const stack = takes.find((take) => take.isChosenTake) ?? first(takes);
     const frames = framesOfStack.get(stack.id) ?? [];

@@ -40,7 +40,7 @@ export function CameIn({ list, canEdit }: CameInProps) {
   }
   const counts = countStates(files);
   const states = CHOICES.filter(({ choice: of }) => of !== "all" && counts[of] > 0);
-  const shown = choice === "all" ? files : files.filter((file) => file.state === choice);
+  const shown = choice === "all" ? files : files.filter((file) => listedAs(file) === choice);
   const bytes = files.reduce((sum, file) => sum + file.bytes, 0);
   return (
     <section aria-label="What came in" className="space-y-3">
@@ -85,8 +85,13 @@ function byPlace(a: IntakeFile, b: IntakeFile): number {
   return collator.compare(a.folder ?? "", b.folder ?? "") || collator.compare(a.name, b.name);
 }
 
+/** A raw file without its picture counts as unreadable everywhere, until the picture comes. */
+function listedAs({ state, isRaw, frameId }: IntakeFile): IntakeFile["state"] {
+  return state === "analysed" && isRaw && frameId === null ? "failed" : state;
+}
+
 function countStates(files: readonly IntakeFile[]): Record<IntakeFile["state"], number> {
   const counts = { received: 0, analysed: 0, failed: 0, duplicate: 0 };
-  for (const file of files) counts[file.state] += 1;
+  for (const file of files) counts[listedAs(file)] += 1;
   return counts;
 }

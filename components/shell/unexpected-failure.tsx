@@ -24,7 +24,7 @@ export function UnexpectedFailure({ digest, onRetry }: UnexpectedFailureProps) {
       <p>Something went wrong while it was made. Nothing that was confirmed is lost, and no frame was changed.</p>
       {digest !== undefined && (
         <p>
-          If it stays, tell the administrator this number: <code className="break-all">{digest}</code>
+          If it stays, tell the administrator this number: <code className="inline-block">{digest}</code>
         </p>
       )}
     </Failure>

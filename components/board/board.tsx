@@ -12,7 +12,6 @@ import {
 import { Sheet } from "@/components/board/sheet";
 import { useBoardPlace } from "@/components/board/use-board-place";
 import { useLiveBoard } from "@/components/board/use-live-board";
-import { ConnectionStrip } from "@/components/together/connection-strip";
 import { SaveState } from "@/components/together/save-state";
 import { Together } from "@/components/together/together";
 import { useBoardWork } from "@/components/together/use-board-work";
@@ -59,7 +58,6 @@ export function Board({ projectId, userId, canEdit }: BoardProps) {
         style={isWide ? { height: `max(34rem, calc(100dvh - ${topPx}px))` } : undefined}
         className="flex flex-col"
       >
-        <ConnectionStrip queue={work.queue} canEdit={canEdit} />
         <BoardNews
           projectId={projectId}
           progress={progress}

@@ -1,25 +1,46 @@
 "use client";
 
-import { useEffect, useSyncExternalStore } from "react";
+import { useQueryClient } from "@tanstack/react-query";
+import Link from "next/link";
+import { usePathname } from "next/navigation";
+import { useEffect, useSyncExternalStore, type ReactNode } from "react";
 import type { QueueState } from "@/components/together/command-queue";
+import { queueOf } from "@/components/together/queue-of";
 import { countWaiting } from "@/components/together/save-state";
 
-/** Above the board while the server is out of reach, or the person is signed out: what becomes of their changes. */
-export function ConnectionStrip({ queue, canEdit }: { readonly queue: QueueState; readonly canEdit: boolean }) {
+interface ConnectionStripProps {
+  readonly projectId: string;
+  readonly userId: string;
+  /** Editors and leads of a project that is not in the archive. */
+  readonly canEdit: boolean;
+}
+
+/**
+ * On every page of a project: sends what an earlier page left behind, and says so while the server is out of reach, the
+ * person is signed out, or a change was refused.
+ */
+export function ConnectionStrip({ projectId, userId, canEdit }: ConnectionStripProps) {
+  const queue = queueOf(useQueryClient(), userId, projectId);
+  const state = useSyncExternalStore(queue.subscribe, queue.getState, queue.getState);
   const isOnline = useSyncExternalStore(
     subscribeToConnection,
     () => navigator.onLine,
     () => true,
   );
-  const waiting = countWaiting(queue);
+  useEffect(() => {
+    if (canEdit) queue.resume();
+    window.addEventListener("online", queue.tryNow);
+    return () => window.removeEventListener("online", queue.tryNow);
+  }, [canEdit, queue]);
+  const waiting = countWaiting(state);
   useWarningOnLeaving(waiting > 0);
-  const text = stripText({ waiting, isOnline, queue, canEdit });
+  const text = stripText({ waiting, isOnline, queue: state, canEdit });
   return (
     <div role="status">
       {text !== null && (
-        <p className="border-b border-ochre bg-ochre-wash px-4 py-1.5 text-sm text-ochre-on">
+        <Line>
           {text}
-          {queue.connection === "signed out" && (
+          {state.connection === "signed out" && (
             <>
               {" "}
               <a href={`/sign-in?to=${encodeURIComponent(window.location.pathname)}`} className="link font-semibold">
@@ -27,10 +48,30 @@ export function ConnectionStrip({ queue, canEdit }: { readonly queue: QueueState
               </a>
             </>
           )}
-        </p>
+        </Line>
       )}
+      <RefusedElsewhere projectId={projectId} count={state.refusals.length} />
     </div>
   );
+}
+
+/** The board explains what was refused; on other pages a line leads there. */
+function RefusedElsewhere({ projectId, count }: { readonly projectId: string; readonly count: number }) {
+  const board = `/projects/${projectId}/board`;
+  const pathname = usePathname();
+  if (count === 0 || pathname === board) return null;
+  return (
+    <Line>
+      {count === 1 ? "1 change" : `${count} changes`} of yours could not be done.{" "}
+      <Link href={board} className="link font-semibold">
+        See why on the board
+      </Link>
+    </Line>
+  );
+}
+
+function Line({ children }: { readonly children: ReactNode }) {
+  return <p className="border-b border-ochre bg-ochre-wash px-4 py-1.5 text-sm text-ochre-on">{children}</p>;
 }
 
 interface StripInput {

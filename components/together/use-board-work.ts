@@ -1,7 +1,7 @@
 "use client";
 
 import { useQueryClient } from "@tanstack/react-query";
-import { useCallback, useEffect, useMemo, useState, useSyncExternalStore } from "react";
+import { useCallback, useMemo, useState, useSyncExternalStore } from "react";
 import type { BoardCommands } from "@/components/board/board-commands";
 import type { QueueState, Refusal } from "@/components/together/command-queue";
 import { queueOf } from "@/components/together/queue-of";
@@ -51,11 +51,6 @@ export function useBoardWork({ projectId, userId, canEdit, confirmed }: WorkInpu
   const state = useSyncExternalStore(queue.subscribe, queue.getState, queue.getState);
   const { said, say } = useSaid();
   const board = useMemo(() => confirmed && showWaiting(confirmed, state.commands), [confirmed, state.commands]);
-  useEffect(() => {
-    if (canEdit) queue.resume();
-    window.addEventListener("online", queue.tryNow);
-    return () => window.removeEventListener("online", queue.tryNow);
-  }, [canEdit, queue]);
 
   const give = useCallback(
     (command: BoardCommand, sentence: string, shown: Board) =>

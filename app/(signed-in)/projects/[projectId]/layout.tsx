@@ -4,7 +4,9 @@ import { UploadsStrip } from "@/components/intake/uploads-strip";
 import { JobTicket } from "@/components/shell/job-ticket";
 import { ProjectHeader } from "@/components/shell/project-header";
 import { SkipLink } from "@/components/shell/skip-link";
+import { ConnectionStrip } from "@/components/together/connection-strip";
 import { findProjectAccess, openProject, openSession } from "@/lib/auth/page-gate";
+import { allows } from "@/lib/auth/roles";
 import { getProgress } from "@/lib/frames/reads";
 import { getProject } from "@/lib/projects/reads";
 
@@ -35,6 +37,11 @@ export default async function ProjectLayout({ params, children }: ProjectLayoutP
       <ProjectHeader person={person} project={project} />
       <JobTicket projectId={projectId} progress={progress} status={{ frames, tiles, openQuestions, rows, columns }} />
       <UploadsStrip projectId={projectId} />
+      <ConnectionStrip
+        projectId={projectId}
+        userId={person.id}
+        canEdit={allows(access.role, "edit") && !project.isArchived}
+      />
       <main id="content" tabIndex={-1} className="flex flex-1 flex-col outline-none">
         {children}
       </main>

@@ -289,7 +289,9 @@ test("the change record tells steps in words, by person and tile, and goes back 
   const page = await openBoard(browser, mona);
   await page.getByRole("link", { name: "Change record" }).click();
   const steps = page.getByRole("list", { name: "Steps, the newest first" });
-  await expect(steps.getByRole("listitem").first()).toContainText(/Jonas Kepp moved .* from A2 to A1/);
+  // The worker's steps (measured again) come between people's.
+  const step = (text: string | RegExp) => steps.getByRole("listitem").filter({ hasText: text }).first();
+  await expect(step(/Jonas Kepp moved .* from A2 to A1/)).toBeVisible();
   for (const width of [1440, 390]) {
     await page.setViewportSize({ width, height: 844 });
     await expectAccessible(page, `the record, ${width} px`);
@@ -313,18 +315,14 @@ test("the change record tells steps in words, by person and tile, and goes back 
   const second = await pick(page.request, "B1", "B2");
   expect((await give(page.request, there)).status()).toBe(200);
   expect((await give(page.request, second.there)).status()).toBe(200);
-  await expect(steps.getByRole("listitem").first()).toContainText("from B1 to B2");
-  await steps
-    .getByRole("listitem")
-    .nth(2)
-    .getByRole("button", { name: /^Undo back to here/ })
-    .click();
+  await expect(step("from B1 to B2")).toBeVisible();
+  await steps.getByRole("button", { name: `Undo back to here, step ${before.revision}`, exact: true }).click();
   const dialog = page.getByRole("dialog", { name: "Undo back to here?" });
-  await expect(dialog).toContainText("2 steps are taken back: 2 of Mona Vale.");
+  await expect(dialog).toContainText(/\d+ steps are taken back: .*2 of Mona Vale/);
   await expectAccessible(page, "undo back to here");
   await dialog.getByRole("button", { name: "Undo back to here" }).click();
   await expect(dialog).toBeHidden();
-  await expect(steps.getByRole("listitem").first()).toContainText("took back 2 steps");
+  await expect(step(/Mona Vale took back \d+ steps/)).toBeVisible();
   const places = ({ frames }: Board) => frames.map(({ id, stackId }) => [id, stackId]);
   expect(places(await readBoard(page.request))).toEqual(places(before));
   await page.context().close();

@@ -22,8 +22,9 @@ test("the docket of a shoot is worked to zero by keyboard only, and a new sortin
   const projectId = await makeProject(page.request, "Cliff walk, everything asked");
   const { folder } = await getShoot(...SHOOT);
   const files = await listFiles(folder);
-  const late = files.at(-1) ?? "";
-  for (const file of files.slice(0, -1)) await send(page.request, { projectId, folder, file });
+  // From the middle of the shoot: the last file is a second copy, and would be no frame.
+  const late = files[Math.floor(files.length / 2)] ?? "";
+  for (const file of files) if (file !== late) await send(page.request, { projectId, folder, file });
   await waitUntilSorted(page.request, projectId);
   const before = await getBoard(page.request, projectId);
   expect(before.questions.length).toBeGreaterThan(5);

@@ -6,6 +6,7 @@ import type { ProjectId } from "@/lib/ids";
 import { createAccount } from "@/lib/people/writes";
 import { newProjectSchema } from "@/lib/projects/schema";
 import { createProject } from "@/lib/projects/writes";
+import { prefixed } from "@/tests/support/prefixed-board";
 import { storeBoard } from "@/tests/support/stored-board";
 
 /** Fresh storage with one project a board, and so many people who may edit all of them. */
@@ -20,7 +21,7 @@ export async function makeProjects(boards: readonly Board[], people: number, pas
   if (!lead) throw new Error("somebody must make the projects");
   const projects: { id: ProjectId; board: Board }[] = [];
   for (const [at, plain] of boards.entries()) {
-    const board = prefixed(plain, at);
+    const board = prefixed(plain, String(at));
     const id = await createProject(lead, newProjectSchema.parse({ name: `${board.frames.length} frames` }));
     await writeTransaction(async (tx) => {
       for (const { id: userId } of others) {
@@ -34,27 +35,3 @@ export async function makeProjects(boards: readonly Board[], people: number, pas
 }
 
 export const close = closeDatabase;
-
-/** Ids are the same in every made board, but unique over all projects; as long as real ones, for the board's size. */
-function prefixed(board: Board, at: number): Board {
-  const longId = (id: string) => `${at}-${id}-`.padEnd(36, "0");
-  return {
-    ...board,
-    stacks: board.stacks.map((stack) => ({
-      ...stack,
-      id: longId(stack.id),
-      referenceId: stack.referenceId === null ? null : longId(stack.referenceId),
-    })),
-    frames: board.frames.map((frame) => ({
-      ...frame,
-      id: longId(frame.id),
-      stackId: frame.stackId === null ? null : longId(frame.stackId),
-      files: frame.files.map((file) => ({ ...file, id: longId(file.id) })),
-    })),
-    seams: board.seams.map((seam) => ({
-      ...seam,
-      stackId: longId(seam.stackId),
-      neighbourId: longId(seam.neighbourId),
-    })),
-  };
-}

@@ -10,6 +10,7 @@ import { accessForJob } from "@/lib/auth/gate";
 import { applyChanges } from "@/lib/board/changes";
 import type { Board } from "@/lib/board/model";
 import { getBoard } from "@/lib/board/reads";
+import { expectWhole } from "../support/expect-whole";
 import { useDatabase } from "../support/database";
 import { giveCommands, type Giving } from "../support/give-commands";
 import { makeEventfulBoard } from "../support/make-board";
@@ -78,23 +79,5 @@ test("2 000 commands of four clients in two processes, while a worker writes: no
   const { frames, stacks, grid, questions } = applyChanges(end, []);
   expect({ frames: replayed.frames, stacks: replayed.stacks, grid: replayed.grid }).toEqual({ frames, stacks, grid });
   expect(replayed.questions).toEqual(questions);
-  expectWhole(end);
+  expectWhole(end, start);
 }, 240_000);
-
-/** Every frame in exactly one place, every stack with frames, every place with one stack a take and one chosen take. */
-function expectWhole(board: Board): void {
-  expect(board.frames).toHaveLength(makeEventfulBoard().frames.length);
-  const held = new Set(board.frames.map(({ stackId }) => stackId));
-  held.delete(null);
-  const places = board.stacks.flatMap(({ row, column, take }) => (row === null ? [] : [`${row}/${column}/${take}`]));
-  expect(new Set(places).size).toBe(places.length);
-  const empty = board.stacks.filter(({ id }) => !held.has(id)).map(({ id }) => id);
-  // The made board's second take has no frames from the beginning.
-  expect(empty.filter((id) => id !== "stack-3-6-take-2")).toEqual([]);
-  expect([...held].filter((id) => !board.stacks.some((stack) => stack.id === id))).toEqual([]);
-  const tiles = new Map<string, number>();
-  for (const { row, column, isChosenTake } of board.stacks) {
-    if (row !== null) tiles.set(`${row}/${column}`, (tiles.get(`${row}/${column}`) ?? 0) + Number(isChosenTake));
-  }
-  expect([...tiles].filter(([, chosen]) => chosen !== 1)).toEqual([]);
-}

@@ -7,8 +7,10 @@ import { projects } from "@/db/schema/projects";
 import type { ProjectAccess } from "@/lib/auth/gate";
 import { boardCommandSchema, type BoardCommand } from "@/lib/board/command-schema";
 import { runCommand } from "@/lib/board/command-writes";
+import type { Board } from "@/lib/board/model";
 import { AppError } from "@/lib/errors/app-error";
 import { frameIdSchema, newId, projectIdSchema } from "@/lib/ids";
+import { makeEventfulBoard } from "./make-board";
 import { makeRandom } from "./random";
 
 export interface Giving {
@@ -17,10 +19,9 @@ export interface Giving {
   readonly commandsEach: number;
 }
 
-/** Of `makeEventfulBoard`. */
-const FRAMES = 106;
+/** The places that commands name: a row and two columns more than the made board has. */
 const PLACES = { rows: 4, columns: 8 };
-const STACK_IDS = Array.from({ length: 12 }, (_, at) => `made-${at}`);
+const NEW_STACKS = 12;
 
 /**
  * Gives commands as so many clients at once, each waiting for its answer before the next. Every seventh is sent twice,
@@ -29,6 +30,7 @@ const STACK_IDS = Array.from({ length: 12 }, (_, at) => `made-${at}`);
  */
 export async function giveCommands({ projectId, clients, commandsEach }: Giving): Promise<Record<string, number>> {
   const acknowledged: Record<string, number> = {};
+  const start = { ...makeEventfulBoard(), projectId };
   await Promise.all(
     clients.map(async ({ userId, seed }) => {
       const access = {
@@ -38,7 +40,7 @@ export async function giveCommands({ projectId, clients, commandsEach }: Giving)
       } as unknown as ProjectAccess;
       const random = makeRandom(seed);
       for (let at = 0; at < commandsEach; at += 1) {
-        const command = anyCommand(random, Object.keys(acknowledged).at(-1));
+        const command = anyCommand(random, start, Object.keys(acknowledged).at(-1));
         for (let sent = 0; sent < (at % 7 === 0 ? 2 : 1); sent += 1) {
           const answer = await runCommand(access, command, Date.now()).catch((error: unknown) => {
             if (error instanceof AppError) return null;
@@ -57,19 +59,32 @@ export async function giveCommands({ projectId, clients, commandsEach }: Giving)
   return acknowledged;
 }
 
-function anyCommand(random: () => number, newest: string | undefined): BoardCommand {
+/**
+ * A command on the frames, stacks and questions of a board as it was at first: most are possible, some not.
+ * @param newest - id of a command that may be undone
+ */
+export function anyCommand(random: () => number, start: Board, newest: string | undefined): BoardCommand {
   const pick = <Item>(items: readonly Item[]): Item => items[Math.floor(random() * items.length)] as Item;
-  const frameIds = [`frame-${Math.floor(random() * FRAMES)}`];
-  const stackId = pick([...STACK_IDS, "stack-1-1", "stack-1-2", "stack-2-3", "stack-3-6"]);
-  const place = { row: 1 + Math.floor(random() * PLACES.rows), column: 1 + Math.floor(random() * PLACES.columns) };
+  const upTo = (most: number) => 1 + Math.floor(random() * most);
+  const made = Array.from({ length: NEW_STACKS }, (_, at) => `made-${at}-${start.projectId}`);
+  const frameId = pick(start.frames).id;
+  const frameIds = [frameId];
+  const stackId = pick(random() < 0.7 ? made : start.stacks.map(({ id }) => id));
+  const place = { row: upTo(PLACES.rows), column: upTo(PLACES.columns) };
+  const axis = pick(["row", "column"]);
+  const question = pick(start.questions);
   const body = pick<() => object>([
     () => ({ type: "move-frames", frameIds, to: { kind: "stack", stackId } }),
-    () => ({ type: "move-frames", frameIds, to: { kind: "new-stack", stackId: pick(STACK_IDS), place } }),
+    () => ({ type: "move-frames", frameIds, to: { kind: "new-stack", stackId: pick(made), place } }),
     () => ({ type: "move-frames", frameIds, to: { kind: "loose" } }),
     () => ({ type: "place-stack", stackId, place, occupied: pick(["swap", "push", "take", "refuse"]) }),
     () => ({ type: "set-aside", frameIds }),
     () => ({ type: "bring-back", frameIds }),
-    () => ({ type: "merge-stacks", intoStackId: stackId, stackIds: [pick(STACK_IDS)] }),
+    () => ({ type: "merge-stacks", intoStackId: stackId, stackIds: [pick(made)] }),
+    () => ({ type: "choose-take", stackId }),
+    () => ({ type: pick(["add-line", "remove-line"]), axis, at: upTo(PLACES.rows) }),
+    () => ({ type: "settle", target: { kind: "question", questionId: question.id, answer: 0 } }),
+    () => ({ type: "settle", target: { kind: "stack", stackId, isSettled: random() < 0.5 } }),
     () => ({ type: "undo", commandId: newest ?? newId() }),
   ])();
   return boardCommandSchema.parse({ id: newId(), revision: 0, ...body });
@@ -81,9 +96,10 @@ function anyCommand(random: () => number, newest: string | undefined): BoardComm
  */
 export async function writeLikeWorker(id: string, signal: AbortSignal): Promise<number> {
   const projectId = projectIdSchema.parse(id);
+  const frameIds = makeEventfulBoard().frames.map((frame) => frame.id);
   let written = 0;
   while (!signal.aborted) {
-    const frameId = frameIdSchema.parse(`frame-${written % FRAMES}`);
+    const frameId = frameIdSchema.parse(frameIds[written % frameIds.length] ?? "");
     await writeTransaction(async (tx) => {
       const [project] = await tx
         .select({ revision: projects.revision })

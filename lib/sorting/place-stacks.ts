@@ -5,7 +5,7 @@ import { trustIn, type Component, type Label } from "./lattice";
 import { inSteps, misfitScale } from "./lattice-steps";
 import { placeByWalk, type WalkPlacement, type WalkStop } from "./place-by-walk";
 import { freeByOrder } from "./free-by-order";
-import { findTies, type Tie } from "./ties";
+import { findTies, type Ties } from "./ties";
 import type { SortOptions } from "./types";
 import { LARGEST_SAME_PLACE } from "./vector";
 
@@ -25,8 +25,8 @@ export interface Layout {
   /** By stack index. */
   readonly spots: readonly Spot[];
   readonly walk: WalkPlacement | null;
-  /** What holds the parts of the grid that the pictures placed to each other. */
-  readonly ties: readonly Tie[];
+  /** What holds the placed stacks to each other. */
+  readonly ties: Ties;
 }
 
 /** Edges with whole stacks that weigh less than this together may be chance. Our own. */
@@ -90,7 +90,8 @@ export function placeStacks(
     const isStray = stacks[index] ? leaveOutCost(stacks[index], graph, sizes) !== null : false;
     return { ...none, basis: "none", isStray, isUnsure: true };
   });
-  return { spots, walk, ties };
+  const all = new Map(spots.flatMap(({ label }, index) => (label ? [[index, label] as const] : [])));
+  return { spots, walk, ties: findTies(graph, all, plain) };
 }
 
 /** Few frames that match nothing although they could, or that lie between the tiles. */

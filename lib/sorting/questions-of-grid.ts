@@ -6,7 +6,6 @@ import type { ProposedQuestion, QuestionKind } from "./types";
 /** Severities, higher is worse: what can only be mended by shooting again comes first. */
 const SEVERITY = {
   hole: 95,
-  order: 85,
   retake: 65,
   "two-stacks": 60,
   "soft-stack": 62,
@@ -38,7 +37,6 @@ export function questionsOfGrid(draft: SortedDraft): ProposedQuestion[] {
     ...retakeQuestions(draft),
     ...doubledQuestions(draft),
     ...softStackQuestions(draft),
-    ...orderQuestions(draft),
   ];
 }
 
@@ -221,28 +219,4 @@ function softStackQuestions(draft: SortedDraft): ProposedQuestion[] {
       } satisfies ProposedQuestion,
     ];
   });
-}
-
-function orderQuestions(draft: SortedDraft): ProposedQuestion[] {
-  const unsure = draft.stacks.filter((stack) => {
-    const spot = draft.layout.spots[stack.index];
-    const isNowhere = draft.places[stack.index]?.row === null;
-    return isKept(draft, stack) && !stack.fixed && ((spot?.basis === "order" && spot.isUnsure) || isNowhere);
-  });
-  if (unsure.length === 0) return [];
-  const names = unsure.map((stack) => nameOf(draft, stack.index));
-  const isOne = names.length === 1;
-  return [
-    {
-      key: `order ${unsure.map((stack) => stack.id).join(" ")}`,
-      kind: "order",
-      message: isOne ? `Is ${names[0]} in its place?` : `Are ${names.slice(0, 6).join(", ")} in their places?`,
-      evidence: `${isOne ? "It shows" : "They show"} too little detail to be matched; only the order shot speaks for the place.`,
-      frameIds: [],
-      stackIds: unsure.map((stack) => stack.id),
-      tile: tileOf(draft, unsure[0]?.index ?? 0),
-      answers: [{ label: isOne ? "Leave it there" : "Leave them there", action: ACCEPT }],
-      severity: SEVERITY.order,
-    },
-  ];
 }

@@ -11,6 +11,9 @@ export interface Doubled {
 
 /** Halves of this share of the usual number of frames are whole stacks. Our own. */
 const WHOLE_SHARE = 0.8;
+/** Parts of this share may be; together they have this many times the usual number. Our own. */
+const HALF_SHARE = 0.6;
+const LEAST_DOUBLE = 1.5;
 /** A pause so much longer than nearly all moves was no move: the tile was taken again later. Our own. */
 const LONG_PAUSE_FACTOR = 1.5;
 const NEARLY_ALL = 0.9;
@@ -31,7 +34,8 @@ export function splitDoubles(split: SplitResult): SplitResult & { readonly doubl
     const frame = at === null ? undefined : run[at];
     const join = frame && split.joins.get(frame.id);
     if (at === null || !frame || !join || join.pauseS === null || join.basis === "person") return [run];
-    if (join.pauseS <= longest * LONG_PAUSE_FACTOR) {
+    const areWhole = Math.min(at, run.length - at) >= WHOLE_SHARE * usual;
+    if (!areWhole || join.pauseS <= longest * LONG_PAUSE_FACTOR) {
       doubled.push({ atFrameId: frame.id, pauseS: join.pauseS });
       return [run];
     }
@@ -41,9 +45,9 @@ export function splitDoubles(split: SplitResult): SplitResult & { readonly doubl
   return { ...split, runs, joins: changed, doubled };
 }
 
-/** Where the longest pause cuts a run of about twice the usual size into two whole stacks; null where it does not. */
+/** Where the longest pause cuts a run of about twice the usual size into two that may be stacks; null where it does not. */
 function findMiddlePause(run: readonly SortFrame[], usual: number, { joins, limit }: SplitResult): number | null {
-  if (usual < 2 || !limit || run.length < 2 * WHOLE_SHARE * usual) return null;
+  if (usual < 2 || !limit || run.length < LEAST_DOUBLE * usual) return null;
   let longest: { at: number; join: Join } | null = null;
   run.forEach((frame, at) => {
     const join = joins.get(frame.id);
@@ -52,5 +56,5 @@ function findMiddlePause(run: readonly SortFrame[], usual: number, { joins, limi
   });
   const found = (longest as { at: number; join: Join } | null)?.at ?? null;
   if (found === null) return null;
-  return Math.min(found, run.length - found) >= WHOLE_SHARE * usual ? found : null;
+  return Math.min(found, run.length - found) >= HALF_SHARE * usual ? found : null;
 }

@@ -11,6 +11,8 @@ export interface Tie {
   readonly agreeing: number;
   /** Weight of those that agree on the likeliest other place. */
   readonly against: number;
+  /** How far that place lies from where it is now; null where no edge speaks for another. */
+  readonly rival: { readonly columns: number; readonly rows: number } | null;
   /** Weight of the places that it shares with the rest without showing the same. */
   readonly clashing: number;
 }
@@ -19,6 +21,8 @@ export interface Ties {
   /** Stacks that agreeing edges connect with each other, the most first. */
   readonly pieces: readonly ReadonlySet<number>[];
   readonly ties: readonly Tie[];
+  /** Pairs of stacks that show the same. */
+  readonly alike: readonly (readonly [number, number])[];
 }
 
 interface Link {
@@ -29,6 +33,12 @@ interface Link {
   readonly rows: number;
   /** Both show the same. */
   readonly isSame: boolean;
+}
+
+interface Vote {
+  readonly columns: number;
+  readonly rows: number;
+  readonly weight: number;
 }
 
 /**
@@ -52,7 +62,10 @@ export function findTies(graph: GridGraph, labels: ReadonlyMap<number, Label>, p
     return rivals.reduce((sum, other) => sum + (isSame(other) ? 0 : clashWeight(index, other, plain)), 0);
   };
   const ties = pieces.flatMap((piece) => tiesOf(piece, tree, links, clash));
-  return { pieces: pieces.map((piece) => new Set(piece)), ties };
+  const alike = [...links].flatMap(([index, own]) =>
+    own.flatMap(({ other, isSame }) => (isSame && index < other ? [[index, other] as const] : [])),
+  );
+  return { pieces: pieces.map((piece) => new Set(piece)), ties, alike };
 }
 
 function linksOf({ edges, steps }: GridGraph, labels: ReadonlyMap<number, Label>): Map<number, Link[]> {
@@ -114,17 +127,20 @@ function tiesOf(
     const branch = new Set(below.get(index));
     const members = branch.size * 2 <= piece.length ? [...branch] : piece.filter((other) => !branch.has(other));
     const inside = new Set(members);
-    const votes = new Map<string, number>();
+    const votes = new Map<string, Vote>();
     for (const member of members) {
       for (const { other, weight, columns, rows } of links.get(member) ?? []) {
         if (inside.has(other)) continue;
         const key = `${columns} ${rows}`;
-        votes.set(key, (votes.get(key) ?? 0) + weight);
+        // Where an edge wants the other one further right, it wants this one further left. Adding 0 turns -0 into 0.
+        const before = votes.get(key) ?? { columns: 0 - columns, rows: 0 - rows, weight: 0 };
+        votes.set(key, { ...before, weight: before.weight + weight });
       }
     }
-    const agreeing = votes.get("0 0") ?? 0;
+    const agreeing = votes.get("0 0")?.weight ?? 0;
     votes.delete("0 0");
+    const rival = [...votes.values()].reduce<Vote | null>((p, q) => (p && p.weight >= q.weight ? p : q), null);
     const clashing = members.reduce((sum, member) => sum + clash(member, inside), 0);
-    return { members, agreeing, against: Math.max(0, ...votes.values()), clashing };
+    return { members, agreeing, against: rival?.weight ?? 0, rival, clashing };
   });
 }

@@ -1,33 +1,44 @@
 import { agreesWithPlaces } from "./find-positions";
 import type { FrameDraft, StackDraft } from "./draft";
-import type { Edge } from "./edges";
-import { trustIn } from "./lattice";
-import { inSteps, misfitScale } from "./lattice-steps";
 import { tellingSpot } from "./frame-sharpness";
+import { joinChance } from "./join-chances";
 import { shiftFraction } from "./judge-pair";
 import { pauseSeconds } from "./pauses";
+import { placeChances } from "./place-chances";
+import { questionsBetween } from "./questions-between";
 import { questionsOfFrames } from "./questions-of-frames";
 import { questionsOfGrid } from "./questions-of-grid";
+import { questionsOfPlaces } from "./questions-of-places";
 import { isKept, nameOf, percent, tileOf, type SortedDraft } from "./sorted-draft";
-import type { Join } from "./split-stacks";
 import type { Proposal, ProposedFrame, ProposedStack, SortFacts, SortFrame } from "./types";
 import { findShotOrder } from "./walks";
 
+/** Nothing is surer without a person. Our own. */
+const HIGHEST_CHANCE = 0.998;
+/** A stack that may be two takes. */
+const DOUBLED_CHANCE = 0.6;
+
 /** Raised whenever the same input may give another proposal. */
-export const ENGINE_VERSION = "1";
+export const ENGINE_VERSION = "2";
 
 /** Puts what was found out into the proposal, with a reason for everything and a question for every doubt. */
 export function writeProposal(draft: SortedDraft, facts: SortFacts): Proposal {
   const kept = draft.stacks.filter((stack) => isKept(draft, stack));
+  const chances = placeChances(draft);
   const settled = new Set(facts.settledQuestionKeys);
-  const questions = [...questionsOfFrames(draft), ...questionsOfGrid(draft)]
+  const questions = [
+    ...questionsOfFrames(draft),
+    ...questionsBetween(draft),
+    ...questionsOfPlaces(draft, chances),
+    ...questionsOfGrid(draft),
+  ]
     .filter((question) => !settled.has(question.key))
     .sort((a, b) => b.severity - a.severity || (a.key < b.key ? -1 : 1));
   return {
     engineVersion: ENGINE_VERSION,
     ...gridSize(draft, facts),
     shotOrder: shotOrderOf(draft),
-    stacks: kept.map((stack) => writeStack(draft, stack, draft.positions[stack.index] ?? null)),
+    stacks: kept.map((stack) => writeStack(draft, stack, chances[stack.index] ?? 0)),
     frames: writeFrames(draft, kept, facts),
     seams: draft.seams.map((seam) => ({
       stackId: draft.stacks[seam.a]?.id ?? "",
@@ -60,7 +71,8 @@ function shotOrderOf(draft: SortedDraft): Proposal["shotOrder"] {
   return findShotOrder(bodies);
 }
 
-function writeStack(draft: SortedDraft, stack: StackDraft, position: ProposedStack["position"]): ProposedStack {
+function writeStack(draft: SortedDraft, stack: StackDraft, confidence: number): ProposedStack {
+  const position = draft.positions[stack.index] ?? null;
   const { row, column } = draft.places[stack.index] ?? { row: null, column: null };
   const { take, isChosenTake } = draft.takes[stack.index] ?? { take: 1, isChosenTake: true };
   return {
@@ -71,55 +83,39 @@ function writeStack(draft: SortedDraft, stack: StackDraft, position: ProposedSta
     take,
     isChosenTake,
     referenceId: stack.reference?.id ?? null,
-    ...placeReason(draft, stack),
+    confidence,
+    reason: placeReason(draft, stack),
     position,
     spot: tellingSpot(stack.reference ?? undefined),
   };
 }
 
-/** How much heavier a contradicting edge weighs than an agreeing one. Our own. */
-const DOUBT_FACTOR = 1.5;
-/** Squared weight of agreeing edges that leaves an even chance: an edge just above chance. Our own. */
-const EVEN_CHANCE = 4;
-
-function placeReason(draft: SortedDraft, stack: StackDraft): { confidence: number; reason: string } {
+function placeReason(draft: SortedDraft, stack: StackDraft): string {
   const spot = draft.layout.spots[stack.index];
-  if (draft.places[stack.index]?.row === null && stack.fixed?.byPerson) {
-    return { confidence: 1, reason: "Left without a place by a person." };
+  if (draft.places[stack.index]?.row === null) {
+    return stack.fixed?.byPerson ? "Left without a place by a person." : "Nothing tells where it belongs.";
   }
-  if (draft.places[stack.index]?.row === null) return { confidence: 0, reason: "Nothing tells where it belongs." };
   if (spot?.basis === "fixed") {
-    const isPerson = stack.fixed?.byPerson === true;
-    return {
-      confidence: isPerson ? 1 : 0.99,
-      reason: isPerson ? "Placed by a person." : "Placed by an earlier sorting.",
-    };
+    return stack.fixed?.byPerson === true ? "Placed by a person." : "Placed by an earlier sorting.";
   }
-  if (draft.stacks.length === 1) return { confidence: 0.9, reason: "The only stack." };
+  if (draft.stacks.length === 1) return "The only stack.";
   const own = draft.graph.edges.filter((edge) => edge.a === stack.index || edge.b === stack.index);
   const agreeing = own.filter((edge) => agreesWithPlaces(edge, draft.graph, draft.places));
   if (agreeing.length === 0) {
     const doubt = spot?.isUnsure
       ? "The order shot leaves more than one place for it"
       : "The order shot leaves one place for it";
-    return { confidence: spot?.isUnsure ? 0.6 : 0.93, reason: `${doubt}; it shows too little detail to be matched.` };
+    return `${doubt}; it shows too little detail to be matched.`;
   }
-  const scale = misfitScale(draft.graph.edges, draft.graph.steps);
-  const sum = (edges: readonly Edge[]) =>
-    edges.reduce((total, edge) => total + edge.weight * trustIn(edge, inSteps(edge, draft.graph.steps), scale), 0);
-  const [yes, all] = [sum(agreeing), sum(own)];
-  const against = DOUBT_FACTOR * (all - yes);
   const best = [...agreeing].sort((a, b) => b.weight - a.weight).slice(0, 2);
   const names = best.map((edge) => nameOf(draft, edge.a === stack.index ? edge.b : edge.a));
-  return {
-    confidence: Math.min(0.995, yes ** 2 / (yes ** 2 + against ** 2 + EVEN_CHANCE)),
-    reason: `Its picture matches ${names.join(" and ")} at the shift expected there.`,
-  };
+  return `Its picture matches ${names.join(" and ")} at the shift expected there.`;
 }
 
 function writeFrames(draft: SortedDraft, kept: readonly StackDraft[], facts: SortFacts): ProposedFrame[] {
   const homes = new Map<string, { stack: StackDraft; entry: FrameDraft }>();
   for (const stack of kept) for (const entry of stack.frames) homes.set(entry.frame.id, { stack, entry });
+  const chances = stackChances(draft, kept);
   return draft.order.map((frame, orderTaken): ProposedFrame => {
     const home = homes.get(frame.id);
     const before = draft.order[orderTaken - 1];
@@ -133,7 +129,8 @@ function writeFrames(draft: SortedDraft, kept: readonly StackDraft[], facts: Sor
       setAside: entry.setAside,
       relativeSharpness: entry.sharpness.relative,
       shift: entry.shift,
-      ...frameReason(draft, stack, entry),
+      confidence: chances.get(stack.index) ?? 0,
+      reason: frameReason(draft, stack, entry),
     };
   });
 }
@@ -153,19 +150,29 @@ function looseFrame(draft: SortedDraft, frame: SortFrame, { setAside }: SortFact
   };
 }
 
-const CONFIDENCE: Readonly<Record<Join["basis"], number>> = {
-  person: 1,
-  "pictures and time": 0.995,
-  pictures: 0.97,
-  time: 0.9,
-  count: 0.75,
-  nothing: 0.5,
-};
+/** A frame is right where its whole stack is: as sure as the least sure decision that made the stack. */
+function stackChances(draft: SortedDraft, kept: readonly StackDraft[]): Map<number, number> {
+  const homes = new Map<string, number>();
+  for (const stack of kept) for (const { frame } of stack.frames) homes.set(frame.id, stack.index);
+  const chances = new Map(kept.map((stack) => [stack.index, stack.fixed?.byPerson ? 1 : HIGHEST_CHANCE]));
+  for (const join of draft.split.joins.values()) {
+    const chance = joinChance(join, draft.split.limit);
+    for (const home of [homes.get(join.before.id), homes.get(join.after.id)]) {
+      const before = home === undefined ? undefined : chances.get(home);
+      if (home !== undefined && before !== undefined && before < 1) chances.set(home, Math.min(before, chance));
+    }
+  }
+  for (const { atFrameId } of draft.split.doubled) {
+    const home = homes.get(atFrameId);
+    if (home !== undefined && chances.get(home) !== 1) chances.set(home, DOUBLED_CHANCE);
+  }
+  return chances;
+}
 
-function frameReason(draft: SortedDraft, stack: StackDraft, entry: FrameDraft): { confidence: number; reason: string } {
-  if (stack.fixed?.byPerson) return { confidence: 1, reason: "Put here by a person." };
+function frameReason(draft: SortedDraft, stack: StackDraft, entry: FrameDraft): string {
+  if (stack.fixed?.byPerson) return "Put here by a person.";
   const join = draft.split.joins.get(entry.frame.id);
-  if (!join) return { confidence: 0.97, reason: "The first of its stack." };
+  if (!join) return "The first of its stack.";
   const { name } = join.before;
   const pause = join.pauseS === null ? "at an unknown time" : `${formatSeconds(join.pauseS)} later`;
   const isMatched = join.verdict === "same" || join.verdict === "different";
@@ -173,10 +180,9 @@ function frameReason(draft: SortedDraft, stack: StackDraft, entry: FrameDraft): 
     ? `shifted by ${percent(shiftFraction(join.measure, join.before))}`
     : "with too little detail to compare";
   const px = Math.round(Math.hypot(join.measure.xPx, join.measure.yPx));
-  const text = join.isSame
+  return join.isSame
     ? `With ${name} before it: ${pause}, ${isMatched ? `${px} px of shift` : shift}.`
     : `Begins ${tileOf(draft, stack.index) ?? "a stack"} after ${name}: ${pause}, ${shift}.`;
-  return { confidence: CONFIDENCE[join.basis], reason: text };
 }
 
 function formatSeconds(seconds: number): string {

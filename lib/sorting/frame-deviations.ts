@@ -70,20 +70,20 @@ function exposureDeviations(frames: readonly SortFrame[]): (Deviation | null)[] 
     const light = written[index] ?? null;
     if (light !== null && usual !== undefined && Math.abs(light - usual) > EXPOSURE_EV) {
       const ev = formatEv(light - usual);
-      return { kind: "exposure", isCertain: true, evidence: `exposed ${ev} against the others by its settings` };
+      return { kind: "exposure", isCertain: true, evidence: `exposed ${ev} than the others, by its settings` };
     }
     const difference = (seen[index] ?? middle) - middle;
     if (Math.abs(difference) <= BRIGHTNESS_EV) return null;
     return {
       kind: "exposure",
       isCertain: Math.abs(difference) > BRIGHTNESS_EV * CERTAIN_FACTOR,
-      evidence: `${formatEv(difference)} against the others by its brightness`,
+      evidence: `${formatEv(difference)} than the others, by its brightness`,
     };
   });
 }
 
 function formatEv(ev: number): string {
-  return `${ev > 0 ? "+" : "−"}${Math.abs(ev).toFixed(1)} EV`;
+  return `${Math.abs(ev).toFixed(1)} EV ${ev > 0 ? "brighter" : "darker"}`;
 }
 
 function framingDeviations(

@@ -55,7 +55,9 @@ export function placeStacks(
   const strays = findStrays(stacks, graph, sizes);
   const found = new Map([...main].filter(([index]) => !strays.has(index) && (main.size > 1 || stacks.length === 1)));
   const plain = new Set(stacks.filter(({ hub }) => !isTextured(hub)).map(({ index }) => index));
-  const { pieces, ties } = findTies(graph, found, plain);
+  const isFixed = (index: number) => typeof stacks[index]?.fixed?.row === "number";
+  const tiesOf = (placed: Component) => findTies(graph, placed, plain);
+  const { pieces, ties } = tiesOf(found);
   // What hung on a stray, or was outvoted, hangs on nothing any more.
   const held = new Map([...found].filter(([index]) => pieces[0]?.has(index)));
   const layWalk = (placed: Component): WalkPlacement | null => {
@@ -68,7 +70,6 @@ export function placeStacks(
     );
     return placeByWalk(sequences, { rows: options.expectedRows, columns: options.expectedColumns });
   };
-  const isFixed = (index: number) => typeof stacks[index]?.fixed?.row === "number";
   const freed = freeByOrder(held, ties, { bodies, layWalk, isFixed });
   const labels = new Map([...held].filter(([index]) => !freed.some((piece) => piece.has(index))));
   const torn = pieces.slice(1).map((piece): Component => new Map([...found].filter(([index]) => piece.has(index))));
@@ -91,7 +92,7 @@ export function placeStacks(
     return { ...none, basis: "none", isStray, isUnsure: true };
   });
   const all = new Map(spots.flatMap(({ label }, index) => (label ? [[index, label] as const] : [])));
-  return { spots, walk, ties: findTies(graph, all, plain) };
+  return { spots, walk, ties: tiesOf(all) };
 }
 
 /** Few frames that match nothing although they could, or that lie between the tiles. */

@@ -65,7 +65,7 @@ function questionOfStray(draft: SortedDraft, stack: StackDraft): ProposedQuestio
       kind: "stray",
       message: isOne
         ? `Does ${first} belong to the picture?`
-        : `Do ${ids.length} frames from ${first} on belong to it?`,
+        : `Do the ${ids.length} frames from ${first} on belong to the picture?`,
       evidence: `${isOne ? "It does" : "They do"} not overlap any tile the way neighbours do.`,
       frameIds: ids,
       stackIds: [],

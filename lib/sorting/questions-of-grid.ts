@@ -1,7 +1,7 @@
 import { emptyTiles } from "@/lib/board/empty-tiles";
 import { framesInUse, type StackDraft } from "./draft";
 import { isKept, nameOf, percent, tileOf, type SortedDraft } from "./sorted-draft";
-import type { ProposedQuestion, QuestionKind } from "./types";
+import type { ProposedQuestion } from "./types";
 
 /** Severities, higher is worse: what can only be mended by shooting again comes first. */
 const SEVERITY = {
@@ -14,25 +14,30 @@ const SEVERITY = {
 } as const;
 /** More doubts of one kind than this are one question: the answer will be the same for all. Our own. */
 const MOST_SINGLE_QUESTIONS = 3;
+const MOST_NAMES = 12;
+
+const ACCEPT = { type: "keep" } as const;
 
 /** Doubts about places, seams and numbers of frames. */
 export function questionsOfGrid(draft: SortedDraft): ProposedQuestion[] {
+  const { overlapWanted, framesPerTile } = draft.options;
   return [
     ...gather(holeQuestions(draft), {
-      kind: "hole",
-      message: (count) => `${count} places of the grid have no stack.`,
-      answer: "Leave them empty",
+      message: (count) => `Are stacks missing at these ${count} places of the grid?`,
+      keep: "Leave them empty",
+      nameOne: ({ tile }) => tile ?? "",
     }),
     ...gather(thinQuestions(draft), {
-      kind: "thin-seam",
-      message: (count) => `${count} seams overlap by less than the ${percent(draft.options.overlapWanted)} wanted.`,
-      answer: "Accept the small overlaps",
+      message: (count) => `Are the overlaps at ${count} seams enough?`,
+      evidence: `Less than the ${percent(overlapWanted)} wanted`,
+      keep: "Accept the small overlaps",
       nameOne: ({ stackIds }) => stackIds.map((id) => nameById(draft, id)).join("–"),
     }),
     ...gather(fewQuestions(draft), {
-      kind: "few-frames",
-      message: (count) => `${count} stacks have fewer than the ${draft.options.framesPerTile.least} frames wanted.`,
-      answer: "Merge them as they are",
+      message: (count) => `Are the few frames of ${count} stacks enough?`,
+      evidence: `Fewer than ${framesPerTile.least} frames in use`,
+      keep: "Merge them as they are",
+      nameOne: ({ stackIds }) => stackIds.map((id) => nameById(draft, id)).join(""),
     }),
     ...retakeQuestions(draft),
     ...doubledQuestions(draft),
@@ -41,31 +46,32 @@ export function questionsOfGrid(draft: SortedDraft): ProposedQuestion[] {
 }
 
 interface Gathering {
-  readonly kind: QuestionKind;
   readonly message: (count: number) => string;
-  /** What accepts them all. */
-  readonly answer: string;
-  readonly nameOne?: (question: ProposedQuestion) => string;
+  /** What the single questions have in common. */
+  readonly evidence?: string;
+  /** Label of the answer that leaves all as it is. */
+  readonly keep: string;
+  readonly nameOne: (question: ProposedQuestion) => string;
 }
 
 /** Many doubts of one kind as one question: accepted all together, or mended one by one on the board. */
 function gather(
   questions: readonly ProposedQuestion[],
-  { kind, message, answer, nameOne = ({ tile, message: own }) => tile ?? own }: Gathering,
+  { message, evidence, keep, nameOne }: Gathering,
 ): ProposedQuestion[] {
-  if (questions.length <= MOST_SINGLE_QUESTIONS) return [...questions];
-  const first = questions[0];
-  if (!first) return [];
+  const [first] = questions;
+  if (!first || questions.length <= MOST_SINGLE_QUESTIONS) return [...questions];
   const names = questions.map(nameOne);
+  const list = `${names.slice(0, MOST_NAMES).join(", ")}${names.length > MOST_NAMES ? " and more" : ""}.`;
   return [
     {
       ...first,
-      key: `${kind} several`,
+      key: `${first.kind} several`,
       message: message(questions.length),
-      evidence: `${names.slice(0, 12).join(", ")}${names.length > 12 ? " and more" : ""}.`,
+      evidence: evidence ? `${evidence}: ${list}` : list,
       frameIds: questions.flatMap((question) => question.frameIds),
       stackIds: [...new Set(questions.flatMap((question) => question.stackIds))],
-      answers: [{ label: answer, action: ACCEPT }],
+      answers: [{ label: keep, action: ACCEPT }],
     },
   ];
 }
@@ -80,8 +86,6 @@ function findHoles(draft: SortedDraft): string[] {
   const columns = draft.places.reduce((most, place) => Math.max(most, place.column ?? 0), 0);
   return emptyTiles({ rows, columns }, draft.places);
 }
-
-const ACCEPT = { type: "keep" } as const;
 
 function holeQuestions(draft: SortedDraft): ProposedQuestion[] {
   return findHoles(draft).map((tile) => ({
@@ -106,7 +110,7 @@ function thinQuestions(draft: SortedDraft): ProposedQuestion[] {
       key: `thin-seam ${ids.join(" ")}`,
       kind: "thin-seam",
       message: `Is the overlap between ${a} and ${b} enough?`,
-      evidence: `It is ${percent(seam.overlap ?? 0)}; ${percent(draft.options.overlapWanted)} are wanted.`,
+      evidence: `It is ${(100 * (seam.overlap ?? 0)).toFixed(1)} % of the side; ${percent(draft.options.overlapWanted)} are wanted.`,
       frameIds: [],
       stackIds: ids,
       tile: tileOf(draft, seam.a),

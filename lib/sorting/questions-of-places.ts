@@ -8,6 +8,10 @@ const SEVERITY = { order: 85, shared: 75 } as const;
 const SURE_ENOUGH = 0.8;
 const MOST_NAMES = 8;
 const MOST_QUESTIONS = 4;
+/** A fifth of the weight of one sure edge. */
+const BARELY_HELD = 6;
+/** Another place is named where it has at least the reciprocal of what the present one has. */
+const RIVAL_SHARE = 3;
 
 /** A part of the grid whose place may be wrong as a whole. */
 interface Block {
@@ -20,10 +24,12 @@ interface Block {
  * @param chances - of a right place, by stack index
  */
 export function questionsOfPlaces(draft: SortedDraft, chances: readonly number[]): ProposedQuestion[] {
-  const blocks = [...blocksByOrder(draft), ...blocksByTies(draft, chances)];
-  const isMany = blocks.length > MOST_QUESTIONS;
-  const asked = isMany ? [joinBlocks(blocks)] : blocks;
-  return [...asked.map((block) => askBlock(draft, block)), ...askShared(draft)];
+  const shared = sharedTiles(draft);
+  const byOrder = blocksByOrder(draft);
+  const asked = new Set([...shared.flat(), ...byOrder.flatMap(({ members }) => members)]);
+  const blocks = [...byOrder, ...blocksByTies(draft, chances, asked)];
+  const few = blocks.length > MOST_QUESTIONS ? [joinBlocks(blocks)] : blocks;
+  return [...few.map((block) => askBlock(draft, block)), ...askShared(draft, shared)];
 }
 
 function joinBlocks(blocks: readonly Block[]): Block {
@@ -110,10 +116,10 @@ function describeWalk({ along, from, turns }: ShotOrder): string {
 }
 
 /** Parts that little holds to the rest; of those that overlap, one. */
-function blocksByTies(draft: SortedDraft, chances: readonly number[]): Block[] {
+function blocksByTies(draft: SortedDraft, chances: readonly number[], asked: ReadonlySet<number>): Block[] {
   // Sure for another reason than the pictures: placed before, or by the order shot.
   const isConfirmed = ({ members }: Tie) => members.every((index) => (chances[index] ?? 0) >= SURE_ENOUGH);
-  const isAsked = new Set<number>();
+  const isAsked = new Set(asked);
   const weak = draft.layout.ties.ties
     .map((tie) => ({ tie, chance: tieChance(tie) }))
     .filter(({ tie, chance }) => chance < SURE_ENOUGH && !isConfirmed(tie))
@@ -127,11 +133,13 @@ function blocksByTies(draft: SortedDraft, chances: readonly number[]): Block[] {
 }
 
 function tieEvidence({ agreeing, clashing, rival, against, members }: Tie): string {
-  const isOne = members.length === 1;
-  const held = agreeing < 6 ? "hardly anything" : "little";
-  const first = `${isOne ? "Its picture matches" : "They match each other, but"} ${isOne ? `${held} of the tiles around it` : `${held} of the tiles around them`}`;
-  const other =
-    rival && against > agreeing / 4 ? `; ${describeOffset(rival)} fits ${against > agreeing ? "better" : "too"}` : "";
+  const held = agreeing < BARELY_HELD ? "barely" : "weakly";
+  const first =
+    members.length === 1
+      ? `Its picture matches the tiles around it ${held}`
+      : `They match each other, but the tiles around them ${held}`;
+  const better = against > agreeing ? "better" : "nearly as well";
+  const other = rival && against * RIVAL_SHARE > agreeing ? `; ${describeOffset(rival)} would fit ${better}` : "";
   const shared = clashing > 0 ? "; another stack lies at the same place and shows something else" : "";
   return `${first}${other}${shared}. Compare the edges with the tiles beside.`;
 }
@@ -156,8 +164,8 @@ function namesOf(draft: SortedDraft, members: readonly number[]): string {
   return shown.length === 0 ? last : `${shown.join(", ")} and ${last}`;
 }
 
-function askShared(draft: SortedDraft): ProposedQuestion[] {
-  return sharedTiles(draft).map((members) => {
+function askShared(draft: SortedDraft, shared: readonly (readonly number[])[]): ProposedQuestion[] {
+  return shared.map((members) => {
     const tile = tileOf(draft, members[0] ?? 0) ?? "this tile";
     const ids = members.map((index) => draft.stacks[index]?.id ?? "");
     const firsts = members.map((index) => draft.stacks[index]?.frames[0]?.frame.name ?? "");

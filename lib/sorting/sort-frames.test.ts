@@ -154,7 +154,31 @@ describe("what goes wrong at a shoot", () => {
       expect([proposal.rows, proposal.columns]).toEqual([3, 4]);
       expect(new Set(proposal.stacks.map(({ row, column }) => `${row} ${column}`)).size).toBe(12);
       expect(proposal.shotOrder).toEqual(order);
+      // One question for the row as a whole where it begins or ends the shoot, none for each of its tiles.
+      const asked = proposal.questions.filter(({ kind }) => kind === "order");
+      if (order.along === "rows") {
+        expect(asked.map(({ message }) => message.replaceAll(/A\d/g, "A"))).toEqual([
+          "Are A, A, A and A in their places?",
+        ]);
+      }
+      for (const { tile } of asked) expect(tile).toMatch(/^A[1-4]$/);
     }
+  });
+
+  test("a tile with a long pause in it and far too many frames is asked about", async () => {
+    const tidy = pretendShoot({ ...PLAN, framesPerTile: 6 });
+    const frames = tidy.flatMap((frame, at) => {
+      const more = [0, 1, 2, 3].map((extra) => ({
+        ...frame,
+        name: `FRAM0${500 + extra}`,
+        seconds: (frame.seconds ?? 0) + 100 + extra,
+      }));
+      return at === tidy.length - 1 ? [frame, ...more] : [frame];
+    });
+    const proposal = await sort(frames);
+    const asked = proposal.questions.filter(({ kind }) => kind === "two-stacks");
+    expect(asked.map(({ tile, frameIds }) => [tile, frameIds.length])).toEqual([["C4", 1]]);
+    expect(asked[0]?.answers.map(({ action }) => action.type)).toEqual(["keep", "split-stack"]);
   });
 
   test("a tile shot again is a second take, the sharper one is chosen", async () => {
@@ -198,6 +222,8 @@ describe("little or nothing to sort", () => {
     const frames = pretendShoot({ ...PLAN, isBlank: () => true }).map((frame) => ({ ...frame, seconds: null }));
     const proposal = await sort(frames);
     expect(proposal.frames).toHaveLength(frames.length);
+    // Nothing tells where one tile ends: one question says so.
+    expect(proposal.questions.filter(({ kind }) => kind === "between-stacks")).toHaveLength(1);
   });
 
   test("times that go backwards", async () => {

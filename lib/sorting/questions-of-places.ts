@@ -54,7 +54,13 @@ function askBlock(draft: SortedDraft, { members, evidence }: Block): ProposedQue
     frameIds: [],
     stackIds: [...new Set([...own, ...all.map((stack) => stack.id)])],
     tile: tileOf(draft, members[0] ?? 0),
-    answers: [{ label: isOne ? "Leave it there" : "Leave them there", action: { type: "keep" } }],
+    answers: [
+      { label: isOne ? "Leave it there" : "Leave them there", action: { type: "keep" } },
+      {
+        label: isOne ? "Take it out of the grid" : "Take them out of the grid",
+        action: { type: "take-out", stackIds: own },
+      },
+    ],
     severity: SEVERITY.order,
   };
 }

@@ -103,8 +103,8 @@ function Step({ projectId, entry, onBack }: StepProps) {
         )}
       </span>
       {onBack && (
-        <Button size="slim" tone="bare" onClick={onBack}>
-          Undo back to here<span className="sr-only">, step {revision}</span>
+        <Button size="slim" tone="bare" aria-label={`Undo back to here, step ${revision}`} onClick={onBack}>
+          Undo back to here
         </Button>
       )}
     </li>

@@ -78,6 +78,7 @@ export function FrameGrid({ label, frames, perRow, hasPlaces }: FrameGridProps) 
           isStop={props.frame.id === stopId}
           hasPlaces={hasPlaces}
           onChoose={(event) => onChoose(event, props.frame.id)}
+          onFocus={() => setFocusedId(props.frame.id)}
         />
       ))}
     </div>
@@ -90,12 +91,13 @@ interface FrameRowProps extends BenchFrameProps {
   readonly isStop: boolean;
   readonly hasPlaces: boolean;
   readonly onChoose: (event: MouseEvent) => void;
+  readonly onFocus: () => void;
 }
 
 const HANDLE =
   "inline-flex size-7 shrink-0 cursor-grab items-center justify-center text-quiet hover:bg-ink hover:text-paper pointer-coarse:hidden";
 
-function FrameRow({ isFirst, isStop, hasPlaces, onChoose, ...props }: FrameRowProps) {
+function FrameRow({ isFirst, isStop, hasPlaces, onChoose, onFocus, ...props }: FrameRowProps) {
   const { frame, size, isReference, onCompare, projectId } = props;
   const hand = useHand();
   const isSelected = useInHand(({ selected }) => selected.has(frame.id));
@@ -104,6 +106,7 @@ function FrameRow({ isFirst, isStop, hasPlaces, onChoose, ...props }: FrameRowPr
     <div
       role="row"
       data-row={frame.id}
+      onFocus={onFocus}
       tabIndex={tabIndex}
       aria-selected={isSelected}
       aria-label={frameLabel(props)}

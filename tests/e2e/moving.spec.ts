@@ -152,7 +152,7 @@ test("a frame taken to the edge makes a new place, and the loose cell takes it o
   if (!cell) throw new Error("there is no cell for loose frames");
   await page.mouse.move(cell.x + 8, cell.y + 8, { steps: 6 });
   await page.mouse.up();
-  await expect(page.getByRole("button", { name: /^1 loose frame/ })).toBeVisible();
+  await expect(page.getByRole("button", { name: /^1 loose frame: / })).toBeVisible();
   await expectOnServer(page, projectId, { C2: 5 });
   await undo(page);
   await expectOnServer(page, projectId, { C2: 6 });

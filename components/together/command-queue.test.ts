@@ -58,11 +58,12 @@ class PretendServer {
 
 const ids = ["1", "2", "3"].map((digit) => `${digit.repeat(8)}-1111-4111-8111-111111111111`);
 
-function given(at: number, seen: Record<string, string> = { "frame-17": "HARB0019 is in A3" }): GivenCommand {
+function given(at: number, frameId = "frame-17"): GivenCommand {
   return {
-    command: { id: ids[at] ?? "", revision: 1, type: "move-frames", frameIds: ["frame-17"], to: { kind: "loose" } },
+    command: { id: ids[at] ?? "", revision: 1, type: "move-frames", frameIds: [frameId], to: { kind: "loose" } },
     sentence: `step ${at}`,
-    seen,
+    // As `describeSubjects` fills it: the stack that it lay in and the grid as well.
+    seen: { [frameId]: `${frameId} is in A3`, "stack-3": "A3: 6 frames", grid: "The grid has 3 rows and 6 columns" },
     givenAtMs: at,
   };
 }
@@ -188,10 +189,21 @@ test("a later command about the same says on which refused one it rested; the ot
   const queue = open();
   queue.add(given(0));
   queue.add(given(1));
-  queue.add(given(2, { "frame-3": "HARB0005 is in A1" }));
+  queue.add(given(2, "frame-3"));
   await queue.whenIdle();
   expect(queue.getState().refusals.map(({ follows }) => follows?.sentence ?? null)).toEqual([null, "step 0"]);
   expect(server.recorded).toEqual([ids[2]]);
+});
+
+test("a refused command about other frames of the same stack rested on nothing; taking back a refused one did", async () => {
+  server.replies = ["conflict", "conflict", "conflict"];
+  const queue = open();
+  queue.add(given(0));
+  queue.add(given(1, "frame-18"));
+  const command = { id: ids[2] ?? "", revision: 1, type: "undo", commandId: ids[0] ?? "" } as const;
+  queue.add({ ...given(2), command, sentence: "took back: step 0" });
+  await queue.whenIdle();
+  expect(queue.getState().refusals.map(({ follows }) => follows?.sentence ?? null)).toEqual([null, null, "step 0"]);
 });
 
 test("a missing right cannot be repeated; where the server failed the same id is sent again", async () => {

@@ -2,6 +2,7 @@ import type { GivenCommand, KeptCommands } from "@/components/together/kept-comm
 import { conflictSchema, type CommandAnswer, type Conflict } from "@/lib/board/command-answers";
 import type { BoardCommand } from "@/lib/board/command-schema";
 import type { WaitingCommand } from "@/lib/board/show-waiting";
+import { subjectsOf } from "@/lib/board/subject-words";
 import { FetchProblem } from "@/lib/http/fetch-json";
 
 /** Given, and perhaps answered. */
@@ -35,7 +36,7 @@ export interface QueueParts {
   readonly send: (command: BoardCommand) => Promise<CommandAnswer>;
   readonly kept: KeptCommands;
   readonly now: () => number;
-  /** Told of every recorded command, before it counts as answered. */
+  /** Told of every recorded command, once it counts as answered. */
   readonly onAnswer: (answer: CommandAnswer) => void;
   readonly onRefused: (refusal: Refusal) => void;
 }
@@ -138,9 +139,9 @@ export class CommandQueue {
 
   /** @returns whether the server has spoken on it */
   private async send(queued: QueuedCommand): Promise<boolean> {
+    let answer: CommandAnswer;
     try {
-      this.take(queued, await this.parts.send(queued.command));
-      return true;
+      answer = await this.parts.send(queued.command);
     } catch (error) {
       const status = error instanceof FetchProblem ? error.status : null;
       if (status === 401 || (status !== null && NO_ANSWER.has(status))) {
@@ -150,6 +151,8 @@ export class CommandQueue {
       this.refuse(queued, error);
       return true;
     }
+    this.take(queued, answer);
+    return true;
   }
 
   private take(queued: QueuedCommand, answer: CommandAnswer): void {
@@ -167,7 +170,7 @@ export class CommandQueue {
     const refusal: Refusal = {
       given,
       ...explain(error),
-      follows: this.state.refusals.find((earlier) => isAboutSame(earlier.given, given))?.given ?? null,
+      follows: this.state.refusals.find((earlier) => restsOn(given, earlier.given))?.given ?? null,
     };
     this.change({
       commands: this.state.commands.filter(({ command }) => command.id !== given.command.id),
@@ -211,6 +214,8 @@ function explain(error: unknown): Pick<Refusal, "detail" | "conflict" | "isRepea
   return { detail: error.detail, conflict: conflict?.data ?? null, isRepeatable: error.status >= 500 };
 }
 
-function isAboutSame(earlier: GivenCommand, later: GivenCommand): boolean {
-  return Object.keys(later.seen).some((id) => id in earlier.seen);
+/** It names what the earlier one named or made, or takes it back. What merely lies in the same stack rests on nothing. */
+function restsOn(later: GivenCommand, earlier: GivenCommand): boolean {
+  const named = new Set([earlier.command.id, ...subjectsOf(earlier.command)]);
+  return subjectsOf(later.command).some((id) => named.has(id));
 }

@@ -22,7 +22,7 @@ interface TogetherProps {
 
 /** Round the board: gives its parts the commands and who is where, and says what others did and what was refused. */
 export function Together({ projectId, userId, work, board, chosen, children }: TogetherProps) {
-  useOthersNews({ projectId, userId, say: work.say });
+  useOthersNews({ projectId, userId, revision: board.revision, say: work.say });
   usePresence(projectId, chosen);
   return (
     <BoardCommandsContext value={work.commands}>

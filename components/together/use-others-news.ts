@@ -10,15 +10,18 @@ import { boardKeys } from "@/lib/board/queries";
 export function useOthersNews(input: {
   readonly projectId: string;
   readonly userId: string;
+  /** Of the board that is shown. */
+  readonly revision: number;
   readonly say: (text: string, tone: Said["tone"]) => void;
 }): void {
-  const { projectId, userId, say } = input;
+  const { projectId, userId, revision, say } = input;
   // Nobody asks for it: what brings the board up to date leaves it there.
   const { data } = useQuery<readonly ToldStep[]>({ queryKey: boardKeys.told(projectId), queryFn: skipToken });
-  const saidUpTo = useRef(0);
+  // What the board showed already when it was opened is no news.
+  const saidUpTo = useRef(revision);
   useEffect(() => {
-    const news = (data ?? []).filter(({ revision, person }) => revision > saidUpTo.current && person.id !== userId);
-    saidUpTo.current = Math.max(saidUpTo.current, ...(data ?? []).map(({ revision }) => revision));
+    const news = (data ?? []).filter((step) => step.revision > saidUpTo.current && step.person.id !== userId);
+    saidUpTo.current = Math.max(saidUpTo.current, ...(data ?? []).map((step) => step.revision));
     if (news.length > 0) say(news.map(({ person, sentence }) => `${person.name} ${sentence}`).join(". "), "news");
   }, [data, userId, say]);
 }

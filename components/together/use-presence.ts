@@ -4,8 +4,8 @@ import { useQuery, useQueryClient } from "@tanstack/react-query";
 import { useEffect, useMemo } from "react";
 import { presenceQuery, sendPresence } from "@/lib/presence/queries";
 
-/** Well within what the server takes for silence (45 s), ms. */
-const AGAIN_MS = 20_000;
+/** A third of what the server takes for silence (45 s), ms: two words may be lost. */
+const AGAIN_MS = 15_000;
 
 /** Lets the others know that one is here, and on which tile. */
 export function usePresence(projectId: string, tile: string | null): void {

@@ -1,6 +1,7 @@
 import { applyChanges, type Change } from "@/lib/board/changes";
 import { framesOf, type Place } from "@/lib/board/look-up";
 import type { Board, BoardQuestion } from "@/lib/board/model";
+import { questionTile } from "@/lib/board/question-tile";
 import { placeOfName } from "@/lib/board/tile-name";
 import type { AnswerAction } from "@/lib/sorting/types";
 
@@ -26,7 +27,13 @@ export function closeAnswered(board: Board, changes: readonly Change[]): Change[
   };
   return after.questions
     .filter((question) => isAnswered(question, doing))
-    .map((question) => ({ on: "question", question, isOpen: false }));
+    .map((question) => ({
+      on: "question",
+      question,
+      isOpen: false,
+      // Nobody has said that the place stays empty: should the stack leave again, the next sorting asks again.
+      ...(question.kind === "hole" ? { isWithdrawn: true } : {}),
+    }));
 }
 
 interface Doing {
@@ -64,9 +71,11 @@ function isAnswered(question: BoardQuestion, doing: Doing): boolean {
   return isWithoutMeaning(question, doing);
 }
 
-function isWithoutMeaning({ kind, tile, stackIds }: BoardQuestion, { before, after, placed }: Doing): boolean {
+function isWithoutMeaning(question: BoardQuestion, { before, after, placed }: Doing): boolean {
+  const { kind, stackIds } = question;
   switch (kind) {
     case "hole": {
+      const tile = questionTile(question, new Map(before.stacks.map((stack) => [stack.id, stack])));
       const hole = tile === null ? null : placeOfName(tile);
       return [...placed.values()].some((at) => at && at.row === hole?.row && at.column === hole.column);
     }

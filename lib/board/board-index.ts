@@ -1,6 +1,6 @@
 import { currentSeams } from "@/lib/board/current-seams";
 import type { Board, BoardFrame, BoardQuestion, BoardSeam, BoardStack } from "@/lib/board/model";
-import { questionTile } from "@/lib/board/question-tile";
+import { withPresentNames } from "@/lib/board/present-names";
 import { tileName } from "@/lib/board/tile-name";
 
 /** One stack as it is drawn: at its place in the grid, or without one. */
@@ -33,6 +33,7 @@ export interface BoardHole {
 
 /** A board looked up by what the page asks for. */
 export interface BoardIndex {
+  /** With present names in all that it says. */
   readonly board: Board;
   readonly framesById: ReadonlyMap<string, BoardFrame>;
   readonly framesOfStack: ReadonlyMap<string, readonly BoardFrame[]>;
@@ -49,11 +50,11 @@ export interface BoardIndex {
 }
 
 /** Builds the look-ups once for a board. Pure; time grows with frames and places. */
-export function indexBoard(board: Board): BoardIndex {
+export function indexBoard(stored: Board): BoardIndex {
+  const board = withPresentNames(stored);
   const framesOfStack = groupBy(board.frames, (frame) => frame.stackId);
   const framesById = new Map(board.frames.map((frame) => [frame.id, frame]));
-  const stacksById = new Map(board.stacks.map((stack) => [stack.id, stack]));
-  const questionsOf = groupBy(board.questions, (question) => questionTile(question, stacksById));
+  const questionsOf = groupBy(board.questions, (question) => question.tile);
   const makeTile = (name: string, takes: readonly BoardStack[]): BoardTile => {
     const stack = takes.find((take) => take.isChosenTake) ?? first(takes);
     const frames = framesOfStack.get(stack.id) ?? [];

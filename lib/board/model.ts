@@ -94,6 +94,7 @@ export interface BoardQuestion {
   readonly id: string;
   readonly key: string;
   readonly kind: QuestionKind;
+  /** As in all that a sorting says, tokens stand for names: `withPresentNames` puts those of now in their place. */
   readonly message: string;
   readonly evidence: string;
   readonly frameIds: readonly string[];

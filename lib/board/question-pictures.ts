@@ -22,8 +22,9 @@ interface Placed {
 }
 
 /**
- * The pictures that decide a question: the frames it is about and the references of the tiles it names. At the same
- * spot of the scene where all of them show one (that of a named tile, else the middle of what two share), else whole.
+ * The pictures that decide a question: the frames it is about and the references of the tiles that it names or that an
+ * answer offers. At the same spot of the scene where all of them show one (that of a named tile, else the middle of
+ * what two share), else whole.
  */
 export function questionPictures(index: BoardIndex, question: BoardQuestion): QuestionPicture[] {
   const placed = [
@@ -68,7 +69,10 @@ function askedFrames(index: BoardIndex, question: BoardQuestion): Placed[] {
 }
 
 function references(index: BoardIndex, question: BoardQuestion): Placed[] {
-  return question.stackIds.slice(0, 2).flatMap((id) => {
+  const offered = question.answers.flatMap(({ action }) =>
+    action.type === "move-frames" ? (action.toStackId ?? []) : [],
+  );
+  return [...new Set([...question.stackIds, ...offered])].slice(0, 2).flatMap((id) => {
     const tile = index.tileOfStack.get(id);
     const stack = tile?.takes.find((take) => take.id === id);
     const frame = index.framesById.get(stack?.referenceId ?? "");

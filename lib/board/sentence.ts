@@ -1,5 +1,6 @@
 import type { CommandOf, PlannedCommand } from "@/lib/board/command-schema";
 import type { Board, BoardStack } from "@/lib/board/model";
+import { withPresentNames } from "@/lib/board/present-names";
 import { rowLetters, tileName } from "@/lib/board/tile-name";
 import { countOf } from "@/lib/board/words";
 
@@ -67,7 +68,7 @@ function describeSettling({ target }: CommandOf<"settle">, { before }: Telling):
     const what = stackName(before, target.stackId, false);
     return target.isSettled ? `settled ${what}` : `took the settled mark off ${what}`;
   }
-  const question = before.questions.find(({ id }) => id === target.questionId);
+  const question = withPresentNames(before).questions.find(({ id }) => id === target.questionId);
   const label = target.answer === null ? "Keep it as it is" : (question?.answers[target.answer]?.label ?? "");
   return `answered "${question?.message ?? ""}" with "${label}"`;
 }

@@ -1,6 +1,7 @@
 import type { BoardCommand } from "@/lib/board/command-schema";
 import { framesOf } from "@/lib/board/look-up";
 import type { Board } from "@/lib/board/model";
+import { withPresentNames } from "@/lib/board/present-names";
 import { stackName } from "@/lib/board/sentence";
 import { countOf } from "@/lib/board/words";
 
@@ -26,7 +27,7 @@ export function describeSubject(board: Board, id: string): string | null {
     ];
     return `${name.charAt(0).toUpperCase()}${name.slice(1)}: ${facts.join(", ")}`;
   }
-  const question = board.questions.find((each) => each.id === id);
+  const question = withPresentNames(board).questions.find((each) => each.id === id);
   if (question) return `“${question.message}” is open`;
   return id === "grid"
     ? `The grid has ${countOf(board.grid.rows, "row")} and ${countOf(board.grid.columns, "column")}`

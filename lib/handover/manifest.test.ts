@@ -1,4 +1,5 @@
 import { describe, expect, test } from "vitest";
+import { applyChanges } from "@/lib/board/changes";
 import { boardFromProposal } from "@/lib/board/from-proposal";
 import type { Board } from "@/lib/board/model";
 import { sortFrames } from "@/lib/sorting/sort-frames";
@@ -67,6 +68,18 @@ describe("buildManifest", () => {
     ]);
     expect(manifest.duplicates).toHaveLength(1);
     expect(manifest.toSettle.map(({ kind }) => kind)).toContain("hole");
+  });
+
+  test("what is to settle names the tiles as they are called now", async () => {
+    const sorted = await makeBoard();
+    const holes = (board: Board) =>
+      buildManifest(board, OPTIONS).toSettle.flatMap(({ kind, message, tile }) =>
+        kind === "hole" ? [[message, tile]] : [],
+      );
+    expect(holes(sorted)).toEqual([["Is a stack missing at A3?", "A3"]]);
+    const board = applyChanges(sorted, [{ on: "line", axis: "row", at: 1, by: 1 }]);
+    expect(holes(board)).toEqual([["Is a stack missing at B3?", "B3"]]);
+    expect(JSON.stringify(buildManifest(board, OPTIONS))).not.toMatch(/\{(stack|tile|hole):/);
   });
 
   test("layers of a stack are at 100, 50 and 33 per cent; a frame set aside has none", async () => {

@@ -1,7 +1,7 @@
 import { currentSeams } from "@/lib/board/current-seams";
 import type { Board, BoardFrame, BoardStack } from "@/lib/board/model";
 import { emptyTiles } from "@/lib/board/empty-tiles";
-import { questionTile } from "@/lib/board/question-tile";
+import { withPresentNames } from "@/lib/board/present-names";
 import { tileName } from "@/lib/board/tile-name";
 import { expectedNoise } from "@/lib/board/expected-noise";
 import type { Manifest, ManifestFrame, ManifestStack } from "./manifest-types";
@@ -36,8 +36,7 @@ export function buildManifest(board: Board, options: ManifestOptions): Manifest 
   const isIn = new Set(stacks.map((stack) => stack.id));
   const frames = share ? board.frames.filter((frame) => frame.stackId && isIn.has(frame.stackId)) : board.frames;
   const frameIds = new Set(frames.map((frame) => frame.id));
-  const stacksById = new Map(board.stacks.map((stack) => [stack.id, stack]));
-  const questions = board.questions.filter((question) => {
+  const questions = withPresentNames(board).questions.filter((question) => {
     if (!share) return true;
     return question.stackIds.some((id) => isIn.has(id)) || question.frameIds.some((id) => frameIds.has(id));
   });
@@ -57,9 +56,8 @@ export function buildManifest(board: Board, options: ManifestOptions): Manifest 
     },
     stacks: writeStacks(board, stacks, options),
     frames: writeFrames(board, frames),
-    toSettle: questions.map((question) => {
-      const { kind, message, frameIds: ids, stackIds } = question;
-      return { kind, message, frames: [...ids], stacks: [...stackIds], tile: questionTile(question, stacksById) };
+    toSettle: questions.map(({ kind, message, frameIds: ids, stackIds, tile }) => {
+      return { kind, message, frames: [...ids], stacks: [...stackIds], tile };
     }),
     unreadable: board.unreadable.map(({ sha256, ...file }) => (sha256 === null ? file : { ...file, sha256 })),
     duplicates: board.duplicates.map(({ name, folder, of }) => ({ name, folder, of })),

@@ -1,4 +1,5 @@
-import { emptyTiles } from "@/lib/board/empty-tiles";
+import { emptyPlaces } from "@/lib/board/empty-tiles";
+import { holeToken, type Hole, type HoleLine } from "@/lib/board/name-tokens";
 import { framesInUse, type StackDraft } from "./draft";
 import { isKept, nameOf, percent, tileOf, type SortedDraft } from "./sorted-draft";
 import type { ProposedQuestion } from "./types";
@@ -15,25 +16,31 @@ const SEVERITY = {
 /** More doubts of one kind than this are one question: the answer will be the same for all. Our own. */
 const MOST_SINGLE_QUESTIONS = 3;
 const MOST_NAMES = 12;
+/** Stacks that say where a hole is: one of them may be moved, and the others still know. */
+const MOST_WITNESSES = 3;
 
 const ACCEPT = { type: "keep" } as const;
 
-/** Doubts about places, seams and numbers of frames. */
-export function questionsOfGrid(draft: SortedDraft): ProposedQuestion[] {
+/**
+ * Doubts about places, seams and numbers of frames.
+ * @param settled - keys of what was answered before: not gathered with the rest
+ */
+export function questionsOfGrid(draft: SortedDraft, settled: ReadonlySet<string>): ProposedQuestion[] {
+  const unsettled = ({ key }: ProposedQuestion) => !settled.has(key);
   const { overlapWanted, framesPerTile } = draft.options;
   return [
-    ...gather(holeQuestions(draft), {
+    ...gather(holeQuestions(draft).filter(unsettled), {
       message: (count) => `Are stacks missing at these ${count} places of the grid?`,
       keep: "Leave them empty",
       nameOne: ({ tile }) => tile ?? "",
     }),
-    ...gather(thinQuestions(draft), {
+    ...gather(thinQuestions(draft).filter(unsettled), {
       message: (count) => `Are the overlaps at ${count} seams enough?`,
       evidence: `Less than the ${percent(overlapWanted)} wanted`,
       keep: "Accept the small overlaps",
       nameOne: ({ stackIds }) => stackIds.map((id) => nameById(draft, id)).join("–"),
     }),
-    ...gather(fewQuestions(draft), {
+    ...gather(fewQuestions(draft).filter(unsettled), {
       message: (count) => `Are the few frames of ${count} stacks enough?`,
       evidence: `Fewer than ${framesPerTile.least} frames in use`,
       keep: "Merge them as they are",
@@ -81,24 +88,53 @@ function nameById(draft: SortedDraft, id: string): string {
   return stack ? nameOf(draft, stack.index) : "";
 }
 
-function findHoles(draft: SortedDraft): string[] {
+function findHoles(draft: SortedDraft): Hole[] {
   const rows = draft.places.reduce((most, place) => Math.max(most, place.row ?? 0), 0);
   const columns = draft.places.reduce((most, place) => Math.max(most, place.column ?? 0), 0);
-  return emptyTiles({ rows, columns }, draft.places);
+  return emptyPlaces({ rows, columns }, draft.places).map(({ row, column }) => ({
+    row: holeLine(draft, "row", row, column),
+    column: holeLine(draft, "column", column, row),
+  }));
+}
+
+/**
+ * The stacks of the hole's row or column that lie before it, nearest first, then those beyond it: lines that come in
+ * between change nothing of that. In an empty line, those of the one before it.
+ */
+function holeLine(draft: SortedDraft, axis: "row" | "column", line: number, across: number): HoleLine {
+  const other = axis === "row" ? "column" : "row";
+  for (let at = line; at > 0; at--) {
+    const held = draft.stacks.flatMap(({ id, index }) => {
+      const place = draft.places[index];
+      const side = place?.[other];
+      return place?.[axis] === at && side ? [{ id, steps: side - across }] : [];
+    });
+    held.sort((a, b) => Number(a.steps > 0) - Number(b.steps > 0) || Math.abs(a.steps) - Math.abs(b.steps));
+    if (held.length > 0) return { stackIds: held.slice(0, MOST_WITNESSES).map(({ id }) => id), further: line - at };
+  }
+  return { stackIds: [], further: line };
 }
 
 function holeQuestions(draft: SortedDraft): ProposedQuestion[] {
-  return findHoles(draft).map((tile) => ({
-    key: `hole ${tile}`,
-    kind: "hole",
-    message: `Is a stack missing at ${tile}?`,
-    evidence: "No frame shows this part of the scene as a tile of its own.",
-    frameIds: [],
-    stackIds: [],
-    tile,
-    answers: [{ label: `Leave ${tile} empty`, action: ACCEPT }],
-    severity: SEVERITY.hole,
-  }));
+  return findHoles(draft).map((hole) => {
+    const tile = holeToken(hole);
+    return {
+      key: `hole ${nearestOf(hole.row)} ${nearestOf(hole.column)}`,
+      kind: "hole",
+      message: `Is a stack missing at ${tile}?`,
+      evidence: "No frame shows this part of the scene as a tile of its own.",
+      frameIds: [],
+      stackIds: [],
+      tile,
+      answers: [{ label: `Leave ${tile} empty`, action: ACCEPT }],
+      severity: SEVERITY.hole,
+    };
+  });
+}
+
+/** By stacks, not by its name: settled, it stays so however many lines come in before it. */
+function nearestOf({ stackIds, further }: HoleLine): string {
+  return `${stackIds[0] ?? "edge"}+${further}`;
 }
 
 function thinQuestions(draft: SortedDraft): ProposedQuestion[] {

@@ -1,6 +1,9 @@
 import fc from "fast-check";
 import { describe, expect, test } from "vitest";
+import { namer } from "@/lib/board/name-tokens";
+import { questionTile } from "@/lib/board/question-tile";
 import {
+  NO_FACTS,
   pretendInput,
   pretendShoot,
   toSortFrame,
@@ -28,6 +31,20 @@ function summary(proposal: Proposal, nameOf: (id: string) => string = (id) => id
   return proposal.stacks
     .map(({ row, column, take, frameIds }) => `${row},${column},${take}: ${frameIds.map(nameOf).join(" ")}`)
     .sort();
+}
+
+/** Questions as they are read, with names in place of tokens. */
+function questionsOf({ stacks, frames, questions }: Proposal) {
+  const byId = new Map(stacks.map((stack) => [stack.id, stack]));
+  const say = namer(
+    byId,
+    frames.map(({ id, stackId }) => ({ name: id, stackId })),
+  );
+  return questions.map((question) => ({
+    ...question,
+    message: say(question.message),
+    tile: questionTile(question, byId),
+  }));
 }
 
 const shuffled = <Item>(items: readonly Item[], seed: number): Item[] =>
@@ -133,7 +150,31 @@ describe("what goes wrong at a shoot", () => {
   test("a tile never shot is a hole and a question", async () => {
     const proposal = await sort(pretendShoot({ ...PLAN, isMissing: (row, column) => row === 2 && column === 2 }));
     expect(proposal.stacks).toHaveLength(11);
-    expect(proposal.questions.map(({ kind, tile }) => [kind, tile])).toEqual([["hole", "B2"]]);
+    expect(questionsOf(proposal).map(({ kind, tile }) => [kind, tile])).toEqual([["hole", "B2"]]);
+  });
+
+  test("a hole that is to stay empty is not asked about again where lines came in before it", async () => {
+    const frames = pretendShoot({ ...PLAN, isMissing: (row, column) => row === 2 && column === 2 });
+    const { stacks, questions, rows, columns } = await sort(frames);
+    const facts = {
+      ...NO_FACTS,
+      stacks: stacks.map((stack) => ({
+        ...stack,
+        column: (stack.column ?? 0) + 1,
+        byPerson: false,
+        referenceId: null,
+      })),
+      grid: { rows, columns: columns + 1 },
+    };
+    const tilesAsked = async (settledQuestionKeys: readonly string[]) => {
+      const again = await sort(frames, (input) => ({ ...input, facts: { ...facts, settledQuestionKeys } }));
+      return questionsOf(again).map(({ message, tile }) => `${message} ${tile}`);
+    };
+    // B2 is B3 now; the column that came in is empty and asked about.
+    expect(await tilesAsked(questions.map(({ key }) => key))).toEqual(
+      ["A1", "B1", "C1"].map((tile) => `Is a stack missing at ${tile}? ${tile}`),
+    );
+    expect(await tilesAsked([])).toEqual(["Are stacks missing at these 4 places of the grid? A1"]);
   });
 
   test("a small overlap is asked about at the tile that it begins at", async () => {
@@ -144,8 +185,9 @@ describe("what goes wrong at a shoot", () => {
       return isLast && frame.at ? { ...frame, at: { ...frame.at, xPx: frame.at.xPx + 400 } } : frame;
     });
     const proposal = await sort(frames);
-    expect(proposal.questions.map(({ kind, tile }) => [kind, tile])).toEqual([["thin-seam", "A3"]]);
-    expect(proposal.questions[0]?.message).toContain("A3 and A4");
+    const asked = questionsOf(proposal);
+    expect(asked.map(({ kind, tile }) => [kind, tile])).toEqual([["thin-seam", "A3"]]);
+    expect(asked[0]?.message).toContain("A3 and A4");
   });
 
   test("a row of plain sky takes its places from the order shot", async () => {
@@ -155,7 +197,7 @@ describe("what goes wrong at a shoot", () => {
       expect(new Set(proposal.stacks.map(({ row, column }) => `${row} ${column}`)).size).toBe(12);
       expect(proposal.shotOrder).toEqual(order);
       // One question for the row as a whole where it begins or ends the shoot, none for each of its tiles.
-      const asked = proposal.questions.filter(({ kind }) => kind === "order");
+      const asked = questionsOf(proposal).filter(({ kind }) => kind === "order");
       if (order.along === "rows") {
         expect(asked.map(({ message }) => message.replaceAll(/A\d/g, "A"))).toEqual([
           "Are A, A, A and A in their places?",
@@ -176,7 +218,7 @@ describe("what goes wrong at a shoot", () => {
       return at === tidy.length - 1 ? [frame, ...more] : [frame];
     });
     const proposal = await sort(frames);
-    const asked = proposal.questions.filter(({ kind }) => kind === "two-stacks");
+    const asked = questionsOf(proposal).filter(({ kind }) => kind === "two-stacks");
     expect(asked.map(({ tile, frameIds }) => [tile, frameIds.length])).toEqual([["C4", 1]]);
     expect(asked[0]?.answers.map(({ action }) => action.type)).toEqual(["keep", "split-stack"]);
   });

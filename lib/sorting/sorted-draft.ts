@@ -1,4 +1,4 @@
-import { tileName } from "@/lib/board/tile-name";
+import { stackToken, tileToken } from "@/lib/board/name-tokens";
 import type { GridGraph } from "./collect-edges";
 import type { Take, TakeDoubt } from "./choose-takes";
 import type { StackDraft } from "./draft";
@@ -37,19 +37,15 @@ export function isKept({ layout }: SortedDraft, stack: StackDraft): boolean {
   return stack.fixed !== null || layout.spots[stack.index]?.isStray !== true;
 }
 
-/** Tile name of a stack's place; null where it has none. */
-export function tileOf({ places }: SortedDraft, index: number): string | null {
-  const place = places[index];
-  return place?.row && place.column ? tileName(place.row, place.column) : null;
+/** Token of the tile at a stack's place; null where it has none. */
+export function tileOf({ places, stacks }: SortedDraft, index: number): string | null {
+  const [place, stack] = [places[index], stacks[index]];
+  return stack && place?.row && place.column ? tileToken(stack.id) : null;
 }
 
-/** What a person would call a stack: its tile, or the frame it begins with. */
-export function nameOf(draft: SortedDraft, index: number): string {
-  const tile = tileOf(draft, index);
-  const first = draft.stacks[index]?.frames[0]?.frame.name ?? "";
-  if (tile === null) return `the stack from ${first}`;
-  const take = draft.takes[index]?.take ?? 1;
-  return take > 1 ? `${tile}, take ${take}` : tile;
+/** Token of what a person calls a stack: its tile, or the frame it begins with. */
+export function nameOf({ stacks }: SortedDraft, index: number): string {
+  return stackToken(stacks[index]?.id ?? "");
 }
 
 export function percent(share: number): string {

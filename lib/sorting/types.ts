@@ -172,13 +172,13 @@ export interface ProposedQuestion {
   /** The same doubt has the same key in every sorting. */
   readonly key: string;
   readonly kind: QuestionKind;
-  /** One sentence, a question where it can be: "Does HARB0019 belong to A4?" */
+  /** One sentence, a question where it can be: "Does HARB0019 belong to A4?"; a token stands for each tile, as in all texts. */
   readonly message: string;
   /** One sentence: what was measured. */
   readonly evidence: string;
   readonly frameIds: readonly string[];
   readonly stackIds: readonly string[];
-  /** Tile name (A1, B12, AA3) or null. */
+  /** Token of the tile (`lib/board/name-tokens.ts`), or null. */
   readonly tile: string | null;
   /** First is the recommended one. Labels are plain verbs: "Move to A4", "Keep in A3". */
   readonly answers: readonly { readonly label: string; readonly action: AnswerAction }[];

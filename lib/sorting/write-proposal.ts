@@ -19,7 +19,7 @@ const HIGHEST_CHANCE = 0.998;
 const DOUBLED_CHANCE = 0.6;
 
 /** Raised whenever the same input may give another proposal. */
-export const ENGINE_VERSION = "2";
+export const ENGINE_VERSION = "3";
 
 /** Puts what was found out into the proposal, with a reason for everything and a question for every doubt. */
 export function writeProposal(draft: SortedDraft, facts: SortFacts): Proposal {
@@ -30,7 +30,7 @@ export function writeProposal(draft: SortedDraft, facts: SortFacts): Proposal {
     ...questionsOfFrames(draft),
     ...questionsBetween(draft),
     ...questionsOfPlaces(draft, chances),
-    ...questionsOfGrid(draft),
+    ...questionsOfGrid(draft, settled),
   ]
     .filter((question) => !settled.has(question.key))
     .sort((a, b) => b.severity - a.severity || (a.key < b.key ? -1 : 1));

@@ -1,4 +1,5 @@
 import type { Board, BoardStack } from "@/lib/board/model";
+import { withPresentNames } from "@/lib/board/present-names";
 import { rowLetters, tileName } from "@/lib/board/tile-name";
 import type { FoundFiles } from "./collect-files";
 
@@ -88,7 +89,8 @@ function describeFiles({ unreadable, duplicates }: Board, { hidden, links, other
   ];
 }
 
-function listQuestions({ questions }: Board): string[] {
+function listQuestions(board: Board): string[] {
+  const { questions } = withPresentNames(board);
   if (questions.length === 0) return ["No questions."];
   const rest = questions.length - MOST_QUESTIONS_LISTED;
   return [
@@ -99,7 +101,8 @@ function listQuestions({ questions }: Board): string[] {
 }
 
 /** Why a frame is where it is; a line saying so where there is no such frame. */
-export function explainFrame({ frames, stacks }: Board, name: string): string {
+export function explainFrame(board: Board, name: string): string {
+  const { frames, stacks } = withPresentNames(board);
   const wanted = name.toLowerCase();
   const found = frames.filter((frame) =>
     [frame.name, ...frame.files.map((file) => file.name)].some((text) => text.toLowerCase() === wanted),

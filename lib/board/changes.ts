@@ -49,17 +49,23 @@ export class ChangeConflict extends Error {
   }
 }
 
-/** Fields that must still be what the change saw; all else is measured anew and may be overwritten. */
-const DECIDED_FRAME_FIELDS = ["stackId", "setAside"] as const;
-const DECIDED_STACK_FIELDS = [
-  "row",
-  "column",
-  "take",
-  "isChosenTake",
-  "referenceId",
-  "isSettled",
-  "shareUserId",
-] as const;
+/**
+ * Fields that must still be what the change saw, and what to say where they are not; all else is measured anew and may
+ * be overwritten.
+ */
+const DECIDED_OF_FRAME = {
+  stackId: "It has been moved since.",
+  setAside: "It has been set aside or brought back since.",
+} as const;
+const DECIDED_OF_STACK = {
+  row: "It has another place now.",
+  column: "It has another place now.",
+  take: "It is another take now.",
+  isChosenTake: "Another take has been chosen since.",
+  referenceId: "It has another reference now.",
+  isSettled: "Its settled mark has been changed since.",
+  shareUserId: "It has been given to somebody else since.",
+} as const;
 
 /**
  * The board after the changes; the one given stays as it is.
@@ -104,14 +110,14 @@ function applyChange(draft: Draft, change: Change): void {
     case "frame": {
       const frame = draft.frames.get(change.id);
       if (!frame) throw new ChangeConflict("A frame is no longer there.", change.id);
-      expectSame(frame, change.before, DECIDED_FRAME_FIELDS, change.id);
+      expectSame(frame, change.before, DECIDED_OF_FRAME, change.id);
       draft.frames.set(change.id, { ...frame, ...change.after });
       return;
     }
     case "stack": {
       const stack = draft.stacks.get(change.id);
       if (!stack) throw new ChangeConflict("A stack is no longer there.", change.id);
-      expectSame(stack, change.before, DECIDED_STACK_FIELDS, change.id);
+      expectSame(stack, change.before, DECIDED_OF_STACK, change.id);
       draft.stacks.set(change.id, { ...stack, ...change.after });
       return;
     }
@@ -121,9 +127,8 @@ function applyChange(draft: Draft, change: Change): void {
       return;
     case "no-stack": {
       const { id } = change.stack;
-      const isHeld = [...draft.frames.values()].some((frame) => frame.stackId === id);
       if (!draft.stacks.has(id)) throw new ChangeConflict("A stack is no longer there.", id);
-      if (isHeld) throw new ChangeConflict("Other frames have come into this stack.", id);
+      if (isHeld(draft, id)) throw new ChangeConflict("Other frames have come into this stack.", id);
       draft.stacks.delete(id);
       return;
     }
@@ -152,8 +157,13 @@ function applyChange(draft: Draft, change: Change): void {
   }
 }
 
+function isHeld({ frames }: Draft, stackId: string): boolean {
+  for (const frame of frames.values()) if (frame.stackId === stackId) return true;
+  return false;
+}
+
 /** Two stacks have one seam each way round at the most. */
-function seamKey({ stackId, neighbourId }: BoardSeam): string {
+export function seamKey({ stackId, neighbourId }: Pick<BoardSeam, "stackId" | "neighbourId">): string {
   return `${stackId} ${neighbourId}`;
 }
 
@@ -168,16 +178,14 @@ function shiftLine(draft: Draft, { axis, at, by }: Extract<Change, { on: "line" 
   draft.grid = { ...draft.grid, [size]: draft.grid[size] + by };
 }
 
-function expectSame<Entity, Field extends keyof Entity>(
+function expectSame<Entity, Field extends keyof Entity & string>(
   present: Entity,
-  before: Partial<Pick<Entity, Field>>,
-  fields: readonly Field[],
+  before: Partial<Entity>,
+  decided: Readonly<Record<Field, string>>,
   id: string,
 ): void {
-  for (const field of fields) {
-    if (field in before && before[field] !== present[field]) {
-      throw new ChangeConflict(`It has been changed since (${String(field)}).`, id);
-    }
+  for (const field in decided) {
+    if (field in before && before[field] !== present[field]) throw new ChangeConflict(decided[field], id);
   }
 }
 

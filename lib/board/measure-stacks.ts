@@ -1,6 +1,7 @@
+import { seamKey } from "@/lib/board/changes";
 import { currentSeams, unmeasuredSeams } from "@/lib/board/current-seams";
 import { framesOf } from "@/lib/board/look-up";
-import { type Measured, type MeasuredStack, stackState } from "@/lib/board/measured";
+import { type Measured, type MeasuredStack, seamStates, stackStates } from "@/lib/board/measured";
 import type { Board, BoardFrame, BoardSeam, BoardStack } from "@/lib/board/model";
 import { areBracketed, chainShifts, stackSharpness } from "@/lib/sorting/appraise-stack";
 import type { FrameDraft, Shift, StackDraft } from "@/lib/sorting/draft";
@@ -57,20 +58,18 @@ export async function measureStacks(input: MeasuringInput): Promise<Measured> {
     });
     drafts.set(stack.id, { ...draft, frames: measured });
   }
-  const missing = new Set(unmeasuredSeams(board).map(({ stackId, neighbourId }) => `${stackId} ${neighbourId}`));
-  const wanted = currentSeams(board).filter(({ stackId, neighbourId }) => {
-    return touched.has(stackId) || touched.has(neighbourId) || missing.has(`${stackId} ${neighbourId}`);
+  const missing = new Set(unmeasuredSeams(board).map(seamKey));
+  const wanted = currentSeams(board).filter((seam) => {
+    return touched.has(seam.stackId) || touched.has(seam.neighbourId) || missing.has(seamKey(seam));
   });
   const seams = await measureSeams(board, wanted, drafts, store);
   const positions = positionsOf(board, seams, touched);
+  const states = stackStates(board);
   return {
     stacks: [...drafts.values()]
       .filter(({ id }) => touched.has(id))
-      .map((draft) => toMeasured(board, draft, positions.get(draft.id))),
-    seams: seams.map(({ seam }) => ({
-      ...seam,
-      states: [seam.stackId, seam.neighbourId].map((id) => stackState(board, id)).join(" | "),
-    })),
+      .map((draft) => toMeasured(draft, states.get(draft.id) ?? "", positions.get(draft.id))),
+    seams: seams.map(({ seam }) => ({ ...seam, states: seamStates(seam, states) })),
   };
 }
 
@@ -211,10 +210,10 @@ function positionsOf(
   );
 }
 
-function toMeasured(board: Board, { id, frames, reference }: StackDraft, position: Shift | undefined): MeasuredStack {
+function toMeasured({ id, frames, reference }: StackDraft, state: string, position: Shift | undefined): MeasuredStack {
   return {
     id,
-    state: stackState(board, id),
+    state,
     frames: frames.map(({ frame, sharpness, shift }) => ({
       id: frame.id,
       relativeSharpness: sharpness.relative,

@@ -1,6 +1,6 @@
-import { currentSeams } from "@/lib/board/current-seams";
-import type { Change, FramePatch, StackPatch } from "@/lib/board/changes";
-import type { Board, BoardSeam } from "@/lib/board/model";
+import { type Change, type FramePatch, seamKey, type StackPatch } from "@/lib/board/changes";
+import { currentSeams, lyingSeamKey } from "@/lib/board/current-seams";
+import type { Board, BoardFrame, BoardSeam } from "@/lib/board/model";
 
 interface Point {
   readonly xPx: number;
@@ -10,7 +10,7 @@ interface Point {
 /** What was measured within one stack, and the state of it that this is true of. */
 export interface MeasuredStack {
   readonly id: string;
-  /** From `stackState`, of the board that was measured. */
+  /** From `stackStates`, of the board that was measured. */
   readonly state: string;
   readonly frames: readonly {
     readonly id: string;
@@ -31,12 +31,29 @@ export interface Measured {
 const SAME_PX = 0.5;
 const SAME_SHARE = 0.002;
 
-/** What measurements of a stack depend on: its frames, which of them are in use, and its reference. */
-export function stackState(board: Board, stackId: string): string {
-  const stack = board.stacks.find(({ id }) => id === stackId);
-  const frames = board.frames.filter((frame) => frame.stackId === stackId);
-  const inStack = frames.map(({ id, setAside }) => `${id}${setAside === null ? "" : " aside"}`).sort();
-  return stack ? `${stack.referenceId ?? "none"}: ${inStack.join(", ")}` : "gone";
+/**
+ * What measurements of a stack depend on: its frames, which of them are in use, and its reference.
+ * @returns of every stack of the board, by id; one that is not there has none
+ */
+export function stackStates(board: Pick<Board, "stacks" | "frames">): ReadonlyMap<string, string> {
+  const framesOf = new Map<string, string[]>(board.stacks.map(({ id }) => [id, []]));
+  for (const { id, stackId, setAside } of board.frames) {
+    if (stackId !== null) framesOf.get(stackId)?.push(`${id}${setAside === null ? "" : " aside"}`);
+  }
+  return new Map(
+    board.stacks.map(({ id, referenceId }) => {
+      const inStack = (framesOf.get(id) ?? []).sort();
+      return [id, `${referenceId ?? "none"}: ${inStack.join(", ")}`];
+    }),
+  );
+}
+
+/** What the measurement of a seam depends on: the states of both its stacks. */
+export function seamStates(
+  { stackId, neighbourId }: Pick<BoardSeam, "stackId" | "neighbourId">,
+  states: ReadonlyMap<string, string>,
+): string {
+  return [stackId, neighbourId].map((id) => states.get(id) ?? "gone").join(" | ");
 }
 
 /**
@@ -44,25 +61,26 @@ export function stackState(board: Board, stackId: string): string {
  * decide. Empty where everything is known already.
  */
 export function measuredChanges(board: Board, { stacks, seams }: Measured): Change[] {
-  const standing = stacks.filter(({ id, state }) => stackState(board, id) === state);
-  const neighbours = new Set(currentSeams(board).map(keyOf));
-  const known = new Map(board.seams.map((seam) => [keyOf(seam), seam]));
-  // A pair has one record: measured the other way round before, that goes.
-  const pairs = new Map(board.seams.map((seam) => [pairOf(seam), seam]));
+  const states = stackStates(board);
+  const standing = stacks.filter(({ id, state }) => states.get(id) === state);
+  const neighbours = new Set(currentSeams(board).map(lyingSeamKey));
+  const known = new Map(board.seams.map((seam) => [lyingSeamKey(seam), seam]));
+  // A pair has one record: what was measured while the two lay otherwise goes.
+  const pairs = new Map(board.seams.map((seam) => [seamKey(seam), seam]));
   const fresh = seams.filter((seam) => {
-    const states = [seam.stackId, seam.neighbourId].map((id) => stackState(board, id)).join(" | ");
-    return neighbours.has(keyOf(seam)) && states === seam.states && !isSameOverlap(known.get(keyOf(seam)), seam);
+    const isStanding = neighbours.has(lyingSeamKey(seam)) && seamStates(seam, states) === seam.states;
+    return isStanding && !isSameOverlap(known.get(lyingSeamKey(seam)), seam);
   });
+  const frames = new Map(board.frames.map((frame) => [frame.id, frame]));
   const after = fresh.map(({ states: _, ...seam }) => seam);
-  const before = after.flatMap((seam) => pairs.get(pairOf(seam)) ?? []);
+  const before = after.flatMap((seam) => pairs.get(seamKey(seam)) ?? []);
   return [
-    ...standing.flatMap((stack) => [...frameChanges(board, stack), ...stackChange(board, stack)]),
+    ...standing.flatMap((stack) => [...frameChanges(frames, stack), ...stackChange(board, stack)]),
     ...(after.length > 0 ? [{ on: "seams" as const, before, after }] : []),
   ];
 }
 
-function frameChanges(board: Board, { frames }: MeasuredStack): Change[] {
-  const present = new Map(board.frames.map((frame) => [frame.id, frame]));
+function frameChanges(present: ReadonlyMap<string, BoardFrame>, { frames }: MeasuredStack): Change[] {
   return frames.flatMap(({ id, relativeSharpness, shift }): Change[] => {
     const frame = present.get(id);
     if (!frame) return [];
@@ -98,12 +116,4 @@ function isSamePoint(a: Point | null, b: Point | null): boolean {
 
 function isNear(a: number | null, b: number | null, most: number): boolean {
   return a === null || b === null ? a === b : Math.abs(a - b) <= most;
-}
-
-function keyOf({ stackId, neighbourId, side }: BoardSeam): string {
-  return `${stackId} ${neighbourId} ${side}`;
-}
-
-function pairOf({ stackId, neighbourId }: BoardSeam): string {
-  return `${stackId} ${neighbourId}`;
 }

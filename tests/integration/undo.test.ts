@@ -5,7 +5,7 @@ import type { Board } from "@/lib/board/model";
 import { accessForJob } from "@/lib/auth/gate";
 import { applyChanges } from "@/lib/board/changes";
 import { storeMeasured } from "@/lib/board/measure-writes";
-import { stackState } from "@/lib/board/measured";
+import { stackStates } from "@/lib/board/measured";
 import { callsOn, type SentCommand } from "../support/board-calls";
 import { useDatabase } from "../support/database";
 import { makeEventfulBoard } from "../support/make-board";
@@ -47,7 +47,7 @@ async function measure(frameId: string, relativeSharpness: number): Promise<void
   const board = await calls.board();
   const id = board.frames.find((frame) => frame.id === frameId)?.stackId ?? "";
   const frames = [{ id: frameId, relativeSharpness, shift: null }];
-  const stack = { id, state: stackState(board, id), frames, spot: { x: 0.4, y: 0.55 } };
+  const stack = { id, state: stackStates(board).get(id) ?? "", frames, spot: { x: 0.4, y: 0.55 } };
   await storeMeasured(accessForJob({ projectId }), { stacks: [stack], seams: [] }, 0);
 }
 

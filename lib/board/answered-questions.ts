@@ -1,6 +1,6 @@
 import { applyChanges, type Change } from "@/lib/board/changes";
 import { framesOf, type Place } from "@/lib/board/look-up";
-import type { Board, BoardQuestion } from "@/lib/board/model";
+import type { Board, BoardFrame, BoardQuestion, BoardStack } from "@/lib/board/model";
 import { questionTile } from "@/lib/board/question-tile";
 import { placeOfName } from "@/lib/board/tile-name";
 import type { AnswerAction } from "@/lib/sorting/types";
@@ -19,12 +19,7 @@ import type { AnswerAction } from "@/lib/sorting/types";
 export function closeAnswered(board: Board, changes: readonly Change[]): Change[] {
   if (changes.length === 0 || board.questions.length === 0) return [];
   const after = applyChanges(board, changes);
-  const doing: Doing = {
-    before: board,
-    after,
-    ...namedIn(changes),
-    stackIds: new Set(after.stacks.map(({ id }) => id)),
-  };
+  const doing: Doing = { before: lookedUp(board), after: lookedUp(after), ...namedIn(changes) };
   return after.questions
     .filter((question) => isAnswered(question, doing))
     .map((question) => ({
@@ -36,11 +31,24 @@ export function closeAnswered(board: Board, changes: readonly Change[]): Change[
     }));
 }
 
+/** Hundreds of questions are asked of it for every command. */
+interface LookedUp {
+  readonly board: Board;
+  readonly frames: ReadonlyMap<string, BoardFrame>;
+  readonly stacks: ReadonlyMap<string, BoardStack>;
+}
+
+function lookedUp(board: Board): LookedUp {
+  return {
+    board,
+    frames: new Map(board.frames.map((frame) => [frame.id, frame])),
+    stacks: new Map(board.stacks.map((stack) => [stack.id, stack])),
+  };
+}
+
 interface Doing {
-  readonly before: Board;
-  readonly after: Board;
-  /** Ids of the stacks after. */
-  readonly stackIds: ReadonlySet<string>;
+  readonly before: LookedUp;
+  readonly after: LookedUp;
   /** Moved, set aside or brought back. */
   readonly decidedFrames: ReadonlySet<string>;
   /** Put at another place, or made there. */
@@ -65,7 +73,7 @@ function placeOf({ row = null, column = null }: { row?: number | null; column?: 
 
 function isAnswered(question: BoardQuestion, doing: Doing): boolean {
   const { frameIds, stackIds, answers } = question;
-  if (stackIds.some((id) => !doing.stackIds.has(id))) return true;
+  if (stackIds.some((id) => !doing.after.stacks.has(id))) return true;
   if (frameIds.length > 0 && frameIds.every((id) => doing.decidedFrames.has(id))) return true;
   if (answers.some(({ action }) => isDone(doing.after, action) && !isDone(doing.before, action))) return true;
   return isWithoutMeaning(question, doing);
@@ -75,13 +83,16 @@ function isWithoutMeaning(question: BoardQuestion, { before, after, placed }: Do
   const { kind, stackIds } = question;
   switch (kind) {
     case "hole": {
-      const tile = questionTile(question, new Map(before.stacks.map((stack) => [stack.id, stack])));
+      const tile = questionTile(question, before.stacks);
       const hole = tile === null ? null : placeOfName(tile);
       return [...placed.values()].some((at) => at && at.row === hole?.row && at.column === hole.column);
     }
     case "few-frames": {
-      const { least } = after.grid.framesPerTile;
-      return stackIds.every((id) => inUse(after, id) >= least) && stackIds.some((id) => inUse(before, id) < least);
+      const { least } = after.board.grid.framesPerTile;
+      return (
+        stackIds.every((id) => inUse(after.board, id) >= least) &&
+        stackIds.some((id) => inUse(before.board, id) < least)
+      );
     }
     case "thin-seam":
     case "retake":
@@ -96,11 +107,9 @@ function inUse(board: Board, stackId: string): number {
 }
 
 /** Whether the board is as this answer would make it. Keeping is never done by the way: it must be said. */
-function isDone(board: Board, action: AnswerAction): boolean {
-  const all = (ids: readonly string[], holds: (frame: Board["frames"][number]) => boolean) => {
-    const asked = new Set(ids);
-    return board.frames.every((frame) => !asked.has(frame.id) || holds(frame));
-  };
+function isDone({ frames, stacks }: LookedUp, action: AnswerAction): boolean {
+  const all = (ids: readonly string[], holds: (frame: BoardFrame) => boolean) =>
+    ids.flatMap((id) => frames.get(id) ?? []).every(holds);
   switch (action.type) {
     case "keep":
       return false;
@@ -111,16 +120,16 @@ function isDone(board: Board, action: AnswerAction): boolean {
     case "bring-back":
       return all(action.frameIds, ({ setAside }) => setAside === null);
     case "choose-take":
-      return board.stacks.some(({ id, isChosenTake }) => id === action.stackId && isChosenTake);
+      return stacks.get(action.stackId)?.isChosenTake === true;
     case "merge-stacks":
-      return board.stacks.filter(({ id }) => action.stackIds.includes(id)).length < 2;
+      return action.stackIds.filter((id) => stacks.has(id)).length < 2;
     case "split-stack":
       return all([action.atFrameId], ({ stackId }) => stackId !== action.stackId);
     case "new-stack": {
-      const held = new Set(board.frames.flatMap(({ id, stackId }) => (action.frameIds.includes(id) ? [stackId] : [])));
+      const held = new Set(action.frameIds.flatMap((id) => frames.get(id) ?? []).map(({ stackId }) => stackId));
       return held.size === 1 && !held.has(null);
     }
     case "take-out":
-      return board.stacks.every(({ id, row }) => !action.stackIds.includes(id) || row === null);
+      return action.stackIds.flatMap((id) => stacks.get(id) ?? []).every(({ row }) => row === null);
   }
 }

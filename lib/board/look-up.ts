@@ -29,6 +29,12 @@ export function frameOf(board: Board, id: string): BoardFrame {
   return frame;
 }
 
+/** @throws ChangeConflict where one of them is not there */
+export function framesNamed(board: Board, ids: readonly string[]): BoardFrame[] {
+  const byId = new Map(board.frames.map((frame) => [frame.id, frame]));
+  return ids.map((id) => byId.get(id) ?? frameOf(board, id));
+}
+
 export function stackOf(board: Board, id: string): BoardStack {
   const stack = board.stacks.find((each) => each.id === id);
   if (!stack) throw new ChangeConflict("This stack is no longer there.", id);

@@ -1,7 +1,7 @@
 import { closeAnswered } from "@/lib/board/answered-questions";
 import { ChangeConflict, type Change } from "@/lib/board/changes";
 import type { CommandOf, PlannedCommand } from "@/lib/board/command-schema";
-import { frameOf, framesOf, stackOf } from "@/lib/board/look-up";
+import { framesNamed, framesOf, stackOf } from "@/lib/board/look-up";
 import type { Board } from "@/lib/board/model";
 import {
   moveTo,
@@ -85,11 +85,7 @@ function planAction(board: Board, action: AnswerAction, newStackId: string | und
       return [];
     case "move-frames":
       if (action.toStackId !== null) stackOf(board, action.toStackId);
-      return moveTo(
-        board,
-        action.frameIds.map((id) => frameOf(board, id)),
-        action.toStackId,
-      );
+      return moveTo(board, framesNamed(board, action.frameIds), action.toStackId);
     case "set-aside":
       return planSetAside(board, action.frameIds, action.reason, undefined);
     case "bring-back":
@@ -109,7 +105,7 @@ function planAction(board: Board, action: AnswerAction, newStackId: string | und
     case "take-out":
       return planTakeOut(board, action.stackIds);
     case "new-stack": {
-      const frames = action.frameIds.map((id) => frameOf(board, id));
+      const frames = framesNamed(board, action.frameIds);
       return moveToNew(board, frames, requireId(newStackId, action.frameIds), null);
     }
     case "split-stack": {

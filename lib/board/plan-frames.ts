@@ -3,6 +3,7 @@ import type { CommandOf } from "@/lib/board/command-schema";
 import {
   freeTake,
   frameOf,
+  framesNamed,
   framesOf,
   othersAt,
   sharpestInUse,
@@ -15,7 +16,7 @@ import { growTo } from "@/lib/board/plan-places";
 import type { SetAsideReason } from "@/lib/sorting/types";
 
 export function planMove(board: Board, { frameIds, to, expect }: CommandOf<"move-frames">): Change[] {
-  const frames = frameIds.map((id) => frameOf(board, id));
+  const frames = framesNamed(board, frameIds);
   expectPlaces(frames, expect);
   if (to.kind === "loose") return moveTo(board, frames, null);
   if (to.kind === "stack") return moveTo(board, frames, stackOf(board, to.stackId).id);
@@ -134,7 +135,7 @@ export function planSetAside(
   setAside: SetAsideReason | null,
   expect: Readonly<Record<string, SetAsideReason | null>> | undefined,
 ): Change[] {
-  const frames = frameIds.map((id) => frameOf(board, id));
+  const frames = framesNamed(board, frameIds);
   for (const frame of frames) {
     const seen = expect?.[frame.id];
     if (seen !== undefined && seen !== frame.setAside) {

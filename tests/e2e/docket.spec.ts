@@ -2,6 +2,7 @@ import { readFile } from "node:fs/promises";
 import path from "node:path";
 import { expect, test, type APIRequestContext, type Page } from "@playwright/test";
 import type { Board, BoardQuestion } from "@/lib/board/model";
+import { withPresentNames } from "@/lib/board/present-names";
 import { boardSchema } from "@/lib/board/schema";
 import { findSerious } from "./support/axe";
 import { getManifest } from "./support/manifest";
@@ -43,7 +44,7 @@ test("the docket of a shoot is worked to zero by keyboard only, and a new sortin
   await watchAnswers(page);
   const given: BoardQuestion[] = [];
   while (await page.getByRole("group", { name: /^Question \d+ of/ }).isVisible()) {
-    const question = await shownQuestion(page, before);
+    const question = await shownQuestion(page, projectId);
     given.push(question);
     await tabTo(page, new RegExp(`^${escape(labelOf(question))}$`));
     await page.keyboard.press("Enter");
@@ -116,13 +117,19 @@ async function tabTo(page: Page, name: RegExp): Promise<void> {
   throw new Error(`Tab does not lead to ${name}`);
 }
 
-async function shownQuestion(page: Page, board: Board): Promise<BoardQuestion> {
+/** In the words of the board as the server has it: earlier answers may have moved the stacks that it names. */
+async function shownQuestion(page: Page, projectId: string): Promise<BoardQuestion> {
   const message = await page
     .getByRole("region", { name: /open question/ })
     .getByRole("heading")
     .textContent();
-  const question = board.questions.find((candidate) => candidate.message === message);
-  if (!question) throw new Error(`the docket asks what the board does not: ${message}`);
+  let question: BoardQuestion | undefined;
+  await expect(async () => {
+    const { questions } = await getBoard(page.request, projectId);
+    question = questions.find((candidate) => candidate.message === message);
+    expect(question, `the docket asks what the board does not: ${message}`).toBeDefined();
+  }).toPass({ timeout: 10_000 });
+  if (!question) throw new Error("toPass has found it");
   return question;
 }
 
@@ -162,7 +169,7 @@ function expectAnswered(given: readonly BoardQuestion[], before: Board, now: Boa
 async function getBoard(request: APIRequestContext, projectId: string): Promise<Board> {
   const answer = await request.get(`/api/projects/${projectId}/board`);
   expect(answer.status()).toBe(200);
-  return boardSchema.parse(await answer.json());
+  return withPresentNames(boardSchema.parse(await answer.json()));
 }
 
 async function send(

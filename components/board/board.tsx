@@ -15,6 +15,7 @@ import { useLiveBoard } from "@/components/board/use-live-board";
 import { SaveState } from "@/components/together/save-state";
 import { Together } from "@/components/together/together";
 import { useBoardWork } from "@/components/together/use-board-work";
+import { useOnline } from "@/components/ui/use-online";
 import { indexBoard } from "@/lib/board/board-index";
 
 interface BoardProps {
@@ -35,7 +36,7 @@ export function Board({ projectId, userId, canEdit }: BoardProps) {
   const index = useMemo(() => (board ? indexBoard(board) : null), [board]);
   const place = useBoardPlace();
   const isWide = useMedia(WIDE);
-  const [topPx, setTopPx] = useState(0);
+  const isOnline = useOnline();
 
   if (!index || !progress) {
     return error ? (
@@ -52,17 +53,13 @@ export function Board({ projectId, userId, canEdit }: BoardProps) {
   }
   return (
     <Together {...{ projectId, userId, work }} chosen={place.chosen} board={index.board}>
-      <div
-        ref={(element) => setTopPx(element ? element.getBoundingClientRect().top + window.scrollY : 0)}
-        // The sheet fills the window below header and ticket, so that rail and grid scroll on their own.
-        style={isWide ? { height: `max(34rem, calc(100dvh - ${topPx}px))` } : undefined}
-        className="flex flex-col"
-      >
+      {/* The sheet fills what header, ticket and notices leave of the window; rail and grid scroll on their own. */}
+      <div className={isWide ? "flex min-h-136 shrink-0 grow basis-0 flex-col" : "flex flex-col"}>
         <BoardNews
           projectId={projectId}
           progress={progress}
           sortError={sortError}
-          isStale={error !== null}
+          isStale={error !== null && isOnline}
           onRetry={retry}
         />
         <Sheet

@@ -8,6 +8,7 @@ import { ticketLines, type TicketLine } from "@/components/shell/ticket-lines";
 import { TicketProblem } from "@/components/shell/ticket-problem";
 import { TicketWords } from "@/components/shell/ticket-words";
 import { classNames } from "@/components/ui/class-names";
+import { useOnline } from "@/components/ui/use-online";
 import { useProjectEvents } from "@/lib/events/use-project-events";
 import { progressQuery } from "@/lib/frames/queries";
 import type { Progress } from "@/lib/frames/schema";
@@ -36,6 +37,8 @@ const IDLE_POLL_MS = 30_000;
 export function JobTicket({ projectId, progress, status }: JobTicketProps) {
   const pathname = usePathname();
   const { lines, problem } = useTicketLines({ projectId, progress, status });
+  // Without a connection a strip of its own says so.
+  const isOnline = useOnline();
   useProjectEvents(projectId);
   return (
     <>
@@ -53,7 +56,7 @@ export function JobTicket({ projectId, progress, status }: JobTicketProps) {
           })}
         </ol>
       </nav>
-      {problem && <TicketProblem problem={problem} path={pathname} />}
+      {problem && isOnline && <TicketProblem problem={problem} path={pathname} />}
     </>
   );
 }

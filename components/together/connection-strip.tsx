@@ -7,6 +7,7 @@ import { useEffect, useSyncExternalStore, type ReactNode } from "react";
 import type { QueueState } from "@/components/together/command-queue";
 import { queueOf } from "@/components/together/queue-of";
 import { countWaiting } from "@/components/together/save-state";
+import { useOnline } from "@/components/ui/use-online";
 
 interface ConnectionStripProps {
   readonly projectId: string;
@@ -22,11 +23,7 @@ interface ConnectionStripProps {
 export function ConnectionStrip({ projectId, userId, canEdit }: ConnectionStripProps) {
   const queue = queueOf(useQueryClient(), userId, projectId);
   const state = useSyncExternalStore(queue.subscribe, queue.getState, queue.getState);
-  const isOnline = useSyncExternalStore(
-    subscribeToConnection,
-    () => navigator.onLine,
-    () => true,
-  );
+  const isOnline = useOnline();
   useEffect(() => {
     if (canEdit) queue.resume();
     window.addEventListener("online", queue.tryNow);
@@ -95,15 +92,6 @@ function stripText({ waiting, isOnline, queue, canEdit }: StripInput): string | 
   return canEdit
     ? "No connection. This is the board as it was; what you change waits on this computer and is sent when it is back."
     : "No connection. This is the board as it was.";
-}
-
-function subscribeToConnection(tell: () => void): () => void {
-  window.addEventListener("online", tell);
-  window.addEventListener("offline", tell);
-  return () => {
-    window.removeEventListener("online", tell);
-    window.removeEventListener("offline", tell);
-  };
 }
 
 /** What waits is kept, but it is sent only while a page is open: whoever closes it should know. */

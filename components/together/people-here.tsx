@@ -1,6 +1,7 @@
 "use client";
 
 import { useQuery } from "@tanstack/react-query";
+import { useOnline } from "@/components/ui/use-online";
 import { presenceQuery } from "@/lib/presence/queries";
 
 /** As many names as fit beside the project's. */
@@ -9,7 +10,8 @@ const NAMES_MOST = 3;
 /** At the page's head: who else has the board open. */
 export function PeopleHere({ projectId, userId }: { readonly projectId: string; readonly userId: string }) {
   const { data } = useQuery(presenceQuery(projectId));
-  const others = (data?.people ?? []).filter((person) => person.userId !== userId);
+  // Without a connection nobody knows who is here.
+  const others = (useOnline() ? (data?.people ?? []) : []).filter((person) => person.userId !== userId);
   return (
     <p role="status" className="text-sm text-quiet">
       {hereText(others.map(({ name }) => name))}

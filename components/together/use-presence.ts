@@ -2,6 +2,7 @@
 
 import { useQuery, useQueryClient } from "@tanstack/react-query";
 import { useEffect, useMemo } from "react";
+import { useOnline } from "@/components/ui/use-online";
 import { presenceQuery, sendPresence } from "@/lib/presence/queries";
 
 /** A third of what the server takes for silence (45 s), ms: two words may be lost. */
@@ -32,11 +33,13 @@ export function usePresence(projectId: string, tile: string | null): void {
 /** Who else has which tile open, by the tile's name. */
 export function usePeopleOnTiles(projectId: string, userId: string): ReadonlyMap<string, readonly string[]> {
   const { data } = useQuery(presenceQuery(projectId));
+  const isOnline = useOnline();
   return useMemo(() => {
     const names = new Map<string, string[]>();
+    if (!isOnline) return names;
     for (const { userId: other, name, tile } of data?.people ?? []) {
       if (other !== userId && tile !== null) names.set(tile, [...(names.get(tile) ?? []), name]);
     }
     return names;
-  }, [data, userId]);
+  }, [data, isOnline, userId]);
 }

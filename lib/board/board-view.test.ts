@@ -51,7 +51,7 @@ test("the status line says what the board holds", () => {
     "5 frames set aside",
     "4 loose frames",
     "smallest overlap 18 %",
-    "3 to 6 frames a tile",
+    "fewest frames 3 (C1), wanted 4 to 8",
   ]);
 });
 
@@ -71,7 +71,7 @@ test("the bench's head gives settings, brightness and the noise of the mean", ()
     "6 of 6 in use",
     "1/250 s f/8 ISO 100 105 mm",
     expect.stringMatching(/^brightness varies 0\.0\d EV$/),
-    "noise down to 41 %",
+    "noise 41 % of one frame's",
   ]);
 });
 

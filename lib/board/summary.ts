@@ -12,7 +12,6 @@ export function boardStatus(index: BoardIndex): string[] {
   const setAside = board.frames.filter(isSetAside).length;
   const overlaps = index.seams.flatMap((seam) => (seam.overlap === null ? [] : [seam.overlap]));
   const settled = [...tiles.values()].filter(({ stack }) => stack.isSettled).length;
-  const sizes = [...tiles.values()].map((tile) => tile.inUse);
   return [
     `${groupDigits(tiles.size)} of ${countOf(tiles.size + holes.size, "tile")}`,
     ...(settled > 0 ? [`${groupDigits(settled)} settled`] : []),
@@ -20,7 +19,7 @@ export function boardStatus(index: BoardIndex): string[] {
     `${countOf(setAside, "frame")} set aside`,
     countOf(loose.length, "loose frame"),
     ...(overlaps.length > 0 ? [`smallest overlap ${percent(Math.min(...overlaps))}`] : []),
-    ...(sizes.length > 0 ? [`${rangeText(Math.min(...sizes), Math.max(...sizes))} a tile`] : []),
+    ...fewestText(index),
   ];
 }
 
@@ -32,7 +31,7 @@ export function stackFacts(tile: BoardTile, frames: readonly BoardFrame[]): stri
     `${inUse.length} of ${frames.length} in use`,
     ...settingsText(tile.reference ?? frames[0] ?? null),
     ...(spread === null ? [] : [`brightness varies ${spread.toFixed(2)} EV`]),
-    ...(inUse.length === 0 ? [] : [`noise down to ${percent(expectedNoise(inUse.length, "mean"))}`]),
+    ...(inUse.length === 0 ? [] : [`noise ${percent(expectedNoise(inUse.length, "mean"))} of one frame's`]),
   ];
 }
 
@@ -81,6 +80,13 @@ export function tileLabel(tile: BoardTile): string {
   ].join(", ");
 }
 
-function rangeText(least: number, most: number): string {
-  return least === most ? countOf(least, "frame") : `${least} to ${countOf(most, "frame")}`;
+/** "fewest frames 3 (C2), wanted 4 to 12"; nothing where every tile has enough. */
+function fewestText({ board, tiles }: BoardIndex): string[] {
+  const few = [...tiles.values()].filter((tile) => tile.isFew);
+  const fewest = Math.min(...few.map((tile) => tile.inUse));
+  const at = few.filter((tile) => tile.inUse === fewest).map((tile) => tile.name);
+  if (at.length === 0) return [];
+  const { least, most } = board.grid.framesPerTile;
+  const where = at.length > 2 ? `${at[0]} and ${at.length - 1} more` : at.join(", ");
+  return [`fewest frames ${fewest} (${where}), wanted ${least === most ? least : `${least} to ${most}`}`];
 }

@@ -17,6 +17,8 @@ const SERVER_ONLY = {
   group: [
     "@/lib/**/reads",
     "@/lib/**/writes",
+    "@/lib/**/*-reads",
+    "@/lib/**/*-writes",
     "@/lib/auth/gate",
     "@/lib/auth/session",
     "@/lib/env",
@@ -40,6 +42,8 @@ const IMPURE = {
     "node:*",
     "@/lib/**/reads",
     "@/lib/**/writes",
+    "@/lib/**/*-reads",
+    "@/lib/**/*-writes",
     "@/lib/auth/gate",
     "@/lib/auth/session",
     "@/lib/env",

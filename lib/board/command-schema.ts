@@ -3,8 +3,8 @@ import { SET_ASIDE_REASONS } from "@/lib/sorting/types";
 
 /** As many frames as one command may name: more than the largest shoots have. */
 const FRAMES_MOST = 10_000;
-/** As many lines as a grid may have. */
-const LINES_MOST = 1_000;
+/** As many rows or columns as a grid may have. */
+export const LINES_MOST = 1_000;
 
 const id = z.string().regex(/^[A-Za-z0-9_-]{1,64}$/, "not an identifier");
 const ids = z.array(id).min(1).max(FRAMES_MOST);

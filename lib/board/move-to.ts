@@ -1,9 +1,7 @@
 import type { BoardIndex } from "@/lib/board/board-index";
+import { LINES_MOST } from "@/lib/board/command-schema";
 import { targetOfName, type Moving, type Target } from "@/lib/board/moving";
 import { placeOfName, rowLetters } from "@/lib/board/tile-name";
-
-/** As many rows or columns as a command may name. */
-const LINES_MOST = 1_000;
 
 export type MoveTo = { readonly target: Target } | { readonly problem: string | null };
 

@@ -8,7 +8,7 @@ import type { ProjectAccess } from "@/lib/auth/gate";
 import type { recordSchema, UndoState } from "@/lib/board/command-answers";
 import type { RecordQuery } from "@/lib/board/record-schema";
 import { type RecordedStep, undoneSteps, undoStacksOf } from "@/lib/board/standing";
-import { listUndoing } from "@/lib/board/undo-reads";
+import { listUndoing, undoesAfter } from "@/lib/board/undo-reads";
 import { userIdSchema, type UserId } from "@/lib/ids";
 
 const ENTRIES_A_PAGE = 100;
@@ -80,7 +80,7 @@ export async function getUndoState({ projectId, userId }: ProjectAccess): Promis
       userId: changes.userId,
       sentence: changes.sentence,
       undoes: changes.undoes,
-      undoesAfter: sql<number | null>`json_extract(${changes.payload}, '$.toRevision')`,
+      undoesAfter,
       isEmpty: sql<number>`${changes.steps} = '[]'`,
     })
     .from(changes)

@@ -3,12 +3,10 @@ import { and, eq, inArray, sql } from "drizzle-orm";
 import type { Transaction } from "@/db/client";
 import { questions } from "@/db/schema/board";
 import { frames, stacks } from "@/db/schema/frames";
+import { parts } from "@/db/statement-parts";
 import { ChangeConflict } from "@/lib/board/changes";
 import type { Board, BoardFrame, BoardQuestion, BoardStack } from "@/lib/board/model";
 import { frameIdSchema, stackIdSchema, type ProjectId, type UserId } from "@/lib/ids";
-
-/** Rows of one statement: SQLite takes 32 766 values a statement, and a stack has 17. */
-const ROWS_A_STATEMENT = 500;
 
 export interface Settling {
   readonly projectId: ProjectId;
@@ -182,9 +180,4 @@ async function openQuestion(tx: Transaction, projectId: ProjectId, question: Boa
   // By its key: a later sorting may have asked the same under another id.
   await tx.delete(questions).where(and(eq(questions.projectId, projectId), eq(questions.key, question.key)));
   await tx.insert(questions).values({ projectId, ...question });
-}
-
-function parts<Row>(rows: readonly Row[]): Row[][] {
-  const count = Math.ceil(rows.length / ROWS_A_STATEMENT);
-  return Array.from({ length: count }, (_, i) => rows.slice(i * ROWS_A_STATEMENT, (i + 1) * ROWS_A_STATEMENT));
 }

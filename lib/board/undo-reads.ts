@@ -95,9 +95,11 @@ export async function planUndoBackTo(
   };
 }
 
+/** The revision that a step goes back to; null: it takes back one step, or none. */
+export const undoesAfter = sql<number | null>`json_extract(${changes.payload}, '$.toRevision')`;
+
 /** The steps of a project that take others back, oldest first. */
 export async function listUndoing(db: Pick<Database, "select">, projectId: ProjectId) {
-  const undoesAfter = sql<number | null>`json_extract(${changes.payload}, '$.toRevision')`;
   return db
     .select({ id: changes.id, revision: changes.revision, undoes: changes.undoes, undoesAfter })
     .from(changes)

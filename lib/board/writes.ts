@@ -4,6 +4,7 @@ import { type Transaction, writeTransaction } from "@/db/client";
 import { changes, questions, seams } from "@/db/schema/board";
 import { frames, stacks } from "@/db/schema/frames";
 import { projects } from "@/db/schema/projects";
+import { parts } from "@/db/statement-parts";
 import type { ProjectAccess } from "@/lib/auth/gate";
 import type { Change } from "@/lib/board/changes";
 import { stepsOfSorting } from "@/lib/board/diff-boards";
@@ -15,9 +16,6 @@ import { countOf } from "@/lib/board/words";
 import { publish } from "@/lib/events/publish";
 import { frameIdSchema, newId, type ProjectId, stackIdSchema, type UserId } from "@/lib/ids";
 import type { Proposal, ProposedFrame, ProposedQuestion, ProposedStack } from "@/lib/sorting/types";
-
-/** Rows of one insert: SQLite takes 32 766 values a statement, and a stack has 16. */
-const ROWS_A_STATEMENT = 500;
 
 /**
  * Makes a proposal the project's board: one revision, one change by the computation, all or nothing.
@@ -230,9 +228,4 @@ async function recordSorting(tx: Transaction, projectId: ProjectId, sorting: Sor
   const sentence = isAnew ? `sorted ${result} anew; what people decided stayed` : `sorted ${result}`;
   const payload = { engineVersion: proposal.engineVersion, isAnew, ...counts };
   await tx.insert(changes).values({ id: newId(), projectId, userId: null, type: "sort", payload, sentence, ...change });
-}
-
-function parts<Row>(rows: readonly Row[]): Row[][] {
-  const count = Math.ceil(rows.length / ROWS_A_STATEMENT);
-  return Array.from({ length: count }, (_, i) => rows.slice(i * ROWS_A_STATEMENT, (i + 1) * ROWS_A_STATEMENT));
 }

@@ -1,7 +1,7 @@
 import type { z } from "zod";
 import { AppError } from "@/lib/errors/app-error";
 
-/** Largest JSON body that is read: the longest command (6 000 frame ids of 36 characters) is a quarter of it. */
+/** Largest JSON body that is read: the longest command (6 000 frames of 36 characters, and where each was) is three quarters. */
 const MAX_BODY_BYTES = 1024 * 1024;
 
 /**

@@ -1,4 +1,4 @@
-import type { GivenCommand, KeptCommands } from "@/components/together/kept-commands";
+import type { GivenCommand, KeptCommand, KeptCommands } from "@/components/together/kept-commands";
 import { conflictSchema, type CommandAnswer, type Conflict } from "@/lib/board/command-answers";
 import type { BoardCommand } from "@/lib/board/command-schema";
 import type { WaitingCommand } from "@/lib/board/show-waiting";
@@ -69,12 +69,17 @@ export class CommandQueue {
 
   readonly getState = (): QueueState => this.state;
 
-  /** Commands that an earlier page left behind. */
+  /** Commands that an earlier page left behind. What was refused there is told here, not sent again. */
   resume(): void {
     const known = new Set(this.state.commands.map(({ command }) => command.id));
+    for (const { given } of this.state.refusals) known.add(given.command.id);
     const left = this.parts.kept.list().filter(({ command }) => !known.has(command.id));
     if (left.length === 0) return;
-    this.change({ commands: [...left.map(unanswered), ...this.state.commands] });
+    const waiting = left.filter(({ refused }) => refused === undefined);
+    this.change({
+      commands: [...waiting.map(unanswered), ...this.state.commands],
+      refusals: [...left.flatMap(refusalOf), ...this.state.refusals],
+    });
     void this.sendAll();
   }
 
@@ -167,9 +172,11 @@ export class CommandQueue {
 
   private refuse(queued: QueuedCommand, error: unknown): void {
     const { revision: _revision, changes: _changes, ...given } = queued;
+    const refused = explain(error);
+    this.parts.kept.keep({ ...given, refused });
     const refusal: Refusal = {
       given,
-      ...explain(error),
+      ...refused,
       follows: this.state.refusals.find((earlier) => restsOn(given, earlier.given))?.given ?? null,
     };
     this.change({
@@ -190,6 +197,10 @@ export class CommandQueue {
     });
     this.wake = null;
   }
+}
+
+function refusalOf({ refused, ...given }: KeptCommand): Refusal[] {
+  return refused ? [{ given, ...refused, follows: null }] : [];
 }
 
 function unanswered(given: GivenCommand): QueuedCommand {

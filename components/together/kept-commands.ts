@@ -1,5 +1,16 @@
 import { z } from "zod";
+import { conflictSchema } from "@/lib/board/command-answers";
 import { boardCommandSchema } from "@/lib/board/command-schema";
+
+/** Why the server did not do a command. */
+const refusedSchema = z.object({
+  /** The server's words. */
+  detail: z.string(),
+  /** Where something else is there now than the person saw. */
+  conflict: conflictSchema.nullable(),
+  /** The server failed or did not take it in: the same may be tried again. */
+  isRepeatable: z.boolean(),
+});
 
 /** A command with the words that explain it later, when the board has moved on. */
 const givenCommandSchema = z.object({
@@ -11,6 +22,10 @@ const givenCommandSchema = z.object({
   givenAtMs: z.number(),
 });
 export type GivenCommand = z.infer<typeof givenCommandSchema>;
+
+/** A refused one is kept until its person has read why; it is never sent again by itself. */
+const keptCommandSchema = givenCommandSchema.extend({ refused: refusedSchema.optional() });
+export type KeptCommand = z.infer<typeof keptCommandSchema>;
 
 /** Where commands outlive the page: one entry each, so that two pages of one browser do not overwrite each other. */
 export class KeptCommands {
@@ -26,7 +41,7 @@ export class KeptCommands {
   private readonly prefix: string;
 
   /** @returns false where the browser keeps nothing (full, or forbidden): then only this page knows the command */
-  keep(given: GivenCommand): boolean {
+  keep(given: KeptCommand): boolean {
     try {
       this.storage?.setItem(this.prefix + given.command.id, JSON.stringify(given));
       return this.storage !== null;
@@ -44,7 +59,7 @@ export class KeptCommands {
   }
 
   /** In the order given. What cannot be read is left where it is: a newer version of the program may have written it. */
-  list(): GivenCommand[] {
+  list(): KeptCommand[] {
     try {
       const keys = Array.from({ length: this.storage?.length ?? 0 }, (_, at) => this.storage?.key(at) ?? "");
       return keys
@@ -57,9 +72,9 @@ export class KeptCommands {
   }
 }
 
-function parse(text: string): GivenCommand[] {
+function parse(text: string): KeptCommand[] {
   try {
-    const given = givenCommandSchema.safeParse(JSON.parse(text));
+    const given = keptCommandSchema.safeParse(JSON.parse(text));
     return given.success ? [given.data] : [];
   } catch {
     return [];

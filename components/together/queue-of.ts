@@ -20,7 +20,7 @@ export function queueOf(client: QueryClient, userId: string, projectId: string):
 
 function makeQueue(client: QueryClient, userId: string, projectId: string): CommandQueue {
   const queue: CommandQueue = new CommandQueue({
-    send: (command) => sendCommand(projectId, command),
+    send: (command) => sendCommand(projectId, command, userId),
     kept: new KeptCommands(browserStorage(), userId, projectId),
     now: () => Date.now(),
     onAnswer(answer) {

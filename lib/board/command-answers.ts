@@ -2,6 +2,12 @@ import { z } from "zod";
 import { changeSchema } from "@/lib/board/change-schema";
 import { boardSchema, frameSchema, stackSchema } from "@/lib/board/schema";
 
+/**
+ * Optional header of `POST /api/projects/{id}/commands`: id of the person who gave the command. A browser that kept it
+ * over a change of account must not have it done in the next person's name.
+ */
+export const GIVEN_BY_HEADER = "stackyard-given-by";
+
 /** `POST /api/projects/{id}/commands`, 200: recorded. The same id again answers the same. */
 export const commandAnswerSchema = z.object({
   id: z.string(),

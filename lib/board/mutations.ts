@@ -1,5 +1,5 @@
 import { z } from "zod";
-import { commandAnswerSchema, type CommandAnswer } from "@/lib/board/command-answers";
+import { commandAnswerSchema, GIVEN_BY_HEADER, type CommandAnswer } from "@/lib/board/command-answers";
 import type { BoardCommand } from "@/lib/board/command-schema";
 import { fetchJson } from "@/lib/http/fetch-json";
 
@@ -15,9 +15,15 @@ function post(body: unknown): RequestInit {
   };
 }
 
-/** Sends one command. The same id again is applied once and answered the same. @throws FetchProblem */
-export function sendCommand(projectId: string, command: BoardCommand): Promise<CommandAnswer> {
-  return fetchJson(`/api/projects/${projectId}/commands`, commandAnswerSchema, post(command));
+/**
+ * Sends one command. The same id again is applied once and answered the same.
+ * @param givenBy - whose command it is, where it has waited: where somebody else is signed in by now, it is not done in their name (401)
+ * @throws FetchProblem
+ */
+export function sendCommand(projectId: string, command: BoardCommand, givenBy?: string): Promise<CommandAnswer> {
+  const init = post(command);
+  const headers = { ...init.headers, ...(givenBy === undefined ? {} : { [GIVEN_BY_HEADER]: givenBy }) };
+  return fetchJson(`/api/projects/${projectId}/commands`, commandAnswerSchema, { ...init, headers });
 }
 
 /** Asks the worker to sort anew what nobody decided. @throws FetchProblem */

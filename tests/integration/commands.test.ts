@@ -5,7 +5,7 @@ import { POST } from "@/app/api/projects/[projectId]/commands/route";
 import { database, writeTransaction } from "@/db/client";
 import { changes, events } from "@/db/schema/board";
 import { projects } from "@/db/schema/projects";
-import { conflictSchema } from "@/lib/board/command-answers";
+import { conflictSchema, GIVEN_BY_HEADER } from "@/lib/board/command-answers";
 import type { CommandDraft } from "@/lib/board/command-schema";
 import type { ProjectId } from "@/lib/ids";
 import { callsOn } from "../support/board-calls";
@@ -70,6 +70,22 @@ describe("a command", () => {
     await done({ type: "set-aside", frameIds: ["frame-1"] });
     expect(await done({ ...MOVE, id })).toEqual(first);
     expect(await record()).toHaveLength(2);
+  });
+
+  test("that a browser kept is not done in the name of whoever has signed in there since", async () => {
+    const send = (givenBy: string) =>
+      POST(
+        new Request("http://127.0.0.1:3000/commands", {
+          method: "POST",
+          headers: { "content-type": "application/json", [GIVEN_BY_HEADER]: givenBy },
+          body: JSON.stringify({ ...MOVE, id: newUuid(), revision: 0 }),
+        }),
+        { params: Promise.resolve({ projectId }) },
+      );
+    await signInAs(jonas);
+    expect((await send(lena.id)).status).toBe(401);
+    expect(await record()).toEqual([]);
+    expect((await send(jonas.id)).status).toBe(200);
   });
 
   test("may not take the id of another person's, another project's or another command", async () => {

@@ -197,16 +197,24 @@ test("what is settled is not asked again, and a doubt that is gone is no longer 
   expect(await database().select({ id: questions.id }).from(questions)).toEqual([]);
 });
 
-test("a file that comes in while it sorts makes it sort again; nothing half is stored", async () => {
+test("what comes in while it sorts makes it sort again, with what it measured; nothing half is stored", async () => {
   await bringIn("a.jpg");
+  const seen: number[] = [];
+  const revisions: number[] = [];
   const { outcome } = await run(async (input) => {
-    await bringIn("b.jpg");
+    seen.push(input.frames.length);
+    revisions.push((await getBoard(access())).revision);
+    if (seen.length < 3) await bringIn(`${seen.length}.jpg`);
     return inARow(input);
   });
-  expect(outcome).toEqual({ type: "later", afterMs: 0 });
+  expect(outcome).toEqual({ type: "done" });
+  expect([seen, revisions]).toEqual([
+    [1, 2, 3],
+    [0, 0, 0],
+  ]);
   const board = await getBoard(access());
-  expect([board.revision, board.stacks.length]).toEqual([0, 0]);
-  expect((await getProgress(access())).sorted).toBe(false);
+  expect([board.revision, board.frames.length]).toEqual([1, 3]);
+  expect((await getProgress(access())).sorted).toBe(true);
 });
 
 test("a sorting that fails says so in plain words, and the next that works takes the words back", async () => {

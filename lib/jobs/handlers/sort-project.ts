@@ -6,7 +6,7 @@ import { hasWaitingFiles } from "@/lib/frames/reads";
 import { listUnfinishedUploads } from "@/lib/intake/reads";
 import { measurerFor } from "@/lib/jobs/measure-stored";
 import type { JobHandler } from "@/lib/jobs/runner";
-import type { SortFrames } from "@/lib/sorting/types";
+import type { MeasurePair, SortFrames } from "@/lib/sorting/types";
 import { lastByteAtMs } from "@/lib/storage/disk";
 
 /** An upload that has not moved for so long is stalled: the board does not wait for it. ms. */
@@ -21,13 +21,19 @@ export function createSortProjectHandler(sortFrames: SortFrames): JobHandler {
     slots: 1,
     run: async (job, signal) => {
       const access = accessForJob(job);
-      if (await isBusy(access)) return { type: "later", afterMs: LOOK_AGAIN_MS };
-      const basis = await findSortBasis(access);
-      if (!basis || basis.isCovered) return { type: "done" };
+      const remember = rememberPairs();
       try {
-        const proposal = await sortFrames(basis.input, measurerFor(basis.input.frames, basis.fileIds, signal));
-        const isStored = await storeProposal(access, basis, proposal, Date.now());
-        return isStored ? { type: "done" } : { type: "later", afterMs: 0 };
+        // A command that comes in between makes a try stale. The next one starts from what is decided by then, and
+        // takes a fraction of the time, since its pairs are known: people who go on working do not hold it up.
+        for (;;) {
+          signal.throwIfAborted();
+          if (await isBusy(access)) return { type: "later", afterMs: LOOK_AGAIN_MS };
+          const basis = await findSortBasis(access);
+          if (!basis || basis.isCovered) return { type: "done" };
+          const measure = remember(measurerFor(basis.input.frames, basis.fileIds, signal));
+          const proposal = await sortFrames(basis.input, measure);
+          if (await storeProposal(access, basis, proposal, Date.now())) return { type: "done" };
+        }
       } catch (error) {
         if (!signal.aborted) await recordSortFailure(access, RETRYING, Date.now());
         throw error;
@@ -41,6 +47,17 @@ const RETRYING = "The frames could not be sorted; it is tried again. Every file 
 const GIVEN_UP =
   "The frames could not be sorted, after several tries. Every file is safe. " +
   "Tell the administrator; bringing in another frame starts a new try.";
+
+/** Lets measurers of several tries share what they measured: pictures do not change, so a pair is measured once. */
+function rememberPairs(): (measurePair: MeasurePair) => MeasurePair {
+  const known = new Map<string, ReturnType<MeasurePair>>();
+  return (measurePair) => (a, b, effort) => {
+    const key = `${a} ${b} ${effort ?? "plain"}`;
+    const measure = known.get(key) ?? measurePair(a, b, effort);
+    known.set(key, measure);
+    return measure;
+  };
+}
 
 async function isBusy(access: ProjectAccess): Promise<boolean> {
   if (await hasWaitingFiles(access)) return true;

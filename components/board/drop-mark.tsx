@@ -1,11 +1,12 @@
 "use client";
 
+import { ArrowRightFromLine } from "lucide-react";
 import { useLayoutEffect, useState } from "react";
 import { createPortal } from "react-dom";
 import { useInHand, type Carried } from "@/components/board/hand";
 import { classNames } from "@/components/ui/class-names";
 import type { BoardIndex } from "@/lib/board/board-index";
-import { nameOfTarget, stackOfTarget, tileAt, zoneAt, type Occupied } from "@/lib/board/moving";
+import { nameOfTarget, stackOfTarget, tileAt, ZONE_BAND, zoneAt, type Occupied } from "@/lib/board/moving";
 import { outcomeOf } from "@/lib/board/outcome";
 
 /**
@@ -31,7 +32,8 @@ function Mark({ index, carried }: MarkProps) {
   const outcome = outcomeOf(index, carried.moving, target);
   const box = holder.getBoundingClientRect();
   const isTaken = carried.moving.kind === "stack" && target.kind === "place" && tileAt(index, target) !== null;
-  const hasZones = isTaken && outcome.state !== "impossible" && carried.by !== "keys" && zoneAt(box, 0) !== undefined;
+  const hasZones =
+    isTaken && outcome.state !== "impossible" && carried.by !== "keys" && zoneAt(box, { x: 0, y: 0 }) !== undefined;
   return createPortal(
     <span
       aria-hidden
@@ -41,7 +43,7 @@ function Mark({ index, carried }: MarkProps) {
       )}
     >
       {hasZones ? (
-        <Zones chosen={target.kind === "place" ? target.occupied : undefined} />
+        <Zones tile={name} chosen={target.kind === "place" ? target.occupied : undefined} isWide={box.width >= 150} />
       ) : (
         box.width >= 100 && (
           <span className="flex min-h-7 items-center bg-paper px-1.5 text-sm leading-4.5 font-semibold">
@@ -54,26 +56,49 @@ function Mark({ index, carried }: MarkProps) {
   );
 }
 
-const ANSWERS: readonly { readonly occupied: Occupied; readonly label: string }[] = [
-  { occupied: "swap", label: "Swap places" },
-  { occupied: "push", label: "Push the line on" },
-  { occupied: "take", label: "As another take" },
-];
+interface ZonesProps {
+  readonly tile: string;
+  readonly chosen: Occupied | undefined;
+  readonly isWide: boolean;
+}
 
-/** Three thirds of a taken tile, each an answer to what happens to its stack. */
-function Zones({ chosen }: { readonly chosen: Occupied | undefined }) {
-  return ANSWERS.map(({ occupied, label }) => (
-    <span key={occupied} className="flex flex-1 items-center justify-center border-t border-line first:border-t-0">
+/** A taken tile's answers to what happens to its stack: swap in its middle, a band each at the right and lower edge. */
+function Zones({ tile, chosen, isWide }: ZonesProps) {
+  const bandPercent = `${100 * ZONE_BAND}%`;
+  const edgePercent = `${100 * (1 - ZONE_BAND)}%`;
+  const toneOf = (occupied: Occupied) => (chosen === occupied ? "bg-petrol text-petrol-on" : "bg-paper text-ink");
+  return (
+    <>
       <span
+        style={{ width: bandPercent, height: edgePercent }}
+        className={classNames("absolute top-0 right-0 flex items-center justify-center", toneOf("push"))}
+      >
+        <ArrowRightFromLine aria-hidden size={18} />
+      </span>
+      <span
+        style={{ height: bandPercent }}
         className={classNames(
-          "px-1.5 text-sm leading-6 font-semibold",
-          chosen === occupied ? "bg-petrol text-petrol-on" : "bg-paper text-ink",
+          "absolute inset-x-0 bottom-0 flex items-center justify-center overflow-hidden border-t border-line text-sm leading-4.5 font-semibold whitespace-nowrap",
+          toneOf("take"),
         )}
       >
-        {label}
+        {isWide ? `Another take of ${tile}` : "Another take"}
       </span>
-    </span>
-  ));
+      <span
+        style={{ right: bandPercent, bottom: bandPercent }}
+        className="absolute top-0 left-0 flex items-center justify-center p-1"
+      >
+        <span
+          className={classNames(
+            "px-1.5 py-0.5 text-center text-sm leading-4.5 font-semibold",
+            chosen === "push" ? toneOf("push") : toneOf("swap"),
+          )}
+        >
+          {chosen === "push" ? "Shift the rest of the row to the right" : "Swap places"}
+        </span>
+      </span>
+    </>
+  );
 }
 
 /**

@@ -55,29 +55,37 @@ export interface Aim {
 
 /** What lies under a point of the window, px. */
 export function aimAt(index: BoardIndex, { moving, boundary }: Grip, point: { x: number; y: number }): Aim {
+  if (boundary) return aimBoundary(boundary, point.y);
   const element = document.elementFromPoint(point.x, point.y);
-  if (boundary) return aimBoundary(boundary, element, point.y);
   const part = element?.closest<HTMLElement>("[data-place], [data-drop]") ?? null;
-  return { target: part && targetOfPart(index, moving, part, point.y) };
+  return { target: part && targetOfPart(index, moving, part, point) };
 }
 
-/** The target that a part of the page is for what is moved; where its tile is taken, the third under the point answers. */
-export function targetOfPart(index: BoardIndex, moving: Moving, part: HTMLElement, y: number): Target | null {
+/** The target that a part of the page is for what is moved; where its tile is taken, the zone under the point answers. */
+export function targetOfPart(
+  index: BoardIndex,
+  moving: Moving,
+  part: HTMLElement,
+  { x, y }: { readonly x: number; readonly y: number },
+): Target | null {
   const { place, drop = "" } = part.dataset;
   if (place === undefined && drop.startsWith("stack:")) return { kind: "stack", stackId: drop.slice(6) };
   const target = targetOfName(index, place ?? drop);
   if (moving.kind !== "stack" || target?.kind !== "place" || !tileAt(index, target)) return target;
   const box = part.getBoundingClientRect();
-  const occupied = place === undefined ? undefined : zoneAt(box, y - box.top);
+  const occupied = place === undefined ? undefined : zoneAt(box, { x: x - box.left, y: y - box.top });
   return occupied ? { ...target, occupied } : target;
 }
 
-function aimBoundary({ before, after }: Boundary, element: Element | null, y: number): Aim {
+/** The rail has one axis: the line at the pointer's height counts, wherever across the page the pointer is. */
+function aimBoundary({ before, after }: Boundary, y: number): Aim {
   const nothing: Aim = { target: null, moving: { kind: "frames", frameIds: [] } };
-  const line = element?.closest<HTMLElement>("[data-line]");
-  const frameId = line?.dataset.line;
-  if (!line || frameId === undefined) return nothing;
-  const box = line.getBoundingClientRect();
-  const steps = stepsTo(before, after, frameId, y > box.top + box.height / 2);
+  const lines = [...before.frames, ...after.frames].flatMap(({ id }) => {
+    const box = document.querySelector(`[data-line="${CSS.escape(id)}"]`)?.getBoundingClientRect();
+    return box ? [{ id, middle: box.top + box.height / 2 }] : [];
+  });
+  const [nearest] = lines.sort((a, b) => Math.abs(a.middle - y) - Math.abs(b.middle - y));
+  if (!nearest) return nothing;
+  const steps = stepsTo(before, after, nearest.id, y > nearest.middle);
   return (steps === null ? null : moveBoundary(before, after, steps)) ?? nothing;
 }

@@ -36,8 +36,8 @@ interface MoveFormProps {
 
 const OCCUPIED: readonly { readonly value: Occupied; readonly label: string }[] = [
   { value: "swap", label: "Swap places" },
-  { value: "push", label: "Push the line on, one place to the right" },
-  { value: "take", label: "Lay it there as another take" },
+  { value: "push", label: "Shift the rest of the row to the right" },
+  { value: "take", label: "Another take" },
 ];
 
 function MoveForm({ index, asked, onClose }: MoveFormProps) {
@@ -151,7 +151,7 @@ function OccupiedChoice({ value, onChange }: OccupiedChoiceProps) {
   const name = useId();
   return (
     <fieldset className="mt-4">
-      <legend className="font-semibold">A stack lies there</legend>
+      <legend className="font-semibold">There is a stack already</legend>
       {OCCUPIED.map((choice) => (
         <label key={choice.value} className="flex min-h-8 items-center gap-2 pointer-coarse:min-h-11">
           <input

@@ -137,7 +137,7 @@ test("a stack is moved by name; where the place is taken, one says what happens 
   await user.click(screen.getByRole("button", { name: "Change A3" }));
   await user.click(screen.getByRole("menuitem", { name: "Move A3 to…" }));
   await user.type(screen.getByLabelText("Tile or place"), "b2");
-  await user.click(screen.getByRole("radio", { name: /^Push the line on/ }));
+  await user.click(screen.getByRole("radio", { name: /^Shift the rest of the row/ }));
   expect(screen.getByRole("dialog").textContent).toContain("B2 to B4 would go one place to the right.");
   await user.click(screen.getByRole("button", { name: "Move" }));
   expect(given).toEqual([

@@ -36,8 +36,8 @@ export function Tile({ projectId, tile, part, layout, isChosen, isTabStop, isAsk
       <button
         type="button"
         data-tile={tile.name}
-        // The map has no captions to take hold of.
-        data-grip={canEdit && isMap ? gripOf.stack(tile.stack.id) : undefined}
+        // Dragged by its picture, as a frame is; a click still opens it.
+        data-grip={canEdit ? gripOf.stack(tile.stack.id) : undefined}
         tabIndex={isTabStop ? 0 : -1}
         aria-label={tileLabel(tile)}
         aria-expanded={isChosen}
@@ -51,17 +51,20 @@ export function Tile({ projectId, tile, part, layout, isChosen, isTabStop, isAsk
       >
         <TilePicture projectId={projectId} tile={tile} part={part} layout={layout} />
         {isMap ? <MapMarks tile={tile} /> : <Notch tile={tile} isSlim={layout.size === "medium"} />}
-        {!isMap && <Caption tile={tile} layout={layout} grip={canEdit ? gripOf.stack(tile.stack.id) : undefined} />}
+        {!isMap && <Caption tile={tile} layout={layout} />}
       </button>
-      {canEdit && !isMap && <TileHandle tile={tile} layout={layout} isTabStop={isTabStop} isChosen={isChosen} />}
+      {canEdit && !isMap && <TileHandle tile={tile} isTabStop={isTabStop} isChosen={isChosen} />}
     </div>
   );
 }
 
-type TileHandleProps = Pick<TileProps, "tile" | "layout" | "isTabStop" | "isChosen">;
+type TileHandleProps = Pick<TileProps, "tile" | "isTabStop" | "isChosen">;
 
-/** A tab of paper on the caption's upper edge: takes hold of the stack. Out of sight until the tile is looked at. */
-function TileHandle({ tile, layout, isTabStop, isChosen }: TileHandleProps) {
+/**
+ * Paper in the picture's upper corner, away from the notch and from the names of who is there: takes hold of the
+ * stack. Out of sight until the tile is looked at.
+ */
+function TileHandle({ tile, isTabStop, isChosen }: TileHandleProps) {
   const hand = useHand();
   return (
     <button
@@ -72,9 +75,8 @@ function TileHandle({ tile, layout, isTabStop, isChosen }: TileHandleProps) {
       aria-label={`Move ${tile.name}`}
       aria-describedby={GRIP_HELP_ID}
       onClick={() => hand.tap({ kind: "stack", stackId: tile.stack.id })}
-      style={{ bottom: layout.captionHeightPx }}
       className={classNames(
-        "absolute right-0 inline-flex h-6 w-7 cursor-grab items-center justify-center bg-paper text-ink group-hover/tile:opacity-100 hover:bg-ink hover:text-paper focus-visible:opacity-100 pointer-coarse:hidden",
+        "absolute top-0 right-0 inline-flex h-6 w-7 cursor-grab items-center justify-center bg-paper text-ink group-hover/tile:opacity-100 hover:bg-ink hover:text-paper focus-visible:opacity-100 pointer-coarse:hidden",
         isChosen ? "opacity-100" : "opacity-0",
       )}
     >
@@ -115,17 +117,11 @@ function MapMarks({ tile }: { readonly tile: BoardTile }) {
   ) : null;
 }
 
-interface CaptionProps extends Pick<TileProps, "tile" | "layout"> {
-  /** The stack is dragged by its caption. */
-  readonly grip: string | undefined;
-}
-
-function Caption({ tile, layout, grip }: CaptionProps) {
+function Caption({ tile, layout }: Pick<TileProps, "tile" | "layout">) {
   const isFull = layout.size === "full";
   const figures = `${tile.inUse}/${tile.frames.length}`;
   return (
     <span
-      data-grip={grip}
       style={{ height: layout.captionHeightPx }}
       className="figures flex items-center gap-2 overflow-hidden bg-paper px-1.5 text-sm"
     >

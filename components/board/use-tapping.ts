@@ -19,7 +19,7 @@ export function useTapping(index: BoardIndex) {
       const { carried } = hand.get();
       if (carried?.by !== "taps" || !(event.target instanceof Element)) return;
       const part = event.target.closest<HTMLElement>("[data-place], [data-drop]");
-      const target = part && targetOfPart(index, carried.moving, part, event.clientY);
+      const target = part && targetOfPart(index, carried.moving, part, { x: event.clientX, y: event.clientY });
       if (!target) return;
       event.preventDefault();
       event.stopPropagation();
@@ -29,7 +29,7 @@ export function useTapping(index: BoardIndex) {
         putDown(carried.moving, target);
         return;
       }
-      // The first tap only shows: which third of a taken tile it fell on means nothing yet.
+      // The first tap only shows: which zone of a taken tile it fell on means nothing yet.
       const shown: Target =
         target.kind === "place" ? { kind: "place", row: target.row, column: target.column } : target;
       hand.aim(shown);

@@ -10,6 +10,7 @@ import {
   startTarget,
   stepTarget,
   targetOfName,
+  ZONE_BAND,
   zoneAt,
   type Moving,
   type Target,
@@ -56,7 +57,7 @@ describe("what would happen is said before it happens", () => {
       "It would go from A3 to a new stack in D1. D1 would have 1 frame. The grid would reach to row D.",
     ],
     [frame(17), "A3", "It is in A3 already."],
-    [stack("stack-1-3"), "B5", "It would lie in B5. A3 would be a hole."],
+    [stack("stack-1-3"), "B5", "It would be placed in B5. A3 would be a hole."],
     [stack("stack-1-3"), "A3", "It is in A3 already."],
     [stack("stack-1-3"), "A4", "A4 has a stack: what happens to it is asked."],
   ] as const)("%j to %s", (moving, name, sentence) => {
@@ -78,11 +79,11 @@ describe("what would happen is said before it happens", () => {
   test("the three answers for a place that is taken", () => {
     const say = (occupied: "swap" | "push" | "take") =>
       outcomeOf(INDEX, stack("stack-1-1"), place("B3", occupied)).sentence;
-    expect(say("swap")).toBe("It would lie in B3, and B3 in A1.");
-    expect(say("push")).toBe("It would lie in B3. B3 to B4 would go one place to the right. A1 would be a hole.");
+    expect(say("swap")).toBe("It would be placed in B3, and B3 in A1.");
+    expect(say("push")).toBe("It would be placed in B3. B3 to B4 would go one place to the right. A1 would be a hole.");
     expect(say("take")).toBe("It would be take 2 of B3, not in the merge until it is chosen. A1 would be a hole.");
     expect(outcomeOf(INDEX, stack("stack-1-1"), place("A5", "push")).sentence).toBe(
-      "It would lie in A5. A5 to A6 would go one place to the right. The grid would reach to column 7. A1 would be a hole.",
+      "It would be placed in A5. A5 to A6 would go one place to the right. The grid would reach to column 7. A1 would be a hole.",
     );
   });
 
@@ -172,10 +173,15 @@ describe("by arrow keys", () => {
     expect(stepTarget(INDEX, { kind: "loose" }, "ArrowDown")).toEqual(place("A1"));
     expect(stepTarget(INDEX, place("A3"), "x")).toBeNull();
   });
-  test("thirds of a taken tile answer what happens to its stack; a small tile asks later", () => {
+  test("a taken tile's middle swaps, its right edge makes room, its lower edge is another take; a small one asks later", () => {
     const box = { width: 150, height: 120 };
-    expect([10, 60, 119, 130].map((y) => zoneAt(box, y))).toEqual(["swap", "push", "take", "take"]);
-    expect(zoneAt({ width: 60, height: 60 }, 10)).toBeUndefined();
+    const at = (x: number, y: number) => zoneAt(box, { x, y });
+    expect([at(75, 60), at(5, 5), at(110, 88)]).toEqual(["swap", "swap", "swap"]);
+    expect([at(120, 60), at(149, 5)]).toEqual(["push", "push"]);
+    expect([at(75, 100), at(149, 119)]).toEqual(["take", "take"]);
+    // The middle is the largest of the three by far.
+    expect((1 - ZONE_BAND) ** 2).toBeGreaterThan(0.5);
+    expect(zoneAt({ width: 60, height: 60 }, { x: 10, y: 10 })).toBeUndefined();
   });
 });
 

@@ -116,20 +116,25 @@ function placeCommand(index: BoardIndex, stackId: string, target: Target): Comma
   return { type: "place-stack", stackId, place, occupied: target.occupied };
 }
 
-/** Heights of the three answers within a tile that is taken, from the top: equal thirds. */
-const ZONES: readonly Occupied[] = ["swap", "push", "take"];
 /** A tile this small has no room for three answers; they are asked after the drop. */
 const ZONES_LEAST_PX = { width: 100, height: 84 };
+/** Share of a taken tile's height and width that its bands at the lower and the right edge have: the rest swaps. */
+export const ZONE_BAND = 0.24;
 
 /**
- * Which answer a pointer within a taken tile is on.
- * @param box - the tile's, px; @param yPx - from the tile's top
+ * Which answer a pointer within a taken tile is on: its middle swaps, the right edge makes room, the lower edge lays it
+ * there as another take.
+ * @param box - the tile's, px
+ * @param point - from the tile's upper left corner, px
  * @returns undefined where the tile is too small for three
  */
-export function zoneAt(box: { readonly width: number; readonly height: number }, yPx: number): Occupied | undefined {
+export function zoneAt(
+  box: { readonly width: number; readonly height: number },
+  point: { readonly x: number; readonly y: number },
+): Occupied | undefined {
   if (box.width < ZONES_LEAST_PX.width || box.height < ZONES_LEAST_PX.height) return undefined;
-  const at = Math.floor((yPx / box.height) * ZONES.length);
-  return ZONES[Math.min(ZONES.length - 1, Math.max(0, at))];
+  if (point.y >= box.height * (1 - ZONE_BAND)) return "take";
+  return point.x >= box.width * (1 - ZONE_BAND) ? "push" : "swap";
 }
 
 /**

@@ -126,8 +126,8 @@ function outcomeOfStack(index: BoardIndex, stackId: string, target: Target): Out
   if (stack.row === target.row && stack.column === target.column) return impossible(`It is in ${place} already.`);
   const there = tileAt(index, target);
   if (!there) {
-    return possible(`${capital(name)} would lie in ${place}`, [
-      `It would lie in ${place}.`,
+    return possible(`${capital(name)} would be placed in ${place}`, [
+      `It would be placed in ${place}.`,
       ...growthOf(index, target),
       ...leftPlace(index, stack),
     ]);
@@ -161,14 +161,14 @@ function outcomeOfTaken(
     const back = stack.row === null || stack.column === null ? null : tileName(stack.row, stack.column);
     return possible(back === null ? `${place} would be ${name}` : `${back} and ${place} would change places`, [
       back === null
-        ? `It would lie in ${place}, and what lies there would have no place.`
-        : `It would lie in ${place}, and ${place} in ${back}.`,
+        ? `It would be placed in ${place}, and the stack there would have no place.`
+        : `It would be placed in ${place}, and ${place} in ${back}.`,
     ]);
   }
   const { pushedTo, last } = pushedFrom(index, stack, target);
   const moved = last === target.column ? place : `${place} to ${tileName(target.row, last)}`;
-  return possible(`${capital(name)} would lie in ${place}`, [
-    `It would lie in ${place}.`,
+  return possible(`${capital(name)} would be placed in ${place}`, [
+    `It would be placed in ${place}.`,
     `${moved} would go one place to the right.`,
     ...growthOf(index, { row: target.row, column: last + 1 }),
     ...(pushedTo.includes(stack.column ?? 0) && stack.row === target.row ? [] : leftPlace(index, stack)),

@@ -59,7 +59,7 @@ function describePlace({ stackId, place, occupied }: CommandOf<"place-stack">, {
   const wasFree = !before.stacks.some(({ id, row, column }) => id !== stackId && tileOf(row, column) === to);
   if (wasFree) return `moved ${from} to ${to}`;
   if (occupied === "swap") return `swapped ${from} and ${to}`;
-  if (occupied === "push") return `moved ${from} to ${to} and pushed the row along`;
+  if (occupied === "push") return `moved ${from} to ${to} and shifted the rest of the row to the right`;
   return `moved ${from} to ${to} as take ${after.stacks.find(({ id }) => id === stackId)?.take ?? 1}`;
 }
 

@@ -118,11 +118,13 @@ test("by keyboard a frame is picked up, moved from tile to tile, put down; and u
 test("a stack is dragged to a taken place: one of three answers, each said before the drop", async ({ page }) => {
   const projectId = await openBoard(page);
   const handle = page.getByRole("button", { name: "Move A1", exact: true });
-  await hold(page, handle, tileOf(page, "B3", 6), { from: 0.5, to: 0.15 });
-  await expect(paper(page).getByText("It would lie in B3, and B3 in A1.")).toBeVisible();
+  await hold(page, handle, tileOf(page, "B3", 6), { from: 0.5, to: 0.5 });
+  await expect(paper(page).getByText("It would be placed in B3, and B3 in A1.")).toBeVisible();
   expect.soft(await findSerious(page), "while dragging a stack").toEqual([]);
   const box = await tileOf(page, "B3", 6).boundingBox();
-  await page.mouse.move((box?.x ?? 0) + 50, (box?.y ?? 0) + (box?.height ?? 0) * 0.5, { steps: 3 });
+  await page.mouse.move((box?.x ?? 0) + (box?.width ?? 0) * 0.9, (box?.y ?? 0) + (box?.height ?? 0) * 0.4, {
+    steps: 3,
+  });
   await expect(
     paper(page).getByText(/B3 to B4 would go one place to the right\. The grid would reach to column 5\./),
   ).toBeVisible();

@@ -101,6 +101,7 @@ function FrameRow({ isFirst, isStop, hasPlaces, onChoose, onFocus, ...props }: F
   const { frame, size, isReference, onCompare, projectId } = props;
   const hand = useHand();
   const isSelected = useInHand(({ selected }) => selected.has(frame.id));
+  const isPickedUp = useInHand(({ carried }) => carried?.by === "taps" && carried.frameIds.has(frame.id));
   const tabIndex = isStop ? 0 : -1;
   return (
     <div
@@ -121,11 +122,19 @@ function FrameRow({ isFirst, isStop, hasPlaces, onChoose, onFocus, ...props }: F
         className="cursor-pointer"
       >
         <span
-          className={classNames("relative block", isSelected && "outline-3 outline-offset-1 outline-petrol")}
+          className={classNames(
+            "relative block",
+            (isSelected || isPickedUp) && "outline-3 outline-offset-1 outline-petrol",
+          )}
           style={{ height: size.heightPx }}
         >
           <FramePicture {...props} />
-          {isSelected && (
+          {isPickedUp && (
+            <span className="absolute right-0 bottom-0 bg-petrol px-1.5 leading-5 font-bold text-petrol-on">
+              picked up
+            </span>
+          )}
+          {isSelected && !isPickedUp && (
             <span aria-hidden className="absolute right-0 bottom-0 bg-petrol px-1.5 leading-5 font-bold text-petrol-on">
               ✓
             </span>

@@ -42,7 +42,11 @@ export function FrameMenu({ projectId, frame, isReference, isFirst, onCompare, t
       )}
       {stackId !== null && !isFirst && (
         <MenuItem
-          onSelect={() => run({ type: "split-stack", stackId, atFrameId: id, newStackId: newId(), place: null })}
+          onSelect={() => {
+            const newStackId = newId();
+            hand.awaitStack(newStackId);
+            run({ type: "split-stack", stackId, atFrameId: id, newStackId, place: null });
+          }}
         >
           Split the stack before it
         </MenuItem>

@@ -42,6 +42,7 @@ export class Hand {
   private readonly listeners = new Set<() => void>();
   /** Scrolls the board to a place that may not be drawn; set by whoever scrolls. */
   reveal: ((target: Target) => void) | null = null;
+  private awaited: string | null = null;
 
   readonly get = () => this.state;
 
@@ -95,6 +96,18 @@ export class Hand {
     const next = moving ? { moving, frameIds: framesOf(moving) } : {};
     this.set({ carried: { ...carried, ...next, target } });
     return true;
+  }
+
+  /** A stack that this person is making without a place: whoever scrolls brings it into view when it is there. */
+  awaitStack(stackId: string) {
+    this.awaited = stackId;
+  }
+
+  /** The first of these that was awaited; it is awaited no longer. */
+  takeAwaited<Item extends { readonly stack: { readonly id: string } }>(items: readonly Item[]): Item | undefined {
+    const made = items.find(({ stack }) => stack.id === this.awaited);
+    if (made) this.awaited = null;
+    return made;
   }
 
   letGo() {

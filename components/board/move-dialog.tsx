@@ -18,7 +18,7 @@ import {
   type Occupied,
   type Target,
 } from "@/lib/board/moving";
-import { nameOfMoved, outcomeOf } from "@/lib/board/outcome";
+import { growthToConfirm, nameOfMoved, outcomeOf } from "@/lib/board/outcome";
 
 /** "Move to…": the way by name for everything that can be dragged. Stands once on the board, opened from many places. */
 export function MoveDialog({ index }: { readonly index: BoardIndex }) {
@@ -44,6 +44,8 @@ function MoveForm({ index, asked, onClose }: MoveFormProps) {
   const { moving, verb } = asked;
   const [text, setText] = useState(asked.text);
   const [occupied, setOccupied] = useState<Occupied>("swap");
+  // The place beyond the grid that was asked for, until another one is written.
+  const [askedFor, setAskedFor] = useState<string | null>(null);
   const give = useGive(index, asked);
   const parsed = verb === "merge" ? parseMerge(index, moving, text) : parseMoveTo(index, moving, text);
   const said = "target" in parsed ? parsed.target : null;
@@ -51,6 +53,12 @@ function MoveForm({ index, asked, onClose }: MoveFormProps) {
   const isOwn = said !== null && outcomeOf(index, moving, said).state === "impossible";
   const target = said?.kind === "place" && isTaken ? { ...said, occupied } : said;
   const outcome = target && outcomeOf(index, moving, target);
+  const growth = target && growthToConfirm(index, target);
+  const isAsking = growth !== null && askedFor === text;
+  const isPossible = outcome?.state === "possible";
+  const move = () => {
+    if (target && isPossible && give(target)) onClose();
+  };
   const problem = "problem" in parsed ? parsed.problem : null;
   const name = verb === "merge" ? mergeName(index, moving) : nameOfMoved(index, moving);
   return (
@@ -63,7 +71,8 @@ function MoveForm({ index, asked, onClose }: MoveFormProps) {
       <form
         onSubmit={(event) => {
           event.preventDefault();
-          if (target && outcome?.state === "possible" && give(target)) onClose();
+          if (growth === null) move();
+          else setAskedFor(text);
         }}
       >
         <Field
@@ -92,10 +101,19 @@ function MoveForm({ index, asked, onClose }: MoveFormProps) {
         <p role="status" className="mt-4 min-h-12 max-w-[60ch]">
           {outcome?.sentence}
         </p>
+        {isAsking && (
+          <p role="alert" className="mt-2 max-w-[60ch] border border-ochre bg-ochre-wash px-3 py-2 text-ochre-on">
+            {growth} Is {text.trim().toUpperCase()} the place you mean?
+          </p>
+        )}
         <DialogAnswers>
-          <Button type="submit" tone="petrol" disabled={outcome?.state !== "possible"}>
-            {verb === "merge" ? "Merge" : "Move"}
-          </Button>
+          {isAsking && isPossible ? (
+            <Button onClick={move}>Grow the grid and move</Button>
+          ) : (
+            <Button type="submit" tone="petrol" disabled={!isPossible}>
+              {verb === "merge" ? "Merge" : "Move"}
+            </Button>
+          )}
           <Button onClick={onClose}>Cancel</Button>
         </DialogAnswers>
       </form>

@@ -1,7 +1,8 @@
 "use client";
 
-import type { ReactNode } from "react";
+import { useEffect, useRef, type ReactNode } from "react";
 import { Bench, LooseBench } from "@/components/board/bench";
+import { useInHand } from "@/components/board/hand";
 import { Picture } from "@/components/board/picture";
 import { StatusLine } from "@/components/board/status-line";
 import { TileTable } from "@/components/board/tile-table";
@@ -26,6 +27,7 @@ interface SmallBoardProps {
 /** The board where there is no room for it: the table, or one tile at a time, with the docket where it is about that tile. */
 export function SmallBoard({ index, chosen, onChoose, docket, askedPlace, tools, saved }: SmallBoardProps) {
   const tile = chosen === null ? undefined : findTile(index, chosen);
+  useShowAllToTap(chosen !== null, () => onChoose(null));
   const isOne = tile !== undefined || chosen === LOOSE;
   return (
     <>
@@ -50,6 +52,18 @@ export function SmallBoard({ index, chosen, onChoose, docket, askedPlace, tools,
       )}
     </>
   );
+}
+
+/** What is picked up goes to another tile: the list of all tiles to tap comes by itself. */
+function useShowAllToTap(isAway: boolean, showAll: () => void) {
+  const isTapping = useInHand(({ carried }) => carried?.by === "taps");
+  const latest = useRef({ isAway, showAll });
+  useEffect(() => {
+    latest.current = { isAway, showAll };
+  });
+  useEffect(() => {
+    if (isTapping && latest.current.isAway) latest.current.showAll();
+  }, [isTapping]);
 }
 
 interface OneTileProps {

@@ -39,7 +39,14 @@ export function StackMenu({ index, tile, stack }: StackMenuProps) {
         </MenuItem>
       )}
       {stack.row !== null && (
-        <MenuItem onSelect={() => run({ type: "place-stack", stackId, place: null })}>Take out of the grid</MenuItem>
+        <MenuItem
+          onSelect={() => {
+            hand.awaitStack(stackId);
+            run({ type: "place-stack", stackId, place: null });
+          }}
+        >
+          Take out of the grid
+        </MenuItem>
       )}
       <BoundaryItems index={index} stackId={stackId} />
       <MenuItem onSelect={() => hand.select(frameIds)}>Select its {countOf(frameIds.length, "frame")}</MenuItem>

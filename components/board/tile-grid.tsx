@@ -37,7 +37,7 @@ const NUMBERS_AND_EDGES_PX = 62;
 
 /** The sheet: tiles in their rows on the well, the bench unfolded between them. Only rows in view are drawn. */
 export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlace, askedMove }: TileGridProps) {
-  const { canEdit } = useBoardCommands();
+  const { canEdit, announce } = useBoardCommands();
   const [sizeRef, size] = useElementSize();
   const scroller = useRef<HTMLDivElement | null>(null);
   const [scrollerElement, setScrollerElement] = useState<HTMLDivElement | null>(null);
@@ -48,10 +48,11 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlac
   const { projectId, grid } = index.board;
   const widthPx = (size?.width ?? 0) - WELL_PADDING_PX;
   const heightPx = (size?.height ?? 0) - NUMBERS_AND_EDGES_PX;
-  const layout = useMemo(() => {
-    const aspect = geometry.steps.acrossPx / geometry.steps.downPx;
-    return layoutBoard({ columns: grid.columns, widthPx, heightPx, aspect });
-  }, [grid.columns, widthPx, heightPx, geometry]);
+  const aspect = geometry.steps.acrossPx / geometry.steps.downPx;
+  const layout = useMemo(
+    () => layoutBoard({ columns: grid.columns, widthPx, heightPx, aspect }),
+    [grid.columns, widthPx, heightPx, aspect],
+  );
   const partOf = useCallback((tile: BoardTile) => picturePart(tile, geometry.steps, geometry.origin), [geometry]);
   const lines = useMemo(() => gridLines(index, chosen), [index, chosen]);
   const seams = useMemo(() => seamMarksByRow(index, isAllSeams), [index, isAllSeams]);
@@ -77,6 +78,13 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlac
       hand.reveal = null;
     };
   });
+  useEffect(() => {
+    const made = hand.takeAwaited(index.unplaced);
+    if (!made) return;
+    const at = lines.findIndex((line) => line.kind === "unplaced" && line.tiles.includes(made));
+    if (at >= 0) virtualizer.scrollToIndex(at, { align: "auto" });
+    announce(`${made.name} has no place yet. It is below the last row.`);
+  }, [index, lines, hand, virtualizer, announce]);
   useShowAsked(askedPlace, (name) => {
     const row = index.tiles.get(name)?.row ?? index.holes.get(name)?.row;
     const at = lines.findIndex((line) => line.kind === "row" && line.row === row);

@@ -41,7 +41,9 @@ export const TileRow = memo(function TileRow({ row, tiles = [], isFirst = false,
     <>
       {isFirst && (
         <p className="flex h-10 items-end pb-1">
-          <Chip>{countOf(index.unplaced.length, "stack")} without a place</Chip>
+          <Chip tone="ochre">
+            {countOf(index.unplaced.length, "stack")} without a place: drag to a place, or “Move to…”
+          </Chip>
         </p>
       )}
       <div
@@ -71,7 +73,7 @@ export const TileRow = memo(function TileRow({ row, tiles = [], isFirst = false,
               isTabStop={name === rest.tabStop || row === undefined}
               isAsked={rest.asked.has(name)}
               canEdit={rest.canEdit}
-              onChoose={() => rest.onChoose(name === rest.chosen ? null : name)}
+              onChoose={rest.onChoose}
             />
           ) : null;
         })}

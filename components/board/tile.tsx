@@ -1,8 +1,9 @@
 import { Check, GripHorizontal } from "lucide-react";
+import { memo } from "react";
 import { Comb } from "@/components/board/comb";
 import { gripOf } from "@/components/board/grip";
 import { GRIP_HELP_ID } from "@/components/board/grip-help";
-import { useHand } from "@/components/board/hand";
+import { useHand, useInHand } from "@/components/board/hand";
 import { TilePicture } from "@/components/board/tile-picture";
 import { classNames } from "@/components/ui/class-names";
 import type { BoardTile } from "@/lib/board/board-index";
@@ -21,11 +22,21 @@ interface TileProps {
   /** The docket's question names it. */
   readonly isAsked: boolean;
   readonly canEdit: boolean;
-  readonly onChoose: (name: string) => void;
+  readonly onChoose: (name: string | null) => void;
 }
 
 /** One place of the grid with a stack: its picture, and its caption where there is room. */
-export function Tile({ projectId, tile, part, layout, isChosen, isTabStop, isAsked, canEdit, onChoose }: TileProps) {
+export const Tile = memo(function Tile({
+  projectId,
+  tile,
+  part,
+  layout,
+  isChosen,
+  isTabStop,
+  isAsked,
+  canEdit,
+  onChoose,
+}: TileProps) {
   const isMap = layout.size === "map";
   return (
     <div
@@ -41,7 +52,7 @@ export function Tile({ projectId, tile, part, layout, isChosen, isTabStop, isAsk
         tabIndex={isTabStop ? 0 : -1}
         aria-label={tileLabel(tile)}
         aria-expanded={isChosen}
-        onClick={() => onChoose(tile.name)}
+        onClick={() => onChoose(isChosen ? null : tile.name)}
         className={classNames(
           // The numbers stay above: what is scrolled to must not end up under them.
           "block w-full scroll-mt-12 scroll-mb-3 text-left outline-offset-0 focus-visible:outline-3 focus-visible:outline-ink focus-visible:ring-6 focus-visible:ring-paper",
@@ -50,11 +61,62 @@ export function Tile({ projectId, tile, part, layout, isChosen, isTabStop, isAsk
         )}
       >
         <TilePicture projectId={projectId} tile={tile} part={part} layout={layout} />
+        {tile.row === null && <NoPlace isSlim={layout.size !== "full"} />}
         {isMap ? <MapMarks tile={tile} /> : <Notch tile={tile} isSlim={layout.size === "medium"} />}
+        <SelectedMark tile={tile} layout={layout} />
         {!isMap && <Caption tile={tile} layout={layout} />}
       </button>
       {canEdit && !isMap && <TileHandle tile={tile} isTabStop={isTabStop} isChosen={isChosen} />}
     </div>
+  );
+}, isDrawnAlike);
+
+/** Every step on the board makes new tile objects; what they hold is kept where nothing changed. */
+function isDrawnAlike(before: TileProps, after: TileProps): boolean {
+  const { tile: tileBefore, part: partBefore, ...restBefore } = before;
+  const { tile: tileAfter, part: partAfter, ...restAfter } = after;
+  return (
+    isShallowEqual(restBefore, restAfter) && isShallowEqual(partBefore, partAfter) && isSameTile(tileBefore, tileAfter)
+  );
+}
+
+function isSameTile(before: BoardTile, after: BoardTile): boolean {
+  if (before === after) return true;
+  const { takes: takesBefore, frames: framesBefore, questions: questionsBefore, ...restBefore } = before;
+  const { takes, frames, questions, ...rest } = after;
+  return (
+    isShallowEqual(restBefore, rest) &&
+    isShallowEqual(takesBefore, takes) &&
+    isShallowEqual(framesBefore, frames) &&
+    isShallowEqual(questionsBefore, questions)
+  );
+}
+
+function isShallowEqual(before: object, after: object): boolean {
+  if (before === after) return true;
+  const values = new Map<string, unknown>(Object.entries(before));
+  const entries = Object.entries(after);
+  return entries.length === values.size && entries.every(([key, value]) => Object.is(values.get(key), value));
+}
+
+/** In the picture's lower corner: how many of its frames are selected. */
+function SelectedMark({ tile, layout }: Pick<TileProps, "tile" | "layout">) {
+  const count = useInHand(({ selected }) =>
+    selected.size === 0 ? 0 : tile.frames.filter(({ id }) => selected.has(id)).length,
+  );
+  if (count === 0) return null;
+  const isMap = layout.size === "map";
+  return (
+    <span
+      data-selected-frames={count}
+      style={{ bottom: isMap ? 0 : layout.captionHeightPx }}
+      className={classNames(
+        "figures absolute left-0 bg-petrol font-bold text-petrol-on ring-2 ring-paper",
+        isMap ? "px-0.5 text-[0.75rem] leading-3" : "px-1.5 text-sm leading-5",
+      )}
+    >
+      {isMap ? "✓" : `✓ ${count}`}
+    </span>
   );
 }
 
@@ -82,6 +144,17 @@ function TileHandle({ tile, isTabStop, isChosen }: TileHandleProps) {
     >
       <GripHorizontal aria-hidden size={16} />
     </button>
+  );
+}
+
+/** A stack without a place is in no merge until it has one: marked as what needs a person. */
+function NoPlace({ isSlim }: { readonly isSlim: boolean }) {
+  return (
+    <span className="pointer-events-none absolute inset-0 z-10 flex items-end outline-2 -outline-offset-4 outline-dashed outline-ochre">
+      <span className="mb-8 border border-ochre bg-ochre-wash px-1.5 text-sm leading-5 font-semibold text-ochre-on">
+        {isSlim ? "no place" : "no place yet"}
+      </span>
+    </span>
   );
 }
 

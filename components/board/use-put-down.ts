@@ -21,11 +21,14 @@ export function usePutDown(index: BoardIndex): (moving: Moving, target: Target) 
       hand.ask({ moving, text: nameOfTarget(index, target), verb: "move" });
       return false;
     }
-    const draft = state === "possible" ? commandFor(index, moving, target, newId()) : null;
+    const stackId = newId();
+    const draft = state === "possible" ? commandFor(index, moving, target, stackId) : null;
     if (!draft) {
       announce(sentence);
       return false;
     }
+    if (target.kind === "new-stack") hand.awaitStack(stackId);
+    if (target.kind === "out" && moving.kind === "stack") hand.awaitStack(moving.stackId);
     const isGiven = run(draft);
     if (isGiven && moving.kind === "frames") hand.select([]);
     return isGiven;

@@ -15,7 +15,7 @@ import {
   type Moving,
   type Target,
 } from "@/lib/board/moving";
-import { nameOfMoved, outcomeOf } from "@/lib/board/outcome";
+import { growthToConfirm, nameOfMoved, outcomeOf } from "@/lib/board/outcome";
 import { planCommand } from "@/lib/board/plan-command";
 import { railRuns } from "@/lib/board/rail";
 import { moveBoundary, stepsTo } from "@/lib/board/rail-boundary";
@@ -85,6 +85,19 @@ describe("what would happen is said before it happens", () => {
     expect(outcomeOf(INDEX, stack("stack-1-1"), place("A5", "push")).sentence).toBe(
       "It would be placed in A5. A5 to A6 would go one place to the right. The grid would reach to column 7. A1 would be a hole.",
     );
+  });
+
+  test("growth by more than one line is asked about, with the places it would leave empty", () => {
+    // 3 rows of 6: A9 makes 27 places of 18, one of them taken.
+    expect(growthToConfirm(INDEX, place("A9"))).toBe(
+      "The grid would grow from 6 to 9 columns; 8 places would be empty.",
+    );
+    expect(growthToConfirm(INDEX, place("E7"))).toBe(
+      "The grid would grow from 3 to 5 rows and from 6 to 7 columns; 16 places would be empty.",
+    );
+    expect(growthToConfirm(INDEX, place("A7"))).toBeNull();
+    expect(growthToConfirm(INDEX, place("B5"))).toBeNull();
+    expect(growthToConfirm(INDEX, { kind: "loose" })).toBeNull();
   });
 
   test("names of what is moved", () => {

@@ -196,6 +196,23 @@ function leftPlace(index: BoardIndex, stack: BoardStack): string[] {
   return stack.isChosenTake ? [`${tile.name} would show take ${next.take}.`] : [];
 }
 
+/**
+ * What a place far beyond the grid would make of it, where it would grow by more than one line: such a name is more
+ * often a slip than a wish. Null: nothing to ask.
+ */
+export function growthToConfirm(index: BoardIndex, target: Target): string | null {
+  if (target.kind !== "place") return null;
+  const { rows, columns } = index.board.grid;
+  const grown = { rows: Math.max(rows, target.row), columns: Math.max(columns, target.column) };
+  if (grown.rows - rows <= 1 && grown.columns - columns <= 1) return null;
+  const empty = grown.rows * grown.columns - rows * columns - 1;
+  const said = [
+    ...(grown.rows > rows ? [`from ${rows} to ${countOf(grown.rows, "row")}`] : []),
+    ...(grown.columns > columns ? [`from ${columns} to ${countOf(grown.columns, "column")}`] : []),
+  ];
+  return `The grid would grow ${said.join(" and ")}; ${countOf(empty, "place")} would be empty.`;
+}
+
 function growthOf(index: BoardIndex, place: { readonly row: number; readonly column: number }): string[] {
   const { rows, columns } = index.board.grid;
   const lines = [

@@ -9,6 +9,7 @@ import { makeEdge } from "@/lib/sorting/edges";
 import { overlapAt } from "@/lib/sorting/find-seams";
 import { tellingSpot } from "@/lib/sorting/frame-sharpness";
 import { isMatch } from "@/lib/sorting/judge-pair";
+import { noiseFloorOf } from "@/lib/sorting/noise-floor";
 import { PairStore } from "@/lib/sorting/pair-store";
 import { median } from "@/lib/sorting/robust";
 import type { MeasurePair, SortFrame } from "@/lib/sorting/types";
@@ -42,6 +43,7 @@ export async function measureStacks(input: MeasuringInput): Promise<Measured> {
   const store = new PairStore(input.frames, input.measurePair);
   const sortFrames = (stackId: string) => framesOf(board, stackId).flatMap(({ id }) => known.get(id) ?? []);
   const isBracketed = areBracketed(board.stacks.map(({ id }) => sortFrames(id)));
+  const noise = noiseFloorOf(input.frames);
   const touched = new Set(input.stackIds);
   const drafts = new Map<string, StackDraft>();
   for (const stack of board.stacks) {
@@ -52,7 +54,7 @@ export async function measureStacks(input: MeasuringInput): Promise<Measured> {
     drafts.set(stack.id, draft);
     if (!touched.has(stack.id)) continue;
     const shifts = await measureShifts(sources, draft.hub, store);
-    const sharpness = stackSharpness({ frames: sources, softLimit, isBracketed });
+    const sharpness = stackSharpness({ frames: sources, softLimit, isBracketed, noise });
     const measured = draft.frames.map((entry, at): FrameDraft => {
       return { ...entry, shift: shifts[at] ?? null, sharpness: sharpness[at] ?? entry.sharpness };
     });
@@ -85,7 +87,7 @@ function draftOf(
   if (!hub) throw new RangeError("a stack needs one frame or more");
   const entries = frames.map((frame, at): FrameDraft => ({
     frame: sources[at] ?? hub,
-    sharpness: { score: 0, verdict: "cannot tell", relative: frame.relativeSharpness },
+    sharpness: { score: 0, detail: 0, verdict: "cannot tell", relative: frame.relativeSharpness },
     deviation: null,
     setAside: frame.setAside,
     isSettled: true,

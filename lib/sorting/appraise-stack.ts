@@ -2,6 +2,7 @@ import type { FrameDraft, Shift, StackDraft } from "./draft";
 import { findDeviations, lightOf, type Deviation } from "./frame-deviations";
 import { frameSharpness, type FrameSharpness } from "./frame-sharpness";
 import { isMatch } from "./judge-pair";
+import type { NoiseFloor } from "./noise-floor";
 import type { PairStore } from "./pair-store";
 import type { FixedStack, SetAsideReason, SortFrame } from "./types";
 
@@ -17,6 +18,8 @@ export interface AppraisalInput {
   readonly settled: Readonly<Record<string, SetAsideReason | null>>;
   /** True where every tile was bracketed: unequal exposure is then meant. */
   readonly isBracketed: boolean;
+  /** Of the whole shoot. */
+  readonly noise: NoiseFloor;
 }
 
 /** A stack is a bracket where its settings span this much light or more. Our own. */
@@ -46,7 +49,7 @@ export function appraiseStack(input: AppraisalInput): StackDraft {
     const own = chain[at] ?? null;
     return {
       frame,
-      sharpness: sharpness[at] ?? { score: 0, verdict: "cannot tell", relative: null },
+      sharpness: sharpness[at] ?? { score: 0, detail: 0, verdict: "cannot tell", relative: null },
       deviation: deviations[at] ?? null,
       setAside: setAside[at] ?? null,
       isSettled: Object.hasOwn(input.settled, frame.id),
@@ -57,22 +60,28 @@ export function appraiseStack(input: AppraisalInput): StackDraft {
 }
 
 /** How sharp each frame of a stack is against the others, in the same order. */
-export function stackSharpness(input: Pick<AppraisalInput, "frames" | "softLimit" | "isBracketed">): FrameSharpness[] {
-  return input.isBracketed ? bracketSharpness(input) : frameSharpness(input.frames, input.softLimit);
+export function stackSharpness(
+  input: Pick<AppraisalInput, "frames" | "softLimit" | "isBracketed" | "noise">,
+): FrameSharpness[] {
+  return input.isBracketed ? bracketSharpness(input) : frameSharpness(input.frames, input.softLimit, input.noise);
 }
 
 /** Frames of unlike exposure differ in sharpness by their light alone, so each is compared with its equals only. */
-function bracketSharpness({ frames, softLimit }: Pick<AppraisalInput, "frames" | "softLimit">): FrameSharpness[] {
+function bracketSharpness({
+  frames,
+  softLimit,
+  noise,
+}: Pick<AppraisalInput, "frames" | "softLimit" | "noise">): FrameSharpness[] {
   const levels = frames.map((frame) => Math.round((lightOf(frame) ?? 0) / BRACKET_LEVEL_EV));
   const judged = new Map<SortFrame, FrameSharpness>();
   for (const level of new Set(levels)) {
     const equals = frames.filter((_, at) => levels[at] === level);
-    frameSharpness(equals, softLimit).forEach((sharpness, at) => {
+    frameSharpness(equals, softLimit, noise).forEach((sharpness, at) => {
       const frame = equals[at];
       if (frame) judged.set(frame, sharpness);
     });
   }
-  return frames.map((frame) => judged.get(frame) ?? { score: 0, verdict: "cannot tell", relative: null });
+  return frames.map((frame) => judged.get(frame) ?? { score: 0, detail: 0, verdict: "cannot tell", relative: null });
 }
 
 function reasonFor(
@@ -95,19 +104,19 @@ function keepSome(
   return reasons.map((reason, at) => (areSettled[at] ? reason : null));
 }
 
-/** The sharpest frame in use; where sharpness cannot be told, the one with the largest Laplacian variance. */
+/** The frame in use with the most detail; where sharpness cannot be told, the one with the largest Laplacian variance. */
 function chooseReference(
   frames: readonly SortFrame[],
   sharpness: readonly FrameSharpness[],
   setAside: readonly (SetAsideReason | null)[],
 ): SortFrame | null {
-  let best: { frame: SortFrame; score: number } | null = null;
+  let best: { frame: SortFrame; detail: number } | null = null;
   frames.forEach((frame, at) => {
     if (setAside[at] !== null) return;
     const entry = sharpness[at];
     const canTell = entry !== undefined && entry.verdict !== "cannot tell";
-    const score = canTell ? entry.score : Math.log(frame.measurements.laplacianVariance + 1e-9) - 1e6;
-    if (!best || score > best.score) best = { frame, score };
+    const detail = canTell ? entry.detail : Math.log(frame.measurements.laplacianVariance + 1e-9) - 1e6;
+    if (!best || detail > best.detail) best = { frame, detail };
   });
   return (best as { frame: SortFrame } | null)?.frame ?? null;
 }

@@ -6,7 +6,9 @@ import type { Edge } from "./edges";
 import { findPositions } from "./find-positions";
 import { findSeams } from "./find-seams";
 import { findSoftStacks, type SharedStrip } from "./soft-stacks";
+
 import { gatherStacks, joinFacts, type StackSeed } from "./gather-stacks";
+import { noiseFloorOf } from "./noise-floor";
 import { numberPlaces } from "./number-places";
 import { orderFrames, type BodySequence } from "./order-frames";
 import { PairStore } from "./pair-store";
@@ -87,11 +89,20 @@ function without(sequence: BodySequence, left: ReadonlySet<string>): BodySequenc
   return { ...sequence, frames: sequence.frames.filter((frame) => !left.has(frame.id)) };
 }
 
-function appraiseAll(seeds: readonly StackSeed[], store: PairStore, { facts, options }: SortInput): StackDraft[] {
+function appraiseAll(
+  seeds: readonly StackSeed[],
+  store: PairStore,
+  { frames, facts, options }: SortInput,
+): StackDraft[] {
   const isBracketed = areBracketed(seeds.map((seed) => seed.frames));
-  return seeds.map((seed, index) =>
-    appraiseStack({ ...seed, index, store, softLimit: options.softLimit, settled: facts.setAside, isBracketed }),
-  );
+  const shared = {
+    store,
+    softLimit: options.softLimit,
+    settled: facts.setAside,
+    isBracketed,
+    noise: noiseFloorOf(frames),
+  };
+  return seeds.map((seed, index) => appraiseStack({ ...seed, ...shared, index }));
 }
 
 /** A stack is of the camera that took its first frame. */

@@ -3,12 +3,13 @@ import { framesOf, type Place } from "@/lib/board/look-up";
 import type { Board, BoardFrame, BoardQuestion, BoardStack } from "@/lib/board/model";
 import { questionTile } from "@/lib/board/question-tile";
 import { placeOfName } from "@/lib/board/tile-name";
+import { isGathered } from "@/lib/sorting/gathered-key";
 import type { AnswerAction } from "@/lib/sorting/types";
 
 /**
  * Closes the open questions that changes answer by the way, or leave without meaning: nobody is asked what has just
  * been decided by hand. A question goes where
- * - one of its stacks is gone;
+ * - one of its stacks is gone (of many doubts gathered into one question, all of them are gone or elsewhere);
  * - what one of its answers would do has been done;
  * - all frames that it is about have been moved, set aside or brought back, whatever it proposed;
  * - it asks about a hole and a stack was put there; about too few frames and there are enough now; about two stacks'
@@ -73,6 +74,8 @@ function placeOf({ row = null, column = null }: { row?: number | null; column?: 
 
 function isAnswered(question: BoardQuestion, doing: Doing): boolean {
   const { frameIds, stackIds, answers } = question;
+  // One of many doubts: the others are still to be answered.
+  if (isGathered(question.key)) return stackIds.every((id) => !doing.after.stacks.has(id) || doing.placed.has(id));
   if (stackIds.some((id) => !doing.after.stacks.has(id))) return true;
   if (frameIds.length > 0 && frameIds.every((id) => doing.decidedFrames.has(id))) return true;
   if (answers.some(({ action }) => isDone(doing.after, action) && !isDone(doing.before, action))) return true;

@@ -20,7 +20,7 @@ export const boardKeys = {
 export function boardQuery(projectId: string) {
   return queryOptions({
     queryKey: boardKeys.board(projectId),
-    queryFn: ({ signal }) => fetchJson(`/api/projects/${projectId}/board`, boardSchema, { signal }),
+    queryFn: ({ signal }) => fetchJson(`/api/projects/${projectId}/board?texts=tokens`, boardSchema, { signal }),
     structuralSharing: keepNewer,
   });
 }

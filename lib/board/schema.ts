@@ -143,5 +143,11 @@ export const boardSchema: z.ZodType<Board> = z.object({
   duplicates: z.array(z.object({ name: z.string(), folder: z.string().nullable(), of: z.string() })),
 });
 
-/** Query of the board route. */
-export const boardQuerySchema = z.object({ since: z.coerce.number().int().min(0).optional() });
+/**
+ * Query of the board route. `texts=tokens`: what was said of tiles is left in tokens (`name-tokens.ts`), as pages need
+ * that go on changing the board; without it all texts are in the names that tiles have now. `since` answers tokens.
+ */
+export const boardQuerySchema = z.object({
+  since: z.coerce.number().int().min(0).optional(),
+  texts: z.literal("tokens").optional(),
+});

@@ -1,4 +1,5 @@
 import type { StackDraft } from "./draft";
+import { gatheredKey } from "./gathered-key";
 import { joinChance } from "./join-chances";
 import { shiftFraction } from "./judge-pair";
 import { isKept, nameOf, tileOf, type SortedDraft } from "./sorted-draft";
@@ -15,8 +16,11 @@ const WEAKLY = 0.35;
 
 type Answers = ProposedQuestion["answers"];
 
-/** Frames at the border of two neighbouring stacks that may belong to the other one. */
-export function questionsBetween(draft: SortedDraft): ProposedQuestion[] {
+/**
+ * Frames at the border of two neighbouring stacks that may belong to the other one.
+ * @param settled - keys of what was answered before: not gathered with the rest
+ */
+export function questionsBetween(draft: SortedDraft, settled: ReadonlySet<string>): ProposedQuestion[] {
   const homes = new Map<string, StackDraft>();
   for (const stack of draft.stacks) {
     if (isKept(draft, stack)) for (const { frame } of stack.frames) homes.set(frame.id, stack);
@@ -27,7 +31,7 @@ export function questionsBetween(draft: SortedDraft): ProposedQuestion[] {
     if (!before || !after || before.fixed?.byPerson || after.fixed?.byPerson) return [];
     return [before === after ? askJoined(draft, join, after) : askCut(draft, join, before, after)];
   });
-  return gather(questions);
+  return gather(questions.filter(({ key }) => !settled.has(key)));
 }
 
 function gather(questions: readonly ProposedQuestion[]): ProposedQuestion[] {
@@ -38,7 +42,10 @@ function gather(questions: readonly ProposedQuestion[]): ProposedQuestion[] {
   return [
     {
       ...first,
-      key: "between-stacks several",
+      key: gatheredKey(
+        first.kind,
+        questions.map(({ key }) => key),
+      ),
       message: `Are the stacks cut at the right frames?`,
       evidence: `At ${questions.length} frames neither picture nor pause says clearly where one tile ends, in ${tiles.slice(0, 12).join(", ")}${tiles.length > 12 ? " and more" : ""}.`,
       frameIds,

@@ -1,6 +1,7 @@
 import { emptyPlaces } from "@/lib/board/empty-tiles";
 import { holeToken, type Hole, type HoleLine } from "@/lib/board/name-tokens";
 import { framesInUse, type StackDraft } from "./draft";
+import { gatheredKey } from "./gathered-key";
 import { isKept, nameOf, percent, tileOf, type SortedDraft } from "./sorted-draft";
 import type { ProposedQuestion } from "./types";
 
@@ -73,7 +74,10 @@ function gather(
   return [
     {
       ...first,
-      key: `${first.kind} several`,
+      key: gatheredKey(
+        first.kind,
+        questions.map(({ key }) => key),
+      ),
       message: message(questions.length),
       evidence: evidence ? `${evidence}: ${list}` : list,
       frameIds: questions.flatMap((question) => question.frameIds),

@@ -5,6 +5,7 @@ import { joinChance } from "./join-chances";
 import { shiftFraction } from "./judge-pair";
 import { pauseSeconds } from "./pauses";
 import { placeChances } from "./place-chances";
+import { doubtsOf } from "./gathered-key";
 import { questionsBetween } from "./questions-between";
 import { questionsOfFrames } from "./questions-of-frames";
 import { questionsOfGrid } from "./questions-of-grid";
@@ -25,10 +26,10 @@ export const ENGINE_VERSION = "3";
 export function writeProposal(draft: SortedDraft, facts: SortFacts): Proposal {
   const kept = draft.stacks.filter((stack) => isKept(draft, stack));
   const chances = placeChances(draft);
-  const settled = new Set(facts.settledQuestionKeys);
+  const settled = new Set(facts.settledQuestionKeys.flatMap(doubtsOf));
   const questions = [
     ...questionsOfFrames(draft),
-    ...questionsBetween(draft),
+    ...questionsBetween(draft, settled),
     ...questionsOfPlaces(draft, chances),
     ...questionsOfGrid(draft, settled),
   ]

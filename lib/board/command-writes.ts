@@ -15,11 +15,13 @@ import { unmeasuredSeams } from "@/lib/board/current-seams";
 import type { Board } from "@/lib/board/model";
 import { planCommand } from "@/lib/board/plan-command";
 import { requestMeasuring } from "@/lib/board/measure-writes";
+import { planInverted } from "@/lib/board/plan-inverted";
 import { forgetBoard, getPlanningBoard, keepBoard } from "@/lib/board/planning-reads";
 import { storeDifference } from "@/lib/board/row-writes";
 import { describeCommand } from "@/lib/board/sentence";
 import { stacksToMeasure, touchedTiles } from "@/lib/board/touched";
 import { type Plan, planUndo, planUndoBackTo } from "@/lib/board/undo-reads";
+import { requireWholeBoard } from "@/lib/board/whole-board";
 import { AppError } from "@/lib/errors/app-error";
 import { publish } from "@/lib/events/publish";
 import { type ProjectId, userIdSchema, type UserId } from "@/lib/ids";
@@ -57,9 +59,12 @@ async function carryOut(tx: Transaction, order: Order): Promise<CommandAnswer> {
   const board = await getPlanningBoard(tx, projectId);
   let afterRevision: number | null = null;
   try {
-    const plan = await planOrder(tx, board, order);
-    afterRevision = plan.afterRevision;
+    const asked = await planOrder(tx, board, order);
+    afterRevision = asked.afterRevision;
+    const plan = { ...asked, steps: presentSteps(board, asked, order.access) };
     const after = { ...applyChanges(board, plan.steps), revision: board.revision + 1 };
+    // Going back to before a step makes a board that was there.
+    if (order.command.type !== "undo-back-to") requireWholeBoard(board, after);
     await requireShares(tx, projectId, board, after);
     await storeDifference(tx, board, after, { ...order, projectId, withdrawn: withdrawnBy(plan.steps) });
     await record(tx, order, { before: board, after, plan });
@@ -69,6 +74,10 @@ async function carryOut(tx: Transaction, order: Order): Promise<CommandAnswer> {
     if (error instanceof ChangeConflict) throw await explainConflict(tx, projectId, board, error, afterRevision);
     throw error;
   }
+}
+
+function presentSteps(board: Board, { steps, undoes }: Plan, access: ProjectAccess): readonly Change[] {
+  return undoes === null ? steps : planInverted(board, steps, allows(access.role, "manage"));
 }
 
 function withdrawnBy(steps: readonly Change[]): Set<string> {

@@ -54,8 +54,16 @@ export function moveTo(board: Board, frames: readonly BoardFrame[], toStackId: s
   return [
     ...moves,
     ...[...left].flatMap((stackId) => afterLeaving(board, stackId, { leaving: movingIds, emptied })),
-    ...(moves.length === 0 ? [] : unsettle(board, toStackId)),
+    ...(moves.length === 0 ? [] : [...unsettle(board, toStackId), ...firstReference(board, toStackId, moving)]),
   ];
+}
+
+/** A stack that had no frame in use has none as its reference: with others it may. */
+function firstReference(board: Board, stackId: string | null, coming: readonly BoardFrame[]): Change[] {
+  const stack = board.stacks.find(({ id }) => id === stackId);
+  if (stack?.referenceId !== null) return [];
+  const referenceId = sharpestInUse([...framesOf(board, stack.id), ...coming]);
+  return referenceId === null ? [] : [setReference(stack, referenceId)];
 }
 
 /** What a person called settled were its frames as they were: with others it must be looked at again. */

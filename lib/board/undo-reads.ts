@@ -17,6 +17,7 @@ import type { ProjectId } from "@/lib/ids";
 
 /** What a command comes to before it is stored. */
 export interface Plan {
+  /** Of an undo, before what others did since is taken into account: `planInverted`. */
   readonly steps: readonly Change[];
   /** Its sentence in the record. */
   readonly describe: (after: Board) => string;

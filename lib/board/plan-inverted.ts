@@ -38,7 +38,9 @@ function withPresentStacks(board: Board, changes: readonly Change[]): Change[] {
 
 /** A stack that a lead has given to somebody since does not go by an editor's undo. */
 function requireDivisionKept(inverted: readonly Change[], changes: readonly Change[]): void {
-  const was = new Map(inverted.flatMap((change) => (change.on === "no-stack" ? [[change.stack.id, change.stack]] : [])));
+  const was = new Map(
+    inverted.flatMap((change) => (change.on === "no-stack" ? [[change.stack.id, change.stack]] : [])),
+  );
   for (const change of changes) {
     if (change.on !== "no-stack") continue;
     const { id, shareUserId } = change.stack;

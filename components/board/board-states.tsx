@@ -92,8 +92,9 @@ export function BoardNews({ projectId, progress, sortError, isStale, onRetry }: 
       )}
       {isWorking && (
         <span role="status" className="figures">
-          {groupDigits(progress.analysed + progress.failed)} of {countOf(progress.total, "file")} measured; the board
-          shows what is sorted so far
+          {progress.analysed + progress.failed < progress.total
+            ? `${groupDigits(progress.analysed + progress.failed)} of ${countOf(progress.total, "file")} measured; the board shows what is sorted so far`
+            : "Sorting again; what people decided stays"}
         </span>
       )}
       {failed > 0 && (

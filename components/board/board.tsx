@@ -15,6 +15,8 @@ import { useLiveBoard } from "@/components/board/use-live-board";
 import { SaveState } from "@/components/together/save-state";
 import { Together } from "@/components/together/together";
 import { useBoardWork } from "@/components/together/use-board-work";
+import { useShownStatus } from "@/components/together/use-shown-status";
+import { useSortingNews } from "@/components/together/use-sorting-news";
 import { useOnline } from "@/components/ui/use-online";
 import { indexBoard } from "@/lib/board/board-index";
 
@@ -34,6 +36,8 @@ export function Board({ projectId, userId, canEdit }: BoardProps) {
   const work = useBoardWork({ projectId, userId, canEdit, confirmed });
   const { board } = work;
   const index = useMemo(() => (board ? indexBoard(board) : null), [board]);
+  useShownStatus(projectId, progress ? index : null);
+  useSortingNews({ index, isSorted: progress?.sorted, isFetching, say: work.say });
   const place = useBoardPlace();
   const isWide = useMedia(WIDE);
   const isOnline = useOnline();

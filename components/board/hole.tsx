@@ -1,4 +1,5 @@
 import Link from "next/link";
+import { useBoardCommands } from "@/components/board/board-commands";
 import { classNames } from "@/components/ui/class-names";
 import type { BoardHole } from "@/lib/board/board-index";
 import type { BoardLayout } from "@/lib/board/layout";
@@ -26,7 +27,10 @@ interface HoleProps {
 /** A place with no stack: the loudest thing on the sheet; what it costs and what to do. */
 export function Hole({ projectId, hole, layout, isAsked }: HoleProps) {
   const loss =
-    hole.lostShare > 0.005 ? `${percent(hole.lostShare)} of the tile is lost` : "its neighbours cover all of it";
+    hole.lostShare > 0.005
+      ? `${percent(hole.lostShare)} of this tile's area is in no frame`
+      : "its neighbours cover all of it";
+  const { canEdit } = useBoardCommands();
   const isRoomy = hasHoleLink(layout);
   return (
     <div
@@ -53,7 +57,7 @@ export function Hole({ projectId, hole, layout, isAsked }: HoleProps) {
             {layout.size === "full" ? `${hole.name} is a hole` : hole.name}
           </span>
           {isRoomy && <span>{loss}</span>}
-          {isRoomy && (
+          {isRoomy && canEdit && (
             // Arrow keys reach it as they reach a tile: in the tab order it would stand between a tile and its bench.
             <Link
               href={`/projects/${projectId}/intake`}

@@ -66,7 +66,7 @@ test("a bracket on the rail chooses its tile", async () => {
 
 test("a hole says what it costs and what to do", () => {
   render(<Harness board={makeEventfulBoard()} />);
-  const hole = screen.getByRole("group", { name: /^B5 is a hole: \d+ % of the tile is lost$/ });
+  const hole = screen.getByRole("group", { name: /^B5 is a hole: \d+ % of this tile's area is in no frame$/ });
   expect(within(hole).getByRole("link", { name: "Bring in its frames" }).getAttribute("href")).toBe(
     "/projects/project-1/intake",
   );

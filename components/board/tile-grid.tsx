@@ -116,7 +116,7 @@ export function TileGrid({ index, chosen, onChoose, isAllSeams, asked, askedPlac
   const onKeyDown = (event: KeyboardEvent) => {
     const name = event.target instanceof HTMLElement ? event.target.dataset.tile : undefined;
     const from = name === undefined ? undefined : (index.tiles.get(name) ?? index.holes.get(name));
-    const next = from ? neighbourPlace(index, from, event.key, hasHoleLink(layout)) : null;
+    const next = from ? neighbourPlace(index, from, event.key, canEdit && hasHoleLink(layout)) : null;
     // The keys belong to what is carried.
     if (hand.get().carried) return;
     if (event.key === "Escape" && chosen !== null) onChoose(null);

@@ -30,7 +30,7 @@ export function ChangeRecord({ projectId, canEdit }: ChangeRecordProps) {
     <div className="mx-auto w-full max-w-5xl px-4 py-8 sm:px-5">
       <h1 className="text-2xl font-bold">Change record</h1>
       <p className="mt-2 max-w-prose">
-        Every step on the board, the newest first. Nothing in it is ever erased: taking back is a step of its own.
+        Every step on the board, the newest first. Nothing in it is ever erased: an undo is a step of its own.
       </p>
       <RecordFilterBar key={filter.tile} filter={filter} people={pages[0]?.people ?? []} onChange={change} />
       {record.error && (
@@ -73,18 +73,18 @@ interface StepProps {
 }
 
 function Step({ projectId, entry, onBack }: StepProps) {
-  const { person, sentence, tiles, atMs, isUndone, revision } = entry;
+  const { person, sentence, tiles, atMs, isUndone } = entry;
   return (
     <li className="flex flex-wrap items-baseline gap-x-4 gap-y-1 border-b border-hairline py-2.5">
-      <span className="figures w-38 shrink-0 text-sm text-quiet">
-        <LocalTime atMs={atMs} />
+      <span className="figures w-44 shrink-0 text-sm text-quiet">
+        <LocalTime atMs={atMs} withSeconds />
       </span>
       <span className="min-w-0 flex-1 basis-64 break-words">
-        <strong>{person?.name ?? "The computation"}</strong> {sentence === "" ? "sorted the frames" : sentence}
+        <strong>{person?.name ?? "Stackyard"}</strong> {sentence === "" ? "sorted the frames" : sentence}
         {isUndone && (
           <>
             {" "}
-            <Chip>taken back</Chip>
+            <Chip>undone</Chip>
           </>
         )}
         {tiles.length > 0 && (
@@ -103,7 +103,7 @@ function Step({ projectId, entry, onBack }: StepProps) {
         )}
       </span>
       {onBack && (
-        <Button size="slim" tone="bare" aria-label={`Undo back to here, step ${revision}`} onClick={onBack}>
+        <Button size="slim" tone="bare" aria-label={`Undo back to here: ${sentence}`} onClick={onBack}>
           Undo back to here
         </Button>
       )}

@@ -4,6 +4,7 @@ import { useMutation, useQuery, useQueryClient } from "@tanstack/react-query";
 import { Button } from "@/components/ui/button";
 import { Dialog, DialogAnswers } from "@/components/ui/dialog";
 import { Notice } from "@/components/ui/notice";
+import { LocalTime } from "@/components/ui/local-time";
 import type { RecordEntry } from "@/lib/board/command-answers";
 import { sendCommand } from "@/lib/board/mutations";
 import { boardKeys, stepsAfterQuery } from "@/lib/board/queries";
@@ -40,7 +41,8 @@ export function UndoBackDialog({ projectId, entry, onClose }: UndoBackDialogProp
       description={
         <>
           <p>
-            The board goes back to how it was after “{entry.person?.name ?? "The computation"} {entry.sentence}”.
+            The board goes back to how it was after “{entry.person?.name ?? "Stackyard"} {entry.sentence}”,{" "}
+            <LocalTime atMs={entry.atMs} withSeconds />.
           </p>
           <p className="mt-2" role="status">
             {later.data ? stepsText(later.data) : "Counting the steps…"} This is one new step in the record and can be
@@ -55,7 +57,7 @@ export function UndoBackDialog({ projectId, entry, onClose }: UndoBackDialogProp
         </Notice>
       )}
       <DialogAnswers>
-        <Button tone="petrol" disabled={!later.data} isBusy={going.isPending} onClick={() => going.mutate()}>
+        <Button tone="petrol" disabled={!later.data?.length} isBusy={going.isPending} onClick={() => going.mutate()}>
           Undo back to here
         </Button>
         <Button onClick={onClose}>Leave it</Button>
@@ -64,10 +66,10 @@ export function UndoBackDialog({ projectId, entry, onClose }: UndoBackDialogProp
   );
 }
 
-/** "5 steps are taken back: 3 of Mona, 2 of Jonas." */
+/** "5 steps are undone: 3 of Mona, 2 of Jonas." */
 export function stepsText(later: readonly { readonly name: string; readonly count: number }[]): string {
   const all = later.reduce((sum, { count }) => sum + count, 0);
-  if (all === 0) return "Nothing has been done since.";
+  if (all === 0) return "Nothing done since still stands.";
   const whose = later.map(({ name, count }) => `${count} of ${name}`).join(", ");
-  return `${countOf(all, "step")} ${all === 1 ? "is" : "are"} taken back: ${whose}.`;
+  return `${countOf(all, "step")} ${all === 1 ? "is" : "are"} undone: ${whose}.`;
 }

@@ -1,8 +1,7 @@
 "use client";
 
-import { useQuery } from "@tanstack/react-query";
+import { useProjectStatus } from "@/components/shell/use-project-status";
 import { countOf } from "@/lib/board/words";
-import { projectStatusQuery } from "@/lib/projects/queries";
 import type { ProjectStatus } from "@/lib/projects/schema";
 
 interface GridSizeProps {
@@ -13,7 +12,7 @@ interface GridSizeProps {
 
 /** "3 rows × 6 columns"; nothing while there is no grid. */
 export function GridSize({ projectId, initial }: GridSizeProps) {
-  const { data } = useQuery({ ...projectStatusQuery(projectId), initialData: initial });
+  const { status: data } = useProjectStatus(projectId, initial);
   if (data.rows === 0 || data.columns === 0) return null;
   return (
     <p className="figures text-sm text-quiet max-sm:order-last max-sm:w-full">

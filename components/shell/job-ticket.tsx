@@ -6,13 +6,13 @@ import { usePathname } from "next/navigation";
 import { Perforation } from "@/components/shell/perforation";
 import { ticketLines, type TicketLine } from "@/components/shell/ticket-lines";
 import { TicketProblem } from "@/components/shell/ticket-problem";
+import { useProjectStatus } from "@/components/shell/use-project-status";
 import { TicketWords } from "@/components/shell/ticket-words";
 import { classNames } from "@/components/ui/class-names";
 import { useOnline } from "@/components/ui/use-online";
 import { useProjectEvents } from "@/lib/events/use-project-events";
 import { progressQuery } from "@/lib/frames/queries";
 import type { Progress } from "@/lib/frames/schema";
-import { projectStatusQuery } from "@/lib/projects/queries";
 import type { ProjectStatus } from "@/lib/projects/schema";
 
 // Only what is built: a view joins the ticket together with its page.
@@ -67,12 +67,8 @@ function useTicketLines({ projectId, progress, status }: JobTicketProps) {
     initialData: progress,
     refetchInterval: ({ state }) => (isBusy(state.data) ? BUSY_POLL_MS : IDLE_POLL_MS),
   });
-  const project = useQuery({
-    ...projectStatusQuery(projectId),
-    initialData: status,
-    refetchInterval: isBusy(intake.data) ? BUSY_POLL_MS : IDLE_POLL_MS,
-  });
-  return { lines: ticketLines({ ...intake.data, ...project.data }), problem: intake.error ?? project.error };
+  const project = useProjectStatus(projectId, status, isBusy(intake.data) ? BUSY_POLL_MS : IDLE_POLL_MS);
+  return { lines: ticketLines({ ...intake.data, ...project.status }), problem: intake.error ?? project.error };
 }
 
 function isBusy(progress: Progress | undefined): boolean {

@@ -44,8 +44,9 @@ function boardLine({ received, sorted, tiles, openQuestions }: TicketStatus): Ti
   return { text: `${countOf(tiles, "tile")}, no questions`, tone: "ink" };
 }
 
-function handoverLine({ sorted, tiles, openQuestions }: TicketStatus): TicketLine {
-  if (!sorted || tiles === 0) return { text: "not yet", tone: "quiet" };
+function handoverLine({ tiles, openQuestions }: TicketStatus): TicketLine {
+  // While it is sorted again the board stands as it was, and so does what can be handed over.
+  if (tiles === 0) return { text: "not yet", tone: "quiet" };
   if (openQuestions > 0) return { text: `ready, ${openQuestions} open`, tone: "ochre" };
   return { text: "ready", tone: "ink" };
 }

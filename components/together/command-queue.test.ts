@@ -205,7 +205,7 @@ test("a refused command about other frames of the same stack rested on nothing; 
   queue.add(given(0));
   queue.add(given(1, "frame-18"));
   const command = { id: ids[2] ?? "", revision: 1, type: "undo", commandId: ids[0] ?? "" } as const;
-  queue.add({ ...given(2), command, sentence: "took back: step 0" });
+  queue.add({ ...given(2), command, sentence: "undid: step 0" });
   await queue.whenIdle();
   expect(queue.getState().refusals.map(({ follows }) => follows?.sentence ?? null)).toEqual([null, null, "step 0"]);
 });

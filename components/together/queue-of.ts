@@ -42,7 +42,7 @@ function noteStep(client: QueryClient, projectId: string, queue: CommandQueue, {
   const { queryKey } = undoQuery(projectId);
   if (given && given.command.type !== "undo-back-to") {
     const step = { commandId: id, sentence: given.sentence };
-    const isTakingBack = given.command.type === "undo" && !given.sentence.startsWith("did again");
+    const isTakingBack = given.command.type === "undo" && !given.sentence.startsWith("redid");
     client.setQueryData(queryKey, isTakingBack ? { undo: null, redo: step } : { undo: step, redo: null });
   }
   void client.invalidateQueries({ queryKey });

@@ -34,7 +34,7 @@ export function RefusalDialog({ board, refusals, onAnswer }: RefusalDialogProps)
         )}
         {conflict?.lastChange && (
           <State term="Changed by">
-            {conflict.lastChange.person ?? "The computation"} {conflict.lastChange.sentence}{" "}
+            {conflict.lastChange.person ?? "Stackyard"} {conflict.lastChange.sentence}{" "}
             <LocalTime atMs={conflict.lastChange.atMs} />
           </State>
         )}
@@ -68,7 +68,7 @@ function State({ term, children }: { readonly term: string; readonly children: R
 }
 
 function titleOf({ conflict, isRepeatable, given }: Refusal): string {
-  if (conflict) return given.command.type === "undo" ? "This cannot be taken back" : "This has changed meanwhile";
+  if (conflict) return given.command.type === "undo" ? "This cannot be undone" : "This has changed meanwhile";
   return isRepeatable ? "The server could not do this" : "This was not done";
 }
 

@@ -16,7 +16,7 @@ export function SortAnew({ projectId }: { readonly projectId: string }) {
   return (
     <>
       <Button size="slim" tone="bare" onClick={() => setIsOpen(true)}>
-        Sort anew
+        Sort again
       </Button>
       {isOpen && <SortAnewDialog projectId={projectId} onClose={() => setIsOpen(false)} />}
     </>
@@ -29,14 +29,14 @@ function SortAnewDialog({ projectId, onClose }: { readonly projectId: string; re
     mutationFn: () => askToSort(projectId),
     onSuccess: () => {
       onClose();
-      announce("The frames are sorted anew. The board changes by itself when that is done.");
+      announce("The frames are sorted again. The board changes by itself when that is done.");
     },
   });
   return (
     <Dialog
       isOpen
       onOpenChange={(isOpen) => !isOpen && onClose()}
-      title="Sort the frames anew?"
+      title="Sort the frames again?"
       description={
         <p>
           What nobody decided is found again from the pictures and their times: which frames belong together, and where
@@ -51,7 +51,7 @@ function SortAnewDialog({ projectId, onClose }: { readonly projectId: string; re
       )}
       <DialogAnswers>
         <Button tone="petrol" isBusy={asking.isPending} onClick={() => asking.mutate()}>
-          Sort anew
+          Sort again
         </Button>
         <Button onClick={onClose}>Keep it as it is</Button>
       </DialogAnswers>

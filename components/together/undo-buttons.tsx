@@ -14,7 +14,7 @@ export function UndoButtons() {
       <BarButton label="Undo" what={undoable} nothing="You have changed nothing that could be undone." onPress={undo}>
         <Undo2 aria-hidden className="size-4" />
       </BarButton>
-      <BarButton label="Redo" what={redoable} nothing="You have taken nothing back." onPress={redo}>
+      <BarButton label="Redo" what={redoable} nothing="You have undone nothing." onPress={redo}>
         <Redo2 aria-hidden className="size-4" />
       </BarButton>
     </div>

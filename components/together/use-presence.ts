@@ -3,7 +3,7 @@
 import { useQuery, useQueryClient } from "@tanstack/react-query";
 import { useEffect, useMemo } from "react";
 import { useOnline } from "@/components/ui/use-online";
-import { presenceQuery, sendPresence } from "@/lib/presence/queries";
+import { presenceQuery, sendLeaving, sendPresence } from "@/lib/presence/queries";
 
 /** A third of what the server takes for silence (45 s), ms: two words may be lost. */
 const AGAIN_MS = 15_000;
@@ -28,6 +28,14 @@ export function usePresence(projectId: string, tile: string | null): void {
       document.removeEventListener("visibilitychange", tell);
     };
   }, [client, projectId, tile]);
+  useEffect(() => {
+    const leave = () => sendLeaving(projectId);
+    window.addEventListener("pagehide", leave);
+    return () => {
+      window.removeEventListener("pagehide", leave);
+      leave();
+    };
+  }, [projectId]);
 }
 
 /** Who else has which tile open, by the tile's name. */

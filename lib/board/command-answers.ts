@@ -74,8 +74,12 @@ export const recordSchema = z.object({
       sentence: z.string(),
       tiles: z.array(z.string()),
       atMs: z.number(),
-      /** It has been taken back. */
+      /** It has been undone. */
       isUndone: z.boolean(),
+      /** Id of the step that it undoes; null: none. */
+      undoes: z.string().nullable(),
+      /** Everything after this revision is undone by it; null: it is no such step. */
+      undoesAfter: z.int().nullable(),
     }),
   ),
   /** `before` of the next page; null: that is all. */

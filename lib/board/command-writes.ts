@@ -155,7 +155,7 @@ async function record(
     payload: command,
     steps: plan.steps,
     sentence: plan.describe(after),
-    tiles: touchedTiles(before, after, plan.steps),
+    tiles: [...(plan.tiles ?? touchedTiles(before, after, plan.steps))],
     undoes: plan.undoes,
     atMs: nowMs,
   });

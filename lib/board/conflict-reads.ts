@@ -34,8 +34,8 @@ export async function explainConflict(
 function tell(message: string, name: string | null, { lastChange }: Conflict, isUndo: boolean): string {
   const what = name === null ? message : `${name}: ${message}`;
   if (!lastChange) return what;
-  const did = `${lastChange.person ?? "The computation"} ${lastChange.sentence}`;
-  return isUndo ? `${did} after this. ${what} Take that back first, or set it right by hand.` : `${what} ${did}.`;
+  const did = `${lastChange.person ?? "Stackyard"} ${lastChange.sentence}`;
+  return isUndo ? `${did} after this. ${what} Undo that first, or set it right by hand.` : `${what} ${did}.`;
 }
 
 function presentOf(board: Board, id: string): Conflict["present"] {

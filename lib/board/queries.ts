@@ -1,9 +1,16 @@
 import { infiniteQueryOptions, type QueryClient, queryOptions, replaceEqualDeep } from "@tanstack/react-query";
 import type { z } from "zod";
 import { applyChanges, type Change } from "@/lib/board/changes";
-import { boardSinceSchema, type RecordPage, recordSchema, undoStateSchema } from "@/lib/board/command-answers";
+import {
+  boardSinceSchema,
+  type RecordEntry,
+  type RecordPage,
+  recordSchema,
+  undoStateSchema,
+} from "@/lib/board/command-answers";
 import type { Board } from "@/lib/board/model";
 import { boardSchema } from "@/lib/board/schema";
+import { standingAfter } from "@/lib/board/standing";
 import { fetchJson } from "@/lib/http/fetch-json";
 
 export const boardKeys = {
@@ -72,22 +79,24 @@ function fetchRecord(
   return fetchJson(`/api/projects/${projectId}/record?${query}`, recordSchema, { signal });
 }
 
-/** How many steps came after a revision, and whose they are. */
+/** How many steps going back to a revision undoes, and whose they are. */
 export function stepsAfterQuery(projectId: string, revision: number) {
   return queryOptions({
     queryKey: [...boardKeys.record(projectId), "after", revision],
     queryFn: async ({ signal }) => {
-      const counts = new Map<string, number>();
+      const all: RecordEntry[] = [];
       let before: number | null = null;
       do {
         const page: RecordPage = await fetchRecord(projectId, { person: null, tile: null, before }, signal);
         const later = page.entries.filter((entry) => entry.revision > revision);
-        for (const { person } of later) {
-          const name = person?.name ?? "the computation";
-          counts.set(name, (counts.get(name) ?? 0) + 1);
-        }
+        all.push(...later);
         before = later.length < page.entries.length ? null : page.next;
       } while (before !== null);
+      const counts = new Map<string, number>();
+      for (const { person } of standingAfter(revision, all)) {
+        const name = person?.name ?? "Stackyard";
+        counts.set(name, (counts.get(name) ?? 0) + 1);
+      }
       return [...counts].map(([name, count]) => ({ name, count }));
     },
     staleTime: 0,

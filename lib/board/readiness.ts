@@ -28,7 +28,7 @@ export function openPoints(index: BoardIndex): OpenPoint[] {
     point(board.questions.length, {
       kind: "questions",
       text: countOf(board.questions.length, "open question"),
-      meaning: "The computation is not sure; its best guess is in the manifest.",
+      meaning: "Stackyard is not sure; its best guess is in the manifest.",
       // The board's docket walks through all of them.
       tile: null,
     }),

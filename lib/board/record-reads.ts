@@ -38,15 +38,16 @@ export async function listRecord(access: ProjectAccess, query: RecordQuery): Pro
     .limit(ENTRIES_A_PAGE + 1);
   const page = rows.slice(0, ENTRIES_A_PAGE);
   const undoing = await listUndoing(db, projectId);
-  const known = new Set(undoing.map(({ id }) => id));
-  const others = page.filter(({ id }) => !known.has(id)).map((row) => ({ ...row, undoesAfter: null }));
+  const afterOf = new Map(undoing.map(({ id, undoesAfter }) => [id, undoesAfter]));
+  const others = page.filter(({ id }) => !afterOf.has(id)).map((row) => ({ ...row, undoesAfter: null }));
   const undone = undoneSteps([...undoing, ...others]);
   return {
-    entries: page.map(({ userId, name, undoes: _undoes, ...entry }) => ({
+    entries: page.map(({ userId, name, ...entry }) => ({
       ...entry,
       tiles: [...entry.tiles],
       person: userId === null || name === null ? null : { id: userId, name },
       isUndone: undone.has(entry.id),
+      undoesAfter: afterOf.get(entry.id) ?? null,
     })),
     next: rows.length > ENTRIES_A_PAGE ? (page.at(-1)?.revision ?? null) : null,
     people: await listActors(projectId),

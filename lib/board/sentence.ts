@@ -73,15 +73,15 @@ function describeSettling({ target }: CommandOf<"settle">, { before }: Telling):
   return `answered "${question?.message ?? ""}" with "${label}"`;
 }
 
-/** "took back: moved HARB0019 from A3 to A4"; of a step that is itself a taking back, "did again: ...". */
+/** "undid: moved HARB0019 from A3 to A4"; of a step that is itself an undo, "redid: ...". */
 export function describeUndo(sentence: string): string {
-  if (sentence.startsWith(TAKEN_BACK)) return `${DONE_AGAIN}${sentence.slice(TAKEN_BACK.length)}`;
-  if (sentence.startsWith(DONE_AGAIN)) return `${TAKEN_BACK}${sentence.slice(DONE_AGAIN.length)}`;
-  return `${TAKEN_BACK}${sentence}`;
+  if (sentence.startsWith(UNDONE)) return `${REDONE}${sentence.slice(UNDONE.length)}`;
+  if (sentence.startsWith(REDONE)) return `${UNDONE}${sentence.slice(REDONE.length)}`;
+  return `${UNDONE}${sentence}`;
 }
 
-const TAKEN_BACK = "took back: ";
-const DONE_AGAIN = "did again: ";
+const UNDONE = "undid: ";
+const REDONE = "redid: ";
 
 function framesName(board: Board, ids: readonly string[]): string {
   if (ids.length !== 1) return countOf(ids.length, "frame");

@@ -14,7 +14,7 @@ import { sortJobRequest } from "@/lib/jobs/requests";
  * is done, it is done once.
  */
 export async function requestSortingAnew(access: ProjectAccess, nowMs: number): Promise<void> {
-  const sentence = "asked for a sorting anew, in which what people decided stays";
+  const sentence = "had the frames sorted again; what people decided stays";
   await writeTransaction(async (tx) => {
     const [project] = await tx
       .select({ isAnewWanted: projects.isAnewWanted })

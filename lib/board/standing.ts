@@ -33,6 +33,28 @@ export function undoneSteps(steps: readonly Undoing[]): Set<string> {
   return undone;
 }
 
+export interface LaterStep {
+  readonly id: string;
+  readonly type: string;
+  readonly isUndone: boolean;
+  readonly undoes: string | null;
+  readonly undoesAfter: number | null;
+}
+
+/**
+ * Of the steps after a revision those that going back to it truly undoes: without what is undone already, without the
+ * undos that did so, and without asking for a sorting, which by itself changes nothing.
+ * @param later - all recorded after the revision
+ */
+export function standingAfter<Step extends LaterStep>(revision: number, later: readonly Step[]): Step[] {
+  const laterIds = new Set(later.map(({ id }) => id));
+  return later.filter(({ type, isUndone, undoes, undoesAfter }) => {
+    if (isUndone || type === "sort-anew") return false;
+    if (undoes !== null) return !laterIds.has(undoes);
+    return undoesAfter === null || undoesAfter < revision;
+  });
+}
+
 export interface UndoStacks {
   /** What undo takes back, one after another: the newest first. */
   readonly undo: readonly RecordedStep[];

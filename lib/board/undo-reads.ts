@@ -1,5 +1,5 @@
 import "server-only";
-import { and, asc, desc, eq, gt, isNotNull, or, sql } from "drizzle-orm";
+import { and, asc, desc, eq, gt, isNotNull, lte, ne, or, sql } from "drizzle-orm";
 import type { Database, Transaction } from "@/db/client";
 import { users } from "@/db/schema/accounts";
 import { changes } from "@/db/schema/board";
@@ -10,7 +10,7 @@ import type { CommandOf } from "@/lib/board/command-schema";
 import { sumOfChanges } from "@/lib/board/diff-boards";
 import type { Board } from "@/lib/board/model";
 import { describeUndo } from "@/lib/board/sentence";
-import { undoneSteps } from "@/lib/board/standing";
+import { standingAfter, undoneSteps } from "@/lib/board/standing";
 import { countOf } from "@/lib/board/words";
 import { AppError } from "@/lib/errors/app-error";
 import type { ProjectId } from "@/lib/ids";
@@ -25,6 +25,8 @@ export interface Plan {
   readonly undoes: string | null;
   /** Everything after this revision is what it takes back; only what came later can be in its way. */
   readonly afterRevision: number | null;
+  /** Names of the tiles of the step that it undoes, as they were called then; none: those that the steps touch. */
+  readonly tiles?: readonly string[];
 }
 
 /**
@@ -44,6 +46,7 @@ export async function planUndo(
       revision: changes.revision,
       steps: changes.steps,
       sentence: changes.sentence,
+      tiles: changes.tiles,
     })
     .from(changes)
     .leftJoin(users, eq(users.id, changes.userId))
@@ -53,7 +56,7 @@ export async function planUndo(
   const undoing = await listUndoing(tx, access.projectId);
   const isUndone = undoneSteps([...undoing, { ...step, undoes: null, undoesAfter: null }]).has(step.id);
   if (isUndone || undoing.some(({ undoes }) => undoes === step.id)) {
-    throw new ChangeConflict("This step has been taken back already.", step.id);
+    throw new ChangeConflict("This step has been undone already.", step.id);
   }
   requireDivisionRight(access, step.steps);
   return {
@@ -61,6 +64,7 @@ export async function planUndo(
     describe: () => describeUndo(step.sentence),
     undoes: step.id,
     afterRevision: step.revision,
+    tiles: step.tiles,
   };
 }
 
@@ -75,22 +79,37 @@ export async function planUndoBackTo(
   { toRevision }: CommandOf<"undo-back-to">,
 ): Promise<Plan> {
   const rows = await tx
-    .select({ type: changes.type, steps: changes.steps, sentence: changes.sentence })
+    .select({
+      id: changes.id,
+      revision: changes.revision,
+      type: changes.type,
+      steps: changes.steps,
+      sentence: changes.sentence,
+    })
     .from(changes)
     .where(and(eq(changes.projectId, access.projectId), gt(changes.revision, toRevision)))
     .orderBy(desc(changes.revision));
   // Measuring follows what people do; by itself it is nothing to take back.
-  const done = rows.filter(({ type }) => type !== "measure");
-  if (done.length === 0) throw new ChangeConflict("Nothing has been done since.", "grid");
+  const recorded = rows.filter(({ type }) => type !== "measure");
+  const undoing = await listUndoing(tx, access.projectId);
+  const byId = new Map(undoing.map((step) => [step.id, step]));
+  const steps = recorded.map((row) => ({ ...row, ...(byId.get(row.id) ?? { undoes: null, undoesAfter: null }) }));
+  const undone = undoneSteps([...undoing, ...steps]);
+  const done = standingAfter(
+    toRevision,
+    steps.map((step) => ({ ...step, isUndone: undone.has(step.id) })),
+  );
+  if (done.length === 0) throw new ChangeConflict("Nothing done since still stands.", "grid");
   if (rows.some(({ sentence }) => sentence === "")) {
-    const detail = "A sorting since then was recorded without its steps, so it cannot be taken back.";
+    const detail = "A sorting since then was recorded without its steps, so it cannot be undone.";
     throw new ChangeConflict(`${detail} Choose a later step.`, "grid");
   }
+  const last = await nameLastStep(tx, access.projectId, toRevision);
   const taken = rows.flatMap(({ steps }) => invertChanges(steps));
   requireDivisionRight(access, taken);
   return {
     steps: sumOfChanges(board, applyChanges(board, taken), taken),
-    describe: () => `took back ${countOf(done.length, "step")}, back to step ${toRevision}`,
+    describe: () => `undid ${countOf(done.length, "step")}, back to ${last}`,
     undoes: null,
     afterRevision: null,
   };
@@ -98,6 +117,17 @@ export async function planUndoBackTo(
 
 /** The revision that a step goes back to; null: it takes back one step, or none. */
 export const undoesAfter = sql<number | null>`json_extract(${changes.payload}, '$.toRevision')`;
+
+/** The step that stays as the last one, in its words. */
+async function nameLastStep(tx: Transaction, projectId: ProjectId, toRevision: number): Promise<string> {
+  const [step] = await tx
+    .select({ sentence: changes.sentence })
+    .from(changes)
+    .where(and(eq(changes.projectId, projectId), lte(changes.revision, toRevision), ne(changes.type, "measure")))
+    .orderBy(desc(changes.revision))
+    .limit(1);
+  return step && step.sentence !== "" ? `“${step.sentence}”` : "the beginning";
+}
 
 /** The steps of a project that take others back, oldest first. */
 export async function listUndoing(db: Pick<Database, "select">, projectId: ProjectId) {

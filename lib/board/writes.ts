@@ -225,7 +225,15 @@ async function recordSorting(tx: Transaction, projectId: ProjectId, sorting: Sor
     questions: proposal.questions.length,
   };
   const result = `${countOf(counts.frames, "frame")} into ${countOf(counts.stacks, "stack")}`;
-  const sentence = isAnew ? `sorted ${result} anew; what people decided stayed` : `sorted ${result}`;
+  const sentence = isAnew
+    ? `sorted again: ${movedText(sorting.steps)}; what people decided stayed`
+    : `sorted ${result}`;
   const payload = { engineVersion: proposal.engineVersion, isAnew, ...counts };
   await tx.insert(changes).values({ id: newId(), projectId, userId: null, type: "sort", payload, sentence, ...change });
+}
+
+function movedText(steps: readonly Change[]): string {
+  const moved = steps.filter((step) => step.on === "frame" && "stackId" in step.after).length;
+  if (moved > 0) return `${countOf(moved, "frame")} moved`;
+  return steps.length === 0 ? "nothing changed" : "no frame moved";
 }

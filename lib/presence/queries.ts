@@ -23,6 +23,17 @@ export function sendPresence(projectId: string, tile: string | null) {
   });
 }
 
+/** Says that the board is being closed: also from a page that is going, so nothing waits for the answer. */
+export function sendLeaving(projectId: string): void {
+  fetch(presenceUrl(projectId), {
+    method: "POST",
+    headers: { "content-type": "application/json" },
+    body: JSON.stringify({ tile: null, isLeaving: true }),
+    keepalive: true,
+    // Where it does not arrive, silence says the same a little later.
+  }).catch(() => undefined);
+}
+
 function presenceUrl(projectId: string): string {
   return `/api/projects/${projectId}/presence`;
 }

@@ -35,6 +35,19 @@ export async function notePresence(
   );
 }
 
+/** Takes a session off one board: its page was left or closed. Another tab of it says again within seconds that it is here. */
+export async function leaveBoard(
+  { projectId }: ProjectAccess,
+  { sessionId }: Pick<SignedInUser, "sessionId">,
+  nowMs: number,
+): Promise<void> {
+  await writeTransaction((tx) =>
+    tellingOfChanges(tx, projectId, nowMs, async () => {
+      await tx.delete(presences).where(and(eq(presences.projectId, projectId), eq(presences.sessionId, sessionId)));
+    }),
+  );
+}
+
 /** Clears whoever has gone without a word, and tells the others. For the worker, every minute. */
 export async function prunePresences(nowMs: number): Promise<void> {
   const rows = await database()

@@ -7,6 +7,9 @@ export const projectKeys = {
   status: (projectId: string) => ["projects", projectId, "project", "status"] as const,
 };
 
+/** What the board that is open shows of it; nobody fetches it. */
+export const shownStatusKey = (projectId: string) => ["projects", projectId, "shown status"] as const;
+
 /** How far a project is: for the job ticket. */
 export function projectStatusQuery(projectId: string) {
   return queryOptions({

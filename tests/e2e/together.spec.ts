@@ -237,7 +237,7 @@ test("a change that rests on what is no longer so is explained with both states,
   expect((await give(jonasPage.request, away.there)).status()).toBe(200);
   await expect(tileWith(page, "A3", 7)).toBeVisible();
   await page.getByRole("button", { name: "Undo" }).click();
-  const refused = page.getByRole("dialog", { name: "This cannot be taken back" });
+  const refused = page.getByRole("dialog", { name: "This cannot be undone" });
   await expect(refused).toContainText(/Jonas Kepp moved .* to A3/);
   await refused.getByRole("button", { name: "Close" }).click();
   await expect(refused).toBeHidden();
@@ -256,8 +256,8 @@ test("a frame is found by its number, and its tile opens with the focus on it", 
   await field.press("Enter");
   await expect(page.getByRole("region", { name: "Frames of C2" })).toBeVisible();
   await expect(page.locator(`[data-frame="${frame.id}"] :focus, [data-frame="${frame.id}"]:focus`)).toBeVisible();
-  await page.getByRole("button", { name: "Sort anew" }).click();
-  const dialog = page.getByRole("dialog", { name: "Sort the frames anew?" });
+  await page.getByRole("button", { name: "Sort again" }).click();
+  const dialog = page.getByRole("dialog", { name: "Sort the frames again?" });
   await expect(dialog).toContainText("Everything that a person placed, set aside or settled stays as it is.");
   await expectAccessible(page, "sort anew");
   await dialog.getByRole("button", { name: "Keep it as it is" }).click();
@@ -267,7 +267,7 @@ test("a frame is found by its number, and its tile opens with the focus on it", 
 test("a viewer sees the changes and no controls, and is refused by the server", async ({ browser }) => {
   const page = await openBoard(browser, wim);
   await expect(page.getByRole("button", { name: "Undo" })).toHaveCount(0);
-  await expect(page.getByRole("button", { name: "Sort anew" })).toHaveCount(0);
+  await expect(page.getByRole("button", { name: "Sort again" })).toHaveCount(0);
   await expect(page.getByText(/^All changes saved/)).toHaveCount(0);
   const { there } = await pick(page.request, "A1", "A2");
   expect((await give(page.request, there)).status()).toBe(403);
@@ -320,11 +320,11 @@ test("the change record tells steps in words, by person and tile, and goes back 
     .getByRole("button", { name: /^Undo back to here/ })
     .click();
   const dialog = page.getByRole("dialog", { name: "Undo back to here?" });
-  await expect(dialog).toContainText(/\d+ steps are taken back: .*2 of Mona Vale/);
+  await expect(dialog).toContainText(/\d+ steps are undone: .*2 of Mona Vale/);
   await expectAccessible(page, "undo back to here");
   await dialog.getByRole("button", { name: "Undo back to here" }).click();
   await expect(dialog).toBeHidden();
-  await expect(step(/Mona Vale took back \d+ steps/)).toBeVisible();
+  await expect(step(/Mona Vale undid \d+ steps/)).toBeVisible();
   const places = ({ frames }: Board) => frames.map(({ id, stackId }) => [id, stackId]);
   expect(places(await readBoard(page.request))).toEqual(places(before));
   await page.context().close();

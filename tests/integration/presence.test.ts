@@ -125,3 +125,13 @@ test("a tile is a short name or null", async () => {
   for (const tile of [7, "", "a\nb", "x".repeat(41), undefined]) expect(await post(tile)).toBe(400);
   expect(await post("Stack 12")).toEqual(["Lena Lead: Stack 12"]);
 });
+
+test("whoever closes the board is off it at once, and the others are told", async () => {
+  await signInAs(lead);
+  await post("A1");
+  const headers = { "content-type": "application/json" };
+  const body = JSON.stringify({ tile: null, isLeaving: true });
+  expect((await POST(new Request(url, { method: "POST", headers, body }), context())).status).toBe(200);
+  expect(await look()).toEqual([]);
+  expect(await countMoves()).toBe(2);
+});

@@ -65,16 +65,16 @@ describe("undo", () => {
     expect(decided(await calls.board())).toEqual(start);
     expect(await calls.mine()).toMatchObject({
       undo: null,
-      redo: { sentence: "took back: moved HARB0019 from A3 to A4" },
+      redo: { sentence: "undid: moved HARB0019 from A3 to A4" },
     });
     for (let steps = 0; steps < 2; steps += 1) {
       const { redo: next } = await calls.mine();
       await calls.done(undo(next?.commandId ?? ""));
     }
     expect(decided(await calls.board())).toEqual(end);
-    expect(await calls.mine()).toMatchObject({ undo: { sentence: expect.stringMatching(/^did again: /) }, redo: null });
+    expect(await calls.mine()).toMatchObject({ undo: { sentence: expect.stringMatching(/^redid: /) }, redo: null });
     await calls.done(undo((await calls.mine()).undo?.commandId ?? ""));
-    expect((await calls.mine()).redo?.sentence).toBe("took back: set HARB0003 aside in A1 (by hand)");
+    expect((await calls.mine()).redo?.sentence).toBe("undid: set HARB0003 aside in A1 (by hand)");
   });
 
   test("something new ends what could be done again", async () => {
@@ -94,7 +94,7 @@ describe("undo", () => {
   test("is refused twice, for somebody else's step, and for one that is not there", async () => {
     const { id } = await calls.done(setAside("frame-1"));
     await calls.done(undo(id));
-    expect((await calls.refused(undo(id))).detail).toContain("taken back already");
+    expect((await calls.refused(undo(id))).detail).toContain("undone already");
     await signInAs(jonas);
     const body = await calls.refused(undo(id), 403);
     expect(body.detail).toContain("Lena Lead's, not yours");
@@ -151,7 +151,7 @@ describe("undo", () => {
 });
 
 describe("going back to a step", () => {
-  test("takes everything after it back, whoever did it, as one step that can be taken back itself", async () => {
+  test("takes everything after it back, whoever did it, as one step that can be undone itself", async () => {
     await calls.done(move("frame-17", "stack-1-4"));
     const there = decided(await calls.board());
     await signInAs(jonas);
@@ -165,9 +165,9 @@ describe("going back to a step", () => {
     expect(decided(await calls.board())).toEqual(there);
     const { entries } = await calls.record();
     expect(entries.map(({ isUndone }) => isUndone)).toEqual([false, true, true, true, false]);
-    expect(entries[0]?.sentence).toBe("took back 3 steps, back to step 1");
+    expect(entries[0]?.sentence).toBe("undid 3 steps, back to “moved HARB0019 from A3 to A4”");
     await signInAs(lena);
-    expect((await calls.refused(undo(own.id))).detail).toContain("taken back already");
+    expect((await calls.refused(undo(own.id))).detail).toContain("undone already");
     expect((await calls.mine()).undo?.sentence).toBe("moved HARB0019 from A3 to A4");
     await signInAs(jonas);
     await calls.done(undo(back.id));
@@ -192,7 +192,7 @@ describe("going back to a step", () => {
     await calls.done({ type: "undo-back-to", toRevision: 0 });
     const { entries } = await calls.record();
     expect(entries.map(({ sentence }) => sentence)).toEqual([
-      "took back 2 steps, back to step 0",
+      "undid 2 steps, back to the beginning",
       "set HARB0003 aside in A1 (by hand)",
       "moved HARB0019 from A3 to A4",
     ]);
@@ -201,7 +201,7 @@ describe("going back to a step", () => {
 
   test("says so where nothing has been done since", async () => {
     await calls.done(setAside("frame-1"));
-    expect((await calls.refused({ type: "undo-back-to", toRevision: 1 })).detail).toContain("Nothing has been done");
+    expect((await calls.refused({ type: "undo-back-to", toRevision: 1 })).detail).toContain("Nothing done since");
   });
 });
 

@@ -5,7 +5,7 @@ import { readJson } from "@/lib/http/read-json";
 import { route } from "@/lib/http/route";
 import { listPresent } from "@/lib/presence/reads";
 import { presencePostSchema } from "@/lib/presence/schema";
-import { notePresence } from "@/lib/presence/writes";
+import { leaveBoard, notePresence } from "@/lib/presence/writes";
 
 export const GET = route(projectParamsSchema, async (_, { projectId }) => {
   const access = await requireProject(projectId, "view");
@@ -15,8 +15,9 @@ export const GET = route(projectParamsSchema, async (_, { projectId }) => {
 export const POST = route(projectParamsSchema, async (request, { projectId }) => {
   const user = await requireUser();
   const access = await requireProject(projectId, "view");
-  const { tile } = await readJson(request, presencePostSchema);
+  const { tile, isLeaving } = await readJson(request, presencePostSchema);
   const nowMs = Date.now();
-  await notePresence(access, user, tile, nowMs);
+  if (isLeaving) await leaveBoard(access, user, nowMs);
+  else await notePresence(access, user, tile, nowMs);
   return answerJson({ people: await listPresent(access, nowMs) });
 });

@@ -1,5 +1,5 @@
 // @vitest-environment jsdom
-import { cleanup, render, screen, within } from "@testing-library/react";
+import { cleanup, render, screen, waitFor, within } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { useState } from "react";
 import { afterEach, beforeEach, expect, test, vi } from "vitest";
@@ -64,7 +64,11 @@ function open(board = makeEventfulBoard(), canEdit = true) {
   return () => present;
 }
 
-const press = (name: string) => userEvent.click(screen.getByRole("button", { name }));
+const user = userEvent.setup();
+const press = (name: string) => user.click(screen.getByRole("button", { name }));
+/** Right after an answer, the next question takes none. */
+const untilItTakesAnAnswer = () =>
+  waitFor(() => expect(document.querySelector("[aria-disabled]")).toBeNull(), { timeout: 2_000 });
 const heading = () => screen.queryByRole("heading")?.textContent ?? null;
 const expectOpen = (name: string) => expect(screen.getByRole("status").textContent).toBe(`${name} is open`);
 const group = () => screen.getByRole("group");
@@ -83,10 +87,30 @@ test("an answer does what it says, the next question comes by itself and has the
   ]);
 });
 
-test("only the recommended answer is in petrol", () => {
+test("only an answer that the measurements speak for and that loses nothing is in petrol", async () => {
   open();
   const answers = ["Move to A4", "Keep in A3", "Decide later"].map((name) => screen.getByRole("button", { name }));
   expect(answers.map((button) => button.className.includes("bg-petrol"))).toEqual([true, false, false]);
+  await press("Question after");
+  expect(screen.getByRole("button", { name: "Keep as it is" }).className).not.toContain("bg-petrol");
+});
+
+test("a double-click answers one question, and what it did can be undone beside the next", async () => {
+  const board = open();
+  await press("Move to A4");
+  expect(heading()).toBe("Are 3 frames enough for C1?");
+  await press("Keep as it is");
+  await press("Decide later");
+  expect(heading()).toBe("Are 3 frames enough for C1?");
+  expect(sent).toHaveLength(1);
+  expect(screen.getByText("HARB0019 moved to A4.")).toBeDefined();
+  await press("Undo");
+  expect(board().questions).toHaveLength(3);
+  expect(heading()).toBe("Does HARB0019 belong to A4?");
+  expect(screen.queryByText("HARB0019 moved to A4.")).toBeNull();
+  await untilItTakesAnAnswer();
+  await press("Keep in A3");
+  expect(heading()).toBe("Are 3 frames enough for C1?");
 });
 
 test("what is decided later stays open and comes again at the end", async () => {
@@ -95,7 +119,9 @@ test("what is decided later stays open and comes again at the end", async () => 
   expect(heading()).toBe("Are 3 frames enough for C1?");
   expect(screen.getByText("question 1 of 3, 1 put off")).toBeDefined();
   expect(document.activeElement).toBe(group());
+  await untilItTakesAnAnswer();
   await press("Decide later");
+  await untilItTakesAnAnswer();
   await press("Decide later");
   expect(heading()).toBe("Does HARB0019 belong to A4?");
   expect([sent.length, board().questions.length]).toEqual([0, 3]);
@@ -106,6 +132,7 @@ test("the walk is worked to zero with Tab and Enter alone, and says what to do n
   group().focus();
   // The first button after the question turns back: Tab passes the two that turn, and stands on the recommended answer.
   for (const answer of ["Move to A4", "Keep as it is", "Keep the hole"]) {
+    await untilItTakesAnAnswer();
     while (document.activeElement?.textContent !== answer) await userEvent.tab();
     await userEvent.keyboard("{Enter}");
   }

@@ -3,6 +3,7 @@
 import { useEffect, useRef, useState } from "react";
 import { useBoardCommands } from "@/components/board/board-commands";
 import { LOOSE } from "@/components/board/use-board-place";
+import { answerDone } from "@/lib/board/answer-words";
 import type { BoardIndex } from "@/lib/board/board-index";
 import { settleDraft, type DocketAnswer } from "@/lib/board/docket-answers";
 import {
@@ -16,7 +17,8 @@ import {
   WALK_BEGIN,
   type DocketWalk,
 } from "@/lib/board/docket-walk";
-import type { BoardQuestion } from "@/lib/board/model";
+import type { Board, BoardQuestion } from "@/lib/board/model";
+import { describeSettling } from "@/lib/board/sentence";
 import { countOf } from "@/lib/board/words";
 import { newId } from "@/lib/ids";
 
@@ -30,6 +32,8 @@ export interface Docket {
   readonly postponed: number;
   /** The tile, or the loose frames, that the question is about; null: a place without a stack. */
   readonly place: string | null;
+  /** What the last answer here did, while an undo would take it back: "B5 left empty"; null: none. */
+  readonly done: string | null;
   /** @returns whether the docket went on to the next question */
   readonly answer: (answer: DocketAnswer) => boolean;
   readonly postpone: () => void;
@@ -47,7 +51,8 @@ interface DocketInput {
  * person turned it, and opens on the board what it turned to: once, so that what a person closes stays closed.
  */
 export function useDocket({ index, chosen, onChoose }: DocketInput): Docket {
-  const { run, announce } = useBoardCommands();
+  const { run, announce, undoable } = useBoardCommands();
+  const [given, setGiven] = useState<GivenAnswer | null>(null);
   const { questions } = index.board;
   const [state, setState] = useState<{ walk: DocketWalk; chosen: string | null }>({ walk: WALK_BEGIN, chosen: null });
   const walk = followChosen(index, seeBoard(questions, state.walk), chosen === state.chosen ? null : chosen);
@@ -88,8 +93,10 @@ export function useDocket({ index, chosen, onChoose }: DocketInput): Docket {
     count: order.length,
     postponed: order.filter(({ key }) => walk.postponed.includes(key)).length,
     place: question && questionPlace(index, question),
+    done: given !== null && given.sentence === undoable ? given.done : null,
     answer: ({ label, answer }) => {
       if (!question || !run(settleDraft(question, answer, newId))) return false;
+      setGiven(giveAnswer(index.board, question, answer));
       goTo(answerShown(questions, walk), `${label}: answered.`);
       return true;
     },
@@ -99,6 +106,17 @@ export function useDocket({ index, chosen, onChoose }: DocketInput): Docket {
     },
     turn: (step) => goTo(turnWalk(questions, walk, step), ""),
   };
+}
+
+interface GivenAnswer {
+  readonly done: string;
+  /** As the record tells it. */
+  readonly sentence: string;
+}
+
+function giveAnswer(board: Board, question: BoardQuestion, answer: number | null): GivenAnswer {
+  const target = { kind: "question", questionId: question.id, answer } as const;
+  return { done: answerDone(board, question, answer), sentence: describeSettling({ target }, board) };
 }
 
 /** To the first question of a newly chosen tile, unless the docket shows one of it already. */

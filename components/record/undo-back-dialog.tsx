@@ -57,7 +57,7 @@ export function UndoBackDialog({ projectId, entry, onClose }: UndoBackDialogProp
         </Notice>
       )}
       <DialogAnswers>
-        <Button tone="petrol" disabled={!later.data?.length} isBusy={going.isPending} onClick={() => going.mutate()}>
+        <Button disabled={!later.data?.length} isBusy={going.isPending} onClick={() => going.mutate()}>
           Undo back to here
         </Button>
         <Button onClick={onClose}>Leave it</Button>

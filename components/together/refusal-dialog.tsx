@@ -48,7 +48,8 @@ export function RefusalDialog({ board, refusals, onAnswer }: RefusalDialogProps)
       )}
       <DialogAnswers>
         {canRepeat && (
-          <Button tone="petrol" onClick={() => onAnswer(refusal, "again")}>
+          // What another did since would be lost by doing it again; trying again costs nobody anything.
+          <Button tone={conflict ? "plain" : "petrol"} onClick={() => onAnswer(refusal, "again")}>
             {refusal.isRepeatable ? "Try again" : "Do it again"}
           </Button>
         )}

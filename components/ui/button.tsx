@@ -25,7 +25,7 @@ const SIZES: Record<ButtonSize, string> = {
 
 // The disabled state is told by a dashed edge as well as by paler ink.
 const SHARED =
-  "inline-flex items-center justify-center gap-2 text-center font-semibold no-underline select-none pointer-coarse:min-h-11 pointer-coarse:min-w-11 disabled:pointer-events-none disabled:border-dashed disabled:border-line disabled:bg-transparent disabled:text-quiet";
+  "inline-flex items-center justify-center gap-2 text-center font-semibold no-underline select-none pointer-coarse:min-h-11 pointer-coarse:min-w-11 disabled:pointer-events-none disabled:border-dashed disabled:border-line disabled:bg-transparent disabled:text-quiet aria-disabled:opacity-60";
 
 /** The classes of a button, for elements that are neither `button` nor a link of ours (a menu trigger, a file label). */
 export function buttonClass({ tone = "plain", size = "regular" }: Appearance = {}): string {

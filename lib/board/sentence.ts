@@ -36,7 +36,7 @@ export function describeCommand(command: PlannedCommand, telling: Telling): stri
     case "remove-line":
       return `removed ${lineName(command)}`;
     case "settle":
-      return describeSettling(command, telling);
+      return describeSettling(command, before);
     case "assign": {
       const what = stacksName(before, command.stackIds);
       return command.userId === null ? `gave ${what} to nobody` : `gave ${what} to ${telling.nameOf(command.userId)}`;
@@ -63,7 +63,8 @@ function describePlace({ stackId, place, occupied }: CommandOf<"place-stack">, {
   return `moved ${from} to ${to} as take ${after.stacks.find(({ id }) => id === stackId)?.take ?? 1}`;
 }
 
-function describeSettling({ target }: CommandOf<"settle">, { before }: Telling): string {
+/** @param before - the board before the settling */
+export function describeSettling({ target }: Pick<CommandOf<"settle">, "target">, before: Board): string {
   if (target.kind === "stack") {
     const what = stackName(before, target.stackId, false);
     return target.isSettled ? `settled ${what}` : `took the settled mark off ${what}`;

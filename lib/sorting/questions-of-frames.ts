@@ -1,4 +1,6 @@
+import { pauseText } from "@/lib/board/words";
 import type { FrameDraft, StackDraft } from "./draft";
+import { pauseSeconds } from "./pauses";
 import { isKept, nameOf, percent, tileOf, type SortedDraft } from "./sorted-draft";
 import type { ProposedQuestion, SetAsideReason } from "./types";
 
@@ -58,7 +60,7 @@ function questionOfStray(draft: SortedDraft, stack: StackDraft): ProposedQuestio
   const ids = stack.frames.map(({ frame }) => frame.id);
   const first = stack.frames[0]?.frame.name ?? "";
   const isOne = ids.length === 1;
-  const host = draft.stacks[stack.index - 1] ?? draft.stacks[stack.index + 1];
+  const host = nearestInTime(draft, ids);
   return [
     {
       key: `stray ${ids.join(" ")}`,
@@ -66,18 +68,41 @@ function questionOfStray(draft: SortedDraft, stack: StackDraft): ProposedQuestio
       message: isOne
         ? `Does ${first} belong to the picture?`
         : `Do the ${ids.length} frames from ${first} on belong to the picture?`,
-      evidence: `${isOne ? "It does" : "They do"} not overlap any tile the way neighbours do.`,
+      evidence: `${isOne ? "It does" : "They do"} not overlap any tile the way neighbours do.${host ? ` ${host.evidence}` : ""}`,
       frameIds: ids,
       stackIds: [],
       tile: null,
       answers: [
         { label: isOne ? "Leave it loose" : "Leave them loose", action: { type: "keep" } },
-        ...(host && isKept(draft, host) ? [moveTo(draft, ids, host)] : []),
+        ...(host ? [moveTo(draft, ids, host.stack)] : []),
         { label: isOne ? "Make it a stack" : "Make them one stack", action: { type: "new-stack", frameIds: ids } },
       ],
       severity: SEVERITY.stray,
     },
   ];
+}
+
+/**
+ * The stack whose frames were taken next to these, and how long before or after: why it is offered. Null where the
+ * times do not tell, or nothing of the picture was taken beside them.
+ */
+function nearestInTime(draft: SortedDraft, ids: readonly string[]): { stack: StackDraft; evidence: string } | null {
+  const at = draft.order.findIndex(({ id }) => id === ids[0]);
+  const end = draft.order.findIndex(({ id }) => id === ids.at(-1));
+  const beside = (from: number, to: number, tell: (pause: string, where: string) => string) => {
+    const [before, after] = [draft.order[from], draft.order[to]];
+    const other = from < at ? before : after;
+    const stack = draft.stacks.find((each) => each.frames.some(({ frame }) => frame.id === other?.id));
+    const seconds = before && after ? pauseSeconds(before, after) : null;
+    if (!stack || !isKept(draft, stack) || seconds === null) return [];
+    return [{ stack, seconds, evidence: tell(pauseText(seconds), nameOf(draft, stack.index)) }];
+  };
+  const subject = ids.length === 1 ? "It was" : "They were";
+  const found = [
+    ...beside(at - 1, at, (pause, where) => `${subject} taken ${pause} after ${where}.`),
+    ...beside(end, end + 1, (pause, where) => `${subject} taken ${pause} before ${where}.`),
+  ];
+  return found.sort((a, b) => a.seconds - b.seconds)[0] ?? null;
 }
 
 function moveTo(

@@ -1,6 +1,6 @@
 import { emptyPlaces } from "@/lib/board/empty-tiles";
 import { holeToken, type Hole, type HoleLine } from "@/lib/board/name-tokens";
-import { framesInUse, type StackDraft } from "./draft";
+import { framesInUse, type FrameDraft, type StackDraft } from "./draft";
 import { gatheredKey } from "./gathered-key";
 import { isKept, nameOf, percent, tileOf, type SortedDraft } from "./sorted-draft";
 import type { ProposedQuestion } from "./types";
@@ -17,6 +17,7 @@ const SEVERITY = {
 /** More doubts of one kind than this are one question: the answer will be the same for all. Our own. */
 const MOST_SINGLE_QUESTIONS = 3;
 const MOST_NAMES = 12;
+const MOST_ASIDE_NAMES = 4;
 /** Stacks that say where a hole is: one of them may be moved, and the others still know. */
 const MOST_WITNESSES = 3;
 
@@ -170,7 +171,7 @@ function fewQuestions(draft: SortedDraft): ProposedQuestion[] {
     key: `few-frames ${stack.id}`,
     kind: "few-frames",
     message: `${framesInUse(stack).length === 1 ? "Is" : "Are"} ${countOf(framesInUse(stack).length)} enough for ${nameOf(draft, stack.index)}?`,
-    evidence: `${countOf(stack.frames.length)}, ${framesInUse(stack).length} in use; ${least} or more are wanted.`,
+    evidence: `${countOf(stack.frames.length)}, ${framesInUse(stack).length} in use; ${least} or more are wanted.${asideText(stack)}`,
     frameIds: [],
     stackIds: [stack.id],
     tile: tileOf(draft, stack.index),
@@ -180,10 +181,27 @@ function fewQuestions(draft: SortedDraft): ProposedQuestion[] {
 }
 
 /** More frames to be had are those set aside. */
-function bringBack({ frames }: StackDraft): ProposedQuestion["answers"] {
-  const frameIds = frames.flatMap(({ frame, setAside }) => (setAside === null ? [] : [frame.id]));
-  if (frameIds.length === 0) return [];
-  return [{ label: `Bring back ${countOf(frameIds.length)}`, action: { type: "bring-back", frameIds } }];
+function bringBack(stack: StackDraft): ProposedQuestion["answers"] {
+  const aside = framesAside(stack);
+  const [first] = aside;
+  if (!first) return [];
+  const label = `Bring back ${aside.length === 1 ? first.frame.name : countOf(aside.length)}`;
+  return [{ label, action: { type: "bring-back", frameIds: aside.map(({ frame }) => frame.id) } }];
+}
+
+/** What would be brought back, so that its worth is known: " Set aside: HARB0013 (soft, sharpness 6 %)." */
+function asideText(stack: StackDraft): string {
+  const aside = framesAside(stack);
+  if (aside.length === 0) return "";
+  const named = aside.slice(0, MOST_ASIDE_NAMES).map(({ frame, setAside, sharpness }) => {
+    const score = sharpness.relative === null ? "" : `, sharpness ${percent(sharpness.relative)}`;
+    return `${frame.name} (${setAside}${score})`;
+  });
+  return ` Set aside: ${named.join(", ")}${aside.length > named.length ? " and more" : ""}.`;
+}
+
+function framesAside({ frames }: StackDraft): FrameDraft[] {
+  return frames.filter(({ setAside }) => setAside !== null);
 }
 
 function countOf(frames: number): string {

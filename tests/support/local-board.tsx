@@ -4,6 +4,7 @@ import { applyChanges, ChangeConflict, invertChanges, type Change } from "@/lib/
 import type { CommandDraft, PlannedCommand } from "@/lib/board/command-schema";
 import type { Board } from "@/lib/board/model";
 import { planCommand } from "@/lib/board/plan-command";
+import { describeCommand } from "@/lib/board/sentence";
 
 interface LocalBoardProps {
   readonly board: Board;
@@ -13,10 +14,15 @@ interface LocalBoardProps {
   readonly children: (board: Board) => ReactNode;
 }
 
+interface Done {
+  readonly changes: readonly Change[];
+  readonly sentence: string;
+}
+
 /** A board that is changed as on the page, but kept in memory: the same planning, no server. */
 export function LocalBoard({ board: first, canEdit = true, onRun, onAnnounce, children }: LocalBoardProps) {
   const [board, setBoard] = useState(first);
-  const [done, setDone] = useState<readonly (readonly Change[])[]>([]);
+  const [done, setDone] = useState<readonly Done[]>([]);
   const announce = (message: string) => onAnnounce?.(message);
   const commands: BoardCommands = {
     canEdit,
@@ -25,8 +31,12 @@ export function LocalBoard({ board: first, canEdit = true, onRun, onAnnounce, ch
       try {
         const command = { ...draft, id: crypto.randomUUID(), revision: board.revision } as PlannedCommand;
         const changes = planCommand(board, command);
-        setBoard(applyChanges(board, changes));
-        setDone([...done, changes]);
+        const after = applyChanges(board, changes);
+        setBoard(after);
+        setDone([
+          ...done,
+          { changes, sentence: describeCommand(command, { before: board, after, nameOf: () => "somebody" }) },
+        ]);
         return true;
       } catch (error) {
         if (!(error instanceof ChangeConflict)) throw error;
@@ -34,10 +44,10 @@ export function LocalBoard({ board: first, canEdit = true, onRun, onAnnounce, ch
         return false;
       }
     },
-    undoable: done.length > 0 ? "the last change" : null,
+    undoable: done.at(-1)?.sentence ?? null,
     redoable: null,
     undo: () => {
-      setBoard(applyChanges(board, invertChanges(done.at(-1) ?? [])));
+      setBoard(applyChanges(board, invertChanges(done.at(-1)?.changes ?? [])));
       setDone(done.slice(0, -1));
     },
     redo: () => undefined,

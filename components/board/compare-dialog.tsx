@@ -62,7 +62,9 @@ export function CompareDialog({ index, name, stack, frames, reference, frameId, 
       title={`${name}: ${frame.name} beside the reference`}
       description={
         <p className="text-sm text-quiet">
-          The same spot of both at 100 %: one pixel of the picture is one pixel of the screen. Arrow keys move the spot.
+          The same spot of both at 100 %: one pixel of the picture is one pixel of the screen.{" "}
+          <span className="pointer-coarse:hidden">Click the small picture or use the arrow keys to move the spot.</span>
+          <span className="hidden pointer-coarse:inline">Tap the small picture or the arrows to move the spot.</span>
         </p>
       }
     >

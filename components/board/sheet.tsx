@@ -37,6 +37,11 @@ export function Sheet({ index, chosen, onChoose, view, onShow, isWide, saved }: 
   const docket = useDocket({ index, chosen, onChoose });
   const { question } = docket;
   const asked = useMemo(() => askedTiles(index, question), [index, question]);
+  // As on the rail's other marks: a question about most of a stack marks no single frame.
+  const askedNow = useMemo(
+    () => new Set(question?.frameIds.filter((id) => index.askedFrames.has(id))),
+    [index, question],
+  );
   const askedMove = useMemo(() => question && questionMove(index, question), [index, question]);
   const docketLine = <Docket index={index} docket={docket} chosen={chosen} onShowTile={onChoose} />;
   const tools = <BoardTools index={index} chosen={chosen} onChoose={onChoose} />;
@@ -51,7 +56,7 @@ export function Sheet({ index, chosen, onChoose, view, onShow, isWide, saved }: 
   return (
     <BoardHand index={index}>
       <div className="grid min-h-0 flex-1 grid-cols-[248px_minmax(0,1fr)] grid-rows-[minmax(0,1fr)]">
-        <TimeRail index={index} chosen={chosen} onChoose={onChoose} />
+        <TimeRail index={index} askedNow={askedNow} chosen={chosen} onChoose={onChoose} />
         <div className="flex min-h-0 flex-col">
           {docketLine}
           <BoardBar view={view} onShow={onShow} isAllSeams={isAllSeams} onAllSeams={setIsAllSeams} tools={tools} />

@@ -22,6 +22,8 @@ interface RailRunProps {
   readonly name: string | null;
   readonly take: BoardStack | null;
   readonly askedFrames: ReadonlySet<string>;
+  /** Those of the docket's question. */
+  readonly askedNow: ReadonlySet<string>;
   readonly isChosen: boolean;
   readonly isTabStop: boolean;
   readonly canEdit: boolean;
@@ -31,8 +33,8 @@ interface RailRunProps {
 }
 
 /** One run of frames on the rail with the pause before it; a bracket where they are a stack. */
-export function RailRun({ run, at, name, take, askedFrames, isChosen, isTabStop, canEdit, ...rest }: RailRunProps) {
-  const { boundary, onChoose } = rest;
+export function RailRun({ run, at, name, take, isChosen, isTabStop, canEdit, ...rest }: RailRunProps) {
+  const { boundary, onChoose, askedFrames, askedNow } = rest;
   const inUse = run.frames.filter((frame) => frame.setAside === null).length;
   const counts = `${inUse}/${run.frames.length}`;
   const label =
@@ -64,7 +66,12 @@ export function RailRun({ run, at, name, take, askedFrames, isChosen, isTabStop,
       >
         <span className="block flex-1">
           {run.frames.map((frame) => (
-            <FrameLine key={frame.id} frame={frame} isAsked={askedFrames.has(frame.id)} canEdit={canEdit} />
+            <FrameLine
+              key={frame.id}
+              frame={frame}
+              asked={askedNow.has(frame.id) ? "now" : askedFrames.has(frame.id) ? "later" : null}
+              canEdit={canEdit}
+            />
           ))}
         </span>
         {name === null ? (
@@ -89,12 +96,14 @@ export function RailRun({ run, at, name, take, askedFrames, isChosen, isTabStop,
 
 interface FrameLineProps {
   readonly frame: BoardFrame;
-  readonly isAsked: boolean;
+  /** now: by the docket's question; later: by another that is open. */
+  readonly asked: "now" | "later" | null;
   readonly canEdit: boolean;
 }
 
-/** Length: sharpness. Hollow: set aside. Dotted: cannot tell. Ochre with a question mark: asked about. Petrol: held. */
-function FrameLine({ frame, isAsked, canEdit }: FrameLineProps) {
+/** Length: sharpness. Hollow: set aside. Dotted: cannot tell. Question mark: asked about, ochre by the docket's question. Petrol: held. */
+function FrameLine({ frame, asked, canEdit }: FrameLineProps) {
+  const isNow = asked === "now";
   const isHeld = useInHand(({ selected, carried }) => selected.has(frame.id) || !!carried?.frameIds.has(frame.id));
   const { relativeSharpness: sharpness } = frame;
   const share = sharpness === null ? 0.5 : Math.max(0.1, (sharpness - BAR_FROM) / (1 - BAR_FROM));
@@ -106,7 +115,7 @@ function FrameLine({ frame, isAsked, canEdit }: FrameLineProps) {
       style={{ height: RAIL_LINE_PX }}
     >
       <span
-        className={classNames("figures shrink-0 text-[0.8125rem] leading-none", isAsked ? "text-ochre" : "text-quiet")}
+        className={classNames("figures shrink-0 text-[0.8125rem] leading-none", isNow ? "text-ochre" : "text-quiet")}
         style={{ width: BAR_LEFT_PX }}
       >
         {clockText(frame.metadata.takenAt?.local ?? null) ?? frame.name.slice(-8)}
@@ -117,11 +126,17 @@ function FrameLine({ frame, isAsked, canEdit }: FrameLineProps) {
           "block h-1.5 shrink-0",
           sharpness === null && "h-0 border-t-2 border-dotted",
           sharpness !== null && frame.setAside !== null && "border",
-          sharpness !== null && frame.setAside === null && (isAsked ? "bg-ochre" : "bg-ink"),
-          isAsked ? "border-ochre" : "border-ink",
+          sharpness !== null && frame.setAside === null && (isNow ? "bg-ochre" : "bg-ink"),
+          isNow ? "border-ochre" : "border-ink",
         )}
       />
-      {isAsked && <span className="pl-1 text-[0.8125rem] leading-none font-bold text-ochre">?</span>}
+      {asked !== null && (
+        <span
+          className={classNames("pl-1 text-[0.8125rem] leading-none", isNow ? "font-bold text-ochre" : "text-quiet")}
+        >
+          ?
+        </span>
+      )}
     </span>
   );
 }

@@ -13,12 +13,14 @@ import { clockText } from "@/lib/board/words";
 
 interface TimeRailProps {
   readonly index: BoardIndex;
+  /** Frames of the docket's question. */
+  readonly askedNow: ReadonlySet<string>;
   readonly chosen: string | null;
   readonly onChoose: (name: string | null) => void;
 }
 
 /** "Order taken": every frame as a line, the pauses between them, and brackets that name the tiles. */
-export function TimeRail({ index, chosen, onChoose }: TimeRailProps) {
+export function TimeRail({ index, askedNow, chosen, onChoose }: TimeRailProps) {
   const { board } = index;
   const { canEdit } = useBoardCommands();
   const runs = useMemo(() => railRuns(board.frames, board.grid.longestPauseSeconds), [board]);
@@ -85,6 +87,7 @@ export function TimeRail({ index, chosen, onChoose }: TimeRailProps) {
                   name={name}
                   take={board.stacks.find((stack) => stack.id === run.stackId) ?? null}
                   askedFrames={index.askedFrames}
+                  askedNow={askedNow}
                   isChosen={(name ?? LOOSE) === chosen}
                   isTabStop={item.index === stopAt}
                   canEdit={canEdit}

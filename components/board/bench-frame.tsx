@@ -1,6 +1,6 @@
 import { Crop } from "@/components/board/crop";
 import { classNames } from "@/components/ui/class-names";
-import type { CropCentre } from "@/lib/board/layout";
+import { isFarShifted, type CropCentre } from "@/lib/board/layout";
 import type { BoardFrame } from "@/lib/board/model";
 import { distanceText, percent } from "@/lib/board/words";
 
@@ -13,6 +13,8 @@ export interface BenchFrameProps {
   readonly isReference: boolean;
   readonly isAsked: boolean;
   readonly isWhy: boolean;
+  /** Put here and not measured yet. */
+  readonly isMeasuring: boolean;
   /** Null: nothing to compare it with. */
   readonly onCompare: (() => void) | null;
 }
@@ -88,14 +90,16 @@ export function FrameReason({ frame, isWhy }: BenchFrameProps) {
 }
 
 /** How far it lies from the reference; empty for the reference itself. */
-export function placeText({ frame, isReference, isAsked }: BenchFrameProps): string {
+export function placeText({ frame, isReference, isAsked, isMeasuring }: BenchFrameProps): string {
   if (frame.stackId === null) return isAsked ? "under question" : "loose";
   if (isReference) return "\u00a0";
-  return frame.shift === null ? "distance unknown" : `${distanceText(frame.shift)} away`;
+  if (isMeasuring) return "measuring";
+  if (frame.shift === null) return "distance unknown";
+  return `${distanceText(frame.shift)} ${isFarShifted(frame) ? "from the reference" : "away"}`;
 }
 
-export function placeClass({ isAsked }: BenchFrameProps): string {
-  return classNames("figures", isAsked ? "text-ochre" : "text-quiet");
+export function placeClass({ frame, isAsked }: BenchFrameProps): string {
+  return classNames("figures", isAsked || isFarShifted(frame) ? "text-ochre" : "text-quiet");
 }
 
 /** "HARB0019, sharpness 97 %, 2 px away, set aside: soft". */

@@ -12,6 +12,7 @@ import { Button } from "@/components/ui/button";
 import { Chip } from "@/components/ui/chip";
 import { classNames } from "@/components/ui/class-names";
 import type { BoardIndex, BoardTile } from "@/lib/board/board-index";
+import { isMeasuring } from "@/lib/board/comb";
 import { benchCrops, spotInFrame } from "@/lib/board/layout";
 import type { BoardFrame, BoardStack } from "@/lib/board/model";
 import { nameOfStack } from "@/lib/board/moving";
@@ -90,6 +91,7 @@ export function Bench({ index, tile, widthPx, mouth, onClose }: BenchProps) {
           isReference: frame.id === reference?.id,
           isAsked: index.askedFrames.has(frame.id),
           isWhy,
+          isMeasuring: isMeasuring(frame, frames),
           onCompare: frame.id === reference?.id ? null : () => setCompared(frame.id),
         }))}
       />
@@ -141,6 +143,7 @@ export function LooseBench({ index, widthPx, onClose }: LooseBenchProps) {
             isReference: false,
             isAsked: index.askedFrames.has(frame.id),
             isWhy: true,
+            isMeasuring: false,
             onCompare: null,
           }))}
         />

@@ -23,7 +23,11 @@ function SeamChip({ mark, layout }: { readonly mark: SeamMark; readonly layout: 
   const at = layout.size === "map" ? 0.5 : ABOVE_AT;
   const left = layout.lettersWidthPx + (mark.column - (isSideways ? 0 : 1 - at)) * stepPx - layout.gapPx / 2;
   const top = isSideways ? layout.pictureHeightPx / 2 : 0;
-  const said = `Overlap of ${mark.names[0]} and ${mark.names[1]}: ${percent(mark.overlap)}${mark.isSmall ? ", small" : ""}`;
+  const pair = `${mark.names[0]} and ${mark.names[1]}`;
+  const said = mark.isMisfit
+    ? `${pair} do not match where they would overlap`
+    : `Overlap of ${pair}: ${percent(mark.overlap)}${mark.isSmall ? ", small" : ""}`;
+  const isAlarm = mark.isSmall || mark.isMisfit;
   if (layout.size === "map") {
     const length = isSideways ? layout.pictureHeightPx : layout.tileWidthPx;
     return (
@@ -33,7 +37,7 @@ function SeamChip({ mark, layout }: { readonly mark: SeamMark; readonly layout: 
         style={{ left, top, width: isSideways ? 4 : length, height: isSideways ? length : 4 }}
         className={classNames(
           "pointer-events-none absolute z-20 -translate-x-1/2 -translate-y-1/2 border border-paper",
-          mark.isSmall ? "bg-ochre" : "bg-ink",
+          isAlarm ? "bg-ochre" : "bg-ink",
         )}
       />
     );
@@ -44,11 +48,11 @@ function SeamChip({ mark, layout }: { readonly mark: SeamMark; readonly layout: 
       className={classNames(
         "figures pointer-events-none absolute z-20 -translate-x-1/2 border px-1 text-sm leading-5 font-semibold whitespace-nowrap",
         isSideways && "-translate-y-1/2",
-        mark.isSmall ? "border-ochre bg-ochre-wash text-ochre-on" : "border-line bg-paper text-ink",
+        isAlarm ? "border-ochre bg-ochre-wash text-ochre-on" : "border-line bg-paper text-ink",
       )}
     >
       <span className="sr-only">{said}</span>
-      <span aria-hidden>{mark.overlap === null ? "? %" : percent(mark.overlap)}</span>
+      <span aria-hidden>{mark.isMisfit ? "no match" : mark.overlap === null ? "? %" : percent(mark.overlap)}</span>
     </span>
   );
 }

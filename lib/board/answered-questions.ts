@@ -1,5 +1,6 @@
 import { applyChanges, type Change } from "@/lib/board/changes";
 import { framesOf, type Place } from "@/lib/board/look-up";
+import { isMeasuredQuestion } from "@/lib/board/measured-questions";
 import type { Board, BoardFrame, BoardQuestion, BoardStack } from "@/lib/board/model";
 import { questionTile } from "@/lib/board/question-tile";
 import { placeOfName } from "@/lib/board/tile-name";
@@ -27,8 +28,9 @@ export function closeAnswered(board: Board, changes: readonly Change[]): Change[
       on: "question",
       question,
       isOpen: false,
-      // Nobody has said that the place stays empty: should the stack leave again, the next sorting asks again.
-      ...(question.kind === "hole" ? { isWithdrawn: true } : {}),
+      // Nobody has said that the place stays empty: should the stack leave again, the next sorting asks again. And
+      // whoever puts a frame or a stack where it does not belong once more is asked once more.
+      ...(question.kind === "hole" || isMeasuredQuestion(question) ? { isWithdrawn: true } : {}),
     }));
 }
 

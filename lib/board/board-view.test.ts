@@ -13,6 +13,9 @@ import {
 import { questionPictures } from "@/lib/board/question-pictures";
 import { railRuns } from "@/lib/board/rail";
 import { boardStatus, stackFacts, tileLabel } from "@/lib/board/summary";
+import { askMisfits } from "@/lib/board/measured-questions";
+import type { Board } from "@/lib/board/model";
+import { seamMarksByRow } from "@/lib/board/seam-marks";
 import { makeBoard, makeEventfulBoard } from "@/tests/support/make-board";
 
 const all = { left: true, right: true, above: true, below: true };
@@ -90,6 +93,30 @@ test("the comb runs from the soft limit to the best frame", () => {
   expect(bars.map((bar) => bar.isSetAside)).toEqual([false, false, false, true, false]);
 });
 
+test("a frame that was put here waits to be measured, and is no soft one", () => {
+  const [template] = makeBoard({ rows: 1, columns: 1, framesPerTile: 1 }).frames;
+  if (!template) throw new Error("the recipe makes one frame");
+  const known = { ...template, id: "known", relativeSharpness: 1 };
+  const put = { ...template, id: "put", relativeSharpness: null, shift: null, placedBy: "person" as const };
+  expect(combBars([known, put]).map(({ isMeasuring }) => isMeasuring)).toEqual([false, true]);
+  // Measured, but too far off to be compared; or nobody's sharpness can be told: nothing is waited for.
+  expect(combBars([known, { ...put, shift: { xPx: 9, yPx: 0 } }])[1]?.isMeasuring).toBe(false);
+  expect(combBars([put, { ...put, id: "other" }])[0]?.isMeasuring).toBe(false);
+});
+
+test("a seam that an open question says does not match is marked without being asked for", () => {
+  const board = makeBoard({ rows: 1, columns: 2, framesPerTile: 1 });
+  const [seam] = indexBoard(board).seams;
+  if (!seam) throw new Error("no seam");
+  const stacks = board.stacks.map((stack) => ({ ...stack, placedBy: "person" as const }));
+  const [question] = askMisfits({ stacks }, [{ ...seam, overlap: null }], []);
+  if (!question) throw new Error("nothing asked");
+  const marks = (questions: Board["questions"]) =>
+    seamMarksByRow(indexBoard({ ...board, questions }), false).get(1) ?? [];
+  expect(marks([])).toEqual([]);
+  expect(marks([{ ...question, id: "misfit" }])).toMatchObject([{ names: ["A1", "A2"], isMisfit: true }]);
+});
+
 test("the rail is cut where the stack changes and draws the pause there", () => {
   const { frames } = makeBoard({ rows: 1, columns: 2, framesPerTile: 3, looseFrames: 1 });
   const runs = railRuns(frames, 4);
@@ -108,7 +135,11 @@ test("a crop shows the same spot of a shifted frame, and says where it cannot", 
   // By hand: a frame whose corner lies 10 px right and 20 px up shows the spot 10 px further left and 20 px lower.
   expect(spotInFrame(frame, { x: 700, y: 500 })).toEqual({ centreXPx: 690, centreYPx: 520, isSameSpot: true });
   const far = spotInFrame({ ...frame, shift: { xPx: 3790, yPx: 0 } }, { x: 700, y: 500 });
-  expect(far).toEqual({ centreXPx: 750, centreYPx: 500, isSameSpot: false });
+  // Another part of the scene: the same place of the frame, so that the mistake is seen.
+  expect(far).toEqual({ centreXPx: 700, centreYPx: 500, isSameSpot: false });
+  // Of the same scene, but not in the frame.
+  const outside = spotInFrame({ ...frame, shift: { xPx: 100, yPx: 0 } }, { x: 40, y: 500 });
+  expect(outside).toEqual({ centreXPx: 750, centreYPx: 500, isSameSpot: false });
 });
 
 test("what is compared stays inside both frames, so that it stays the same spot", () => {

@@ -11,6 +11,8 @@ export interface CombBar {
   readonly height: number | null;
   /** Drawn hollow. */
   readonly isSetAside: boolean;
+  /** Put here and not measured yet: drawn hatched. */
+  readonly isMeasuring: boolean;
 }
 
 /**
@@ -23,11 +25,25 @@ export function combBars(frames: readonly BoardFrame[]): CombBar[] {
   );
   const best = Math.max(0, ...known);
   const limit = softLimit(frames);
-  return frames.map(({ id, relativeSharpness, setAside }) => ({
-    frameId: id,
-    isSetAside: setAside !== null,
-    height: relativeSharpness === null ? null : barHeight(relativeSharpness, limit, best),
-  }));
+  return frames.map((frame) => {
+    const { id, relativeSharpness, setAside } = frame;
+    return {
+      frameId: id,
+      isSetAside: setAside !== null,
+      isMeasuring: isMeasuring(frame, frames),
+      height: relativeSharpness === null ? null : barHeight(relativeSharpness, limit, best),
+    };
+  });
+}
+
+/**
+ * Whether a frame that a person put into this stack waits to be measured in it: nothing is known of it, although of
+ * others there it is. Where nobody's sharpness can be told, nothing is waited for.
+ * @param frames - of the stack
+ */
+export function isMeasuring(frame: BoardFrame, frames: readonly BoardFrame[]): boolean {
+  const isUnknown = frame.stackId !== null && frame.relativeSharpness === null && frame.shift === null;
+  return isUnknown && frame.placedBy === "person" && frames.some(({ relativeSharpness }) => relativeSharpness !== null);
 }
 
 /** Relative sharpness under which a frame of this stack is soft: the median in use, less the project's limit. */

@@ -19,7 +19,7 @@ import { planInverted } from "@/lib/board/plan-inverted";
 import { forgetBoard, getPlanningBoard, keepBoard } from "@/lib/board/planning-reads";
 import { storeDifference } from "@/lib/board/row-writes";
 import { describeCommand } from "@/lib/board/sentence";
-import { stacksToMeasure, touchedTiles } from "@/lib/board/touched";
+import { areNeighboursOther, stacksToMeasure, touchedTiles } from "@/lib/board/touched";
 import { type Plan, planUndo, planUndoBackTo } from "@/lib/board/undo-reads";
 import { requireWholeBoard } from "@/lib/board/whole-board";
 import { AppError } from "@/lib/errors/app-error";
@@ -160,6 +160,7 @@ async function record(
     atMs: nowMs,
   });
   const touched = stacksToMeasure(before, after);
-  if (touched.length > 0 || unmeasuredSeams(after).length > 0) await requestMeasuring(tx, projectId, touched, nowMs);
+  const isOther = touched.length > 0 || areNeighboursOther(before, after) || unmeasuredSeams(after).length > 0;
+  if (isOther) await requestMeasuring(tx, projectId, touched, nowMs);
   await publish(tx, projectId, { type: "board.changed", revision }, nowMs);
 }

@@ -1,5 +1,6 @@
 import { median, type BoardIndex, type BoardTile } from "@/lib/board/board-index";
 import type { BoardFrame } from "@/lib/board/model";
+import { LEAST_SHIFT_BETWEEN } from "@/lib/sorting/judge-pair";
 
 /** full: caption with comb; medium: name and exceptions; map: a mosaic. */
 export type TileSize = "full" | "medium" | "map";
@@ -147,15 +148,26 @@ export interface CropCentre {
   readonly isSameSpot: boolean;
 }
 
+type Shifted = Pick<BoardFrame, "widthPx" | "heightPx" | "shift">;
+
+/** Whether a frame lies further from its reference than frames of one tile do: it shows another part of the scene. */
+export function isFarShifted({ widthPx, heightPx, shift }: Shifted): boolean {
+  return shift !== null && Math.hypot(shift.xPx, shift.yPx) > LEAST_SHIFT_BETWEEN * Math.max(widthPx, heightPx);
+}
+
 /**
- * Where a frame shows a spot of its reference, so that crops of a stack can be laid side by side.
+ * Where a frame shows a spot of its reference, so that crops of a stack can be laid side by side. One that shows
+ * another part of the scene is cropped at the same place of the frame instead: followed, it would look like the others.
  * @param spotPx - the spot, reference's full-size px
  * @returns the spot in the frame's own upright full-size px
  */
-export function spotInFrame(
-  frame: Pick<BoardFrame, "widthPx" | "heightPx" | "shift">,
-  spotPx: { readonly x: number; readonly y: number },
-): CropCentre {
+export function spotInFrame(frame: Shifted, spotPx: { readonly x: number; readonly y: number }): CropCentre {
+  if (!isFarShifted(frame)) return spotByShift(frame, spotPx);
+  return { ...spotByShift({ ...frame, shift: null }, spotPx), isSameSpot: false };
+}
+
+/** The same, whatever the shift. */
+export function spotByShift(frame: Shifted, spotPx: { readonly x: number; readonly y: number }): CropCentre {
   const x = spotPx.x - (frame.shift?.xPx ?? 0);
   const y = spotPx.y - (frame.shift?.yPx ?? 0);
   const isSameSpot = x >= 0 && y >= 0 && x <= frame.widthPx && y <= frame.heightPx;
@@ -173,10 +185,11 @@ export function spotInFrame(
 export function spotInView(
   spotPx: { readonly x: number; readonly y: number },
   seen: { readonly widthPx: number; readonly heightPx: number },
-  frames: readonly Pick<BoardFrame, "widthPx" | "heightPx" | "shift">[],
+  frames: readonly Shifted[],
 ): { x: number; y: number } {
-  const across = frames.map((frame) => ({ from: frame.shift?.xPx ?? 0, side: frame.widthPx }));
-  const down = frames.map((frame) => ({ from: frame.shift?.yPx ?? 0, side: frame.heightPx }));
+  const near = frames.map((frame) => (isFarShifted(frame) ? { ...frame, shift: null } : frame));
+  const across = near.map((frame) => ({ from: frame.shift?.xPx ?? 0, side: frame.widthPx }));
+  const down = near.map((frame) => ({ from: frame.shift?.yPx ?? 0, side: frame.heightPx }));
   return { x: inside(spotPx.x, seen.widthPx, across), y: inside(spotPx.y, seen.heightPx, down) };
 }
 

@@ -5,8 +5,11 @@ import { currentSeams, unmeasuredSeams } from "@/lib/board/current-seams";
 import { boardFromProposal } from "@/lib/board/from-proposal";
 import { measuredChanges } from "@/lib/board/measured";
 import { measureStacks } from "@/lib/board/measure-stacks";
+import { isMeasuredQuestion } from "@/lib/board/measured-questions";
 import type { Board } from "@/lib/board/model";
 import { planCommand } from "@/lib/board/plan-command";
+import { withPresentNames } from "@/lib/board/present-names";
+import { groupDigits } from "@/lib/board/words";
 import { sortFrames } from "@/lib/sorting/sort-frames";
 import { SOFT_LIMIT } from "@/lib/sorting/types";
 import { pretendInput, pretendShoot } from "@/tests/support/accuracy/pretend-shoot";
@@ -20,7 +23,9 @@ const softened = shots.map((shot, at) => (at === 7 ? { ...shot, sharpness: -0.1 
 const { input, measurePair, asked } = pretendInput(softened);
 const [WIDTH_PX, HEIGHT_PX] = [3000, 2000];
 
-async function sortedBoard(): Promise<Board> {
+const sortedBoard = () => sortedBoardOf({ input, measurePair });
+
+async function sortedBoardOf({ input, measurePair }: Pick<ReturnType<typeof pretendInput>, "input" | "measurePair">) {
   const files = [{ id: "f", name: "a.jpg", folder: null, bytes: 1, sha256: "0", mediaType: "image/jpeg" }];
   const source = {
     projectId: "p",
@@ -40,7 +45,7 @@ function after(board: Board, fields: object): Board {
 }
 
 const measure = (board: Board, stackIds: readonly string[]) =>
-  measureStacks({ board, frames: input.frames, stackIds, measurePair, softLimit: SOFT_LIMIT });
+  measureStacks({ board, frames: input.frames, stackIds, measurePair, softLimit: SOFT_LIMIT, settledQuestionKeys: [] });
 
 const at = (board: Board, row: number, column: number) => {
   const stack = board.stacks.find((each) => each.row === row && each.column === column);
@@ -150,4 +155,136 @@ test("about one pair a frame and one a seam is measured, not the whole shoot", a
   await measure(board, [at(board, 2, 2).id]);
   // 4 from frame to frame, 4 to the neighbours.
   expect(asked() - before).toBe(8);
+});
+
+/** What is asked once everything that is touched is measured. */
+async function asking(board: Board, stackIds: readonly string[], settledQuestionKeys: readonly string[] = []) {
+  const settings = { softLimit: SOFT_LIMIT, settledQuestionKeys };
+  const measured = await measureStacks({ board, frames: input.frames, stackIds, measurePair, ...settings });
+  return applyChanges(board, measuredChanges(board, measured, settledQuestionKeys));
+}
+const measuredOf = (board: Board) => board.questions.filter(isMeasuredQuestion);
+
+test("a frame of another tile is asked about, sets no scale, and nothing is asked once it is back", async () => {
+  const sorted = await sortedBoard();
+  const [home, other] = [at(sorted, 1, 2), at(sorted, 1, 1)];
+  const [, frame] = framesOf(sorted, home.id).filter(({ id }) => id !== home.referenceId);
+  if (!frame) throw new Error("no frame");
+  const move = (stackId: string) => ({ type: "move-frames", frameIds: [frame.id], to: { kind: "stack", stackId } });
+  const board = await asking(after(sorted, move(other.id)), [home.id, other.id]);
+  const [question, ...more] = measuredOf(board);
+  expect(more).toEqual([]);
+  expect(withPresentNames(board).questions[0]).toMatchObject({
+    kind: "stray",
+    message: `${frame.name} shows another part of the scene than the rest of A1`,
+    frameIds: [frame.id],
+    stackIds: [other.id],
+    tile: "A1",
+  });
+  // One tile further by the plan, to the pixel.
+  const aims = [aimOf(frame.id), aimOf(other.referenceId ?? ""), aimOf(home.referenceId ?? "")] as const;
+  const far = Math.round(Math.hypot(aims[0].xPx - aims[1].xPx, aims[0].yPx - aims[1].yPx));
+  const near = Math.round(Math.hypot(aims[0].xPx - aims[2].xPx, aims[0].yPx - aims[2].yPx));
+  const evidence = `Its picture lies ${groupDigits(far)} px from the others; it matches A2, ${near} px from its reference.`;
+  expect(withPresentNames(board).questions[0]?.evidence).toBe(evidence);
+  expect(withPresentNames(board).questions[0]?.answers).toEqual([
+    { label: "Move it to A2", action: { type: "move-frames", frameIds: [frame.id], toStackId: home.id } },
+    { label: "Set it aside", action: { type: "set-aside", frameIds: [frame.id], reason: "stray" } },
+    { label: "Keep it in A1", action: { type: "keep" } },
+  ]);
+  // What was there before is as sharp as it was.
+  for (const { id, relativeSharpness } of framesOf(sorted, other.id)) {
+    expect(board.frames.find((each) => each.id === id)?.relativeSharpness).toBe(relativeSharpness);
+  }
+  expect(measuredOf(await asking(board, [home.id, other.id]))).toEqual([question]);
+  // Moved back by hand the question goes; taken back without a word, by the next measuring.
+  const back = after(board, move(home.id));
+  expect(measuredOf(back)).toEqual([]);
+  expect(measuredOf(await asking(back, [home.id, other.id]))).toEqual([]);
+  const unsaid = { ...sorted, questions: board.questions };
+  expect(measuredOf(await asking(unsaid, [home.id, other.id]))).toEqual([]);
+  // Kept, it is not asked again; a second one is.
+  const target = { kind: "question", questionId: question?.id, answer: 2 };
+  const kept = after(board, { type: "settle", target });
+  expect(measuredOf(await asking(kept, [home.id, other.id], [question?.key ?? ""]))).toEqual([]);
+  const [second] = framesOf(kept, home.id).filter(({ id }) => id !== home.referenceId);
+  const two = after(kept, { ...move(other.id), frameIds: [second?.id] });
+  const again = measuredOf(await asking(two, [home.id, other.id], [question?.key ?? ""]));
+  expect(again.map(({ frameIds }) => frameIds)).toEqual([[second?.id]]);
+});
+
+test("an intruder that is sharper than the others leaves their scores alone, also as the reference", async () => {
+  const sharp = softened.map((shot, index) => (index === 6 ? { ...shot, sharpness: 0.12 } : shot));
+  const other = pretendInput(sharp);
+  const sorted = await sortedBoard();
+  const [from, to] = [at(sorted, 1, 2), at(sorted, 1, 1)];
+  const intruder = other.input.frames[6]?.id ?? "";
+  const moved = after(sorted, { type: "move-frames", frameIds: [intruder], to: { kind: "stack", stackId: to.id } });
+  const board = after(moved, { type: "choose-reference", stackId: to.id, frameId: intruder });
+  const measured = await measureStacks({
+    board,
+    frames: other.input.frames,
+    stackIds: [from.id, to.id],
+    measurePair: other.measurePair,
+    softLimit: SOFT_LIMIT,
+    settledQuestionKeys: [],
+  });
+  const done = applyChanges(board, measuredChanges(board, measured));
+  for (const { id, relativeSharpness } of framesOf(sorted, to.id)) {
+    expect(done.frames.find((each) => each.id === id)?.relativeSharpness).toBe(relativeSharpness);
+  }
+  expect(measuredOf(done).map(({ frameIds }) => frameIds)).toEqual([[intruder]]);
+});
+
+test("frames without detail are not asked about", async () => {
+  const blank = pretendShoot({
+    rows: 2,
+    columns: 3,
+    framesPerTile: 5,
+    order: ORDER,
+    overlap: OVERLAP,
+    isBlank: (row) => row === 1,
+  });
+  const plain = pretendInput(blank);
+  const sorted = await sortedBoardOf(plain);
+  const stackOfFrame = (nth: number) => sorted.frames.find(({ name }) => name === blank[nth]?.name)?.stackId ?? "";
+  const to = { kind: "stack", stackId: stackOfFrame(0) };
+  const frame = plain.input.frames[6]?.id;
+  const board = after(sorted, { type: "move-frames", frameIds: [frame], to });
+  const settings = { softLimit: SOFT_LIMIT, settledQuestionKeys: [] };
+  const stackIds = [stackOfFrame(0), stackOfFrame(7)];
+  const { frames } = plain.input;
+  const measured = await measureStacks({ board, frames, stackIds, measurePair: plain.measurePair, ...settings });
+  expect(measured.questions).toEqual([]);
+});
+
+test("a stack put where its neighbours do not match is asked about until it goes, not once it is meant so", async () => {
+  const sorted = await sortedBoard();
+  const stray = at(sorted, 3, 4);
+  const out = after(sorted, { type: "place-stack", stackId: at(sorted, 1, 1).id, place: null });
+  const placed = after(out, { type: "place-stack", stackId: stray.id, place: { row: 1, column: 1 } });
+  const board = await asking(placed, []);
+  const asked = measuredOf(withPresentNames(board));
+  expect(asked).toHaveLength(1);
+  expect(asked[0]).toMatchObject({ kind: "thin-seam", tile: "A1", message: "A1 does not fit beside A2 and B1" });
+  expect(asked[0]?.answers.map(({ label }) => label)).toEqual(["Take A1 out of the grid", "Leave it there"]);
+  const [question] = measuredOf(board);
+  const settle = (answer: number) => ({
+    type: "settle",
+    target: { kind: "question", questionId: question?.id, answer },
+  });
+  const taken = after(board, settle(0));
+  expect(taken.stacks.find(({ id }) => id === stray.id)?.row).toBeNull();
+  expect(measuredOf(await asking(taken, []))).toEqual([]);
+  expect(measuredOf(await asking(after(board, settle(1)), [], [question?.key ?? ""]))).toEqual([]);
+  // Taken back without a word: what is asked goes with the next measuring, which needs no stack to be named.
+  expect(measuredOf(await asking({ ...sorted, questions: board.questions }, []))).toEqual([]);
+});
+
+test("a row that is pushed on is one question", async () => {
+  const sorted = await sortedBoard();
+  const place = { row: 2, column: 1 };
+  const pushed = after(sorted, { type: "place-stack", stackId: at(sorted, 1, 4).id, place, occupied: "push" });
+  const asked = measuredOf(withPresentNames(await asking(pushed, [])));
+  expect(asked.map(({ message }) => message)).toEqual([expect.stringMatching(/ do not fit beside their neighbours$/)]);
 });

@@ -1,18 +1,20 @@
 import { seamKey } from "@/lib/board/changes";
 import { currentSeams, unmeasuredSeams } from "@/lib/board/current-seams";
+import { findElsewhere, findHosts, sharpnessApart } from "@/lib/board/find-elsewhere";
 import { framesOf } from "@/lib/board/look-up";
-import { type Measured, type MeasuredStack, seamStates, stackStates } from "@/lib/board/measured";
+import { type Measured, type MeasuredStack, seamStates, stackStates, statesOf } from "@/lib/board/measured";
+import { askElsewhere, askMisfits, isUnmatched, misfitKey } from "@/lib/board/measured-questions";
 import type { Board, BoardFrame, BoardSeam, BoardStack } from "@/lib/board/model";
 import { areBracketed, chainShifts, stackSharpness } from "@/lib/sorting/appraise-stack";
 import type { FrameDraft, Shift, StackDraft } from "@/lib/sorting/draft";
 import { makeEdge } from "@/lib/sorting/edges";
 import { overlapAt } from "@/lib/sorting/find-seams";
 import { tellingSpot } from "@/lib/sorting/frame-sharpness";
-import { isMatch } from "@/lib/sorting/judge-pair";
+import { isMatch, isTextured } from "@/lib/sorting/judge-pair";
 import { noiseFloorOf } from "@/lib/sorting/noise-floor";
 import { PairStore } from "@/lib/sorting/pair-store";
 import { median } from "@/lib/sorting/robust";
-import type { MeasurePair, SortFrame } from "@/lib/sorting/types";
+import type { MeasurePair, ProposedQuestion, SortFrame } from "@/lib/sorting/types";
 import type { Vector } from "@/lib/sorting/vector";
 
 export interface MeasuringInput {
@@ -23,6 +25,8 @@ export interface MeasuringInput {
   readonly stackIds: readonly string[];
   readonly measurePair: MeasurePair;
   readonly softLimit: number;
+  /** Keys of questions that were answered. */
+  readonly settledQuestionKeys: readonly string[];
 }
 
 /** A position that the neighbours contradict by more than this, in long sides, is stale. Our own, as in the sorting. */
@@ -34,7 +38,8 @@ const LEAST_STEP = 0.05;
 
 /**
  * Measures what people's commands left unmeasured: sharpness and shift within the stacks that changed, and the overlap
- * of neighbours that are new or whose frames changed. Nothing is decided; who is soft or has moved people have seen.
+ * of neighbours that are new or whose frames changed. Nothing is decided; who is soft or has moved people have seen. What does not
+ * belong where people put it is asked about.
  * Pairs asked for: about one a frame of these stacks, and one a seam.
  */
 export async function measureStacks(input: MeasuringInput): Promise<Measured> {
@@ -46,6 +51,7 @@ export async function measureStacks(input: MeasuringInput): Promise<Measured> {
   const noise = noiseFloorOf(input.frames);
   const touched = new Set(input.stackIds);
   const drafts = new Map<string, StackDraft>();
+  const elsewhere = new Map<string, ReadonlySet<string>>();
   for (const stack of board.stacks) {
     const frames = framesOf(board, stack.id);
     const sources = sortFrames(stack.id);
@@ -54,7 +60,12 @@ export async function measureStacks(input: MeasuringInput): Promise<Measured> {
     drafts.set(stack.id, draft);
     if (!touched.has(stack.id)) continue;
     const shifts = await measureShifts(sources, draft.hub, store);
-    const sharpness = stackSharpness({ frames: sources, softLimit, isBracketed, noise });
+    const byPerson = new Set(frames.flatMap(({ id, placedBy }) => (placedBy === "person" ? [id] : [])));
+    const odd = await findElsewhere(draft, shifts, store, (id) => byPerson.has(id));
+    elsewhere.set(stack.id, odd);
+    const sharpness = sharpnessApart(sources, odd, (some) => {
+      return stackSharpness({ frames: some, softLimit, isBracketed, noise });
+    });
     const measured = draft.frames.map((entry, at): FrameDraft => {
       return { ...entry, shift: shifts[at] ?? null, sharpness: sharpness[at] ?? entry.sharpness };
     });
@@ -67,7 +78,16 @@ export async function measureStacks(input: MeasuringInput): Promise<Measured> {
   const seams = await measureSeams(board, wanted, drafts, store);
   const positions = positionsOf(board, seams, touched);
   const states = stackStates(board);
+  const questions: ProposedQuestion[] = askMisfits(board, misfitsOf(board, seams, drafts), input.settledQuestionKeys);
+  for (const stack of board.stacks) {
+    const odd = elsewhere.get(stack.id);
+    if (!odd || odd.size === 0) continue;
+    questions.push(
+      ...askElsewhere(stack, await findHosts(board, stack, odd, { drafts, store }), input.settledQuestionKeys),
+    );
+  }
   return {
+    questions: questions.map((question) => ({ ...question, states: statesOf(question, states) })),
     stacks: [...drafts.values()]
       .filter(({ id }) => touched.has(id))
       .map((draft) => toMeasured(draft, states.get(draft.id) ?? "", positions.get(draft.id))),
@@ -117,6 +137,22 @@ async function measureShifts(
     const measure = store.find(hub.id, frame.id);
     return measure && isMatch(measure, hub) ? { xPx: measure.xPx, yPx: measure.yPx } : null;
   });
+}
+
+/** All seams whose pictures have something to match and do not: those measured now, and those measured before. */
+function misfitsOf(
+  board: Board,
+  fresh: readonly MeasuredSeam[],
+  drafts: ReadonlyMap<string, StackDraft>,
+): readonly BoardSeam[] {
+  const now = new Map(fresh.map(({ seam }) => [misfitKey(seam), seam]));
+  const isTelling = (id: string) => {
+    const draft = drafts.get(id);
+    return draft !== undefined && isTextured(draft.hub);
+  };
+  return currentSeams(board)
+    .map((seam) => now.get(misfitKey(seam)) ?? seam)
+    .filter((seam) => isUnmatched(seam) && isTelling(seam.stackId) && isTelling(seam.neighbourId));
 }
 
 interface MeasuredSeam {

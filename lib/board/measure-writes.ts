@@ -1,13 +1,14 @@
 import "server-only";
-import { and, eq } from "drizzle-orm";
+import { and, eq, isNotNull } from "drizzle-orm";
 import { type Transaction, writeTransaction } from "@/db/client";
-import { changes as changeRows, seams } from "@/db/schema/board";
+import { changes as changeRows, questions, seams } from "@/db/schema/board";
 import { frames, stacks } from "@/db/schema/frames";
 import { projects } from "@/db/schema/projects";
 import type { ProjectAccess } from "@/lib/auth/gate";
 import { applyChanges, type Change } from "@/lib/board/changes";
 import { type Measured, measuredChanges } from "@/lib/board/measured";
 import { getBoardWithin } from "@/lib/board/reads";
+import { openQuestion } from "@/lib/board/row-writes";
 import { touchedTiles } from "@/lib/board/touched";
 import { countOf } from "@/lib/board/words";
 import { publish } from "@/lib/events/publish";
@@ -33,12 +34,12 @@ export async function requestMeasuring(
 
 /**
  * Stores what was measured, as one change by the computation: only what is still true of the newest board, and nothing
- * that people decide. Where nothing is new nothing is recorded, so it may be repeated.
+ * that people decide; what it asks included. Where nothing is new nothing is recorded, so it may be repeated.
  */
 export async function storeMeasured({ projectId }: ProjectAccess, measured: Measured, atMs: number): Promise<void> {
   await writeTransaction(async (tx) => {
     const before = await getBoardWithin(tx, projectId);
-    const steps = measuredChanges(before, measured);
+    const steps = measuredChanges(before, measured, await findSettledKeys(tx, projectId));
     if (steps.length === 0) return;
     const after = applyChanges(before, steps);
     const revision = before.revision + 1;
@@ -53,12 +54,26 @@ export async function storeMeasured({ projectId }: ProjectAccess, measured: Meas
       type: "measure",
       payload: {},
       steps,
-      sentence: `measured ${tiles.length > 0 ? countOf(tiles.length, "tile") : "seams"} again after changes`,
+      sentence: sentenceOf(steps, tiles),
       tiles,
       atMs,
     });
     await publish(tx, projectId, { type: "board.changed", revision }, atMs);
   });
+}
+
+async function findSettledKeys(tx: Transaction, projectId: ProjectId): Promise<string[]> {
+  const rows = await tx
+    .select({ key: questions.key })
+    .from(questions)
+    .where(and(eq(questions.projectId, projectId), isNotNull(questions.settledAtMs)));
+  return rows.map(({ key }) => key);
+}
+
+function sentenceOf(steps: readonly Change[], tiles: readonly string[]): string {
+  const asked = steps.filter((step) => step.on === "question" && step.isOpen).length;
+  const measured = `measured ${tiles.length > 0 ? countOf(tiles.length, "tile") : "seams"} again after changes`;
+  return asked === 0 ? measured : `${measured} and asked ${countOf(asked, "question")}`;
 }
 
 async function storeStep(tx: Transaction, projectId: ProjectId, step: Change): Promise<void> {
@@ -81,6 +96,11 @@ async function storeStep(tx: Transaction, projectId: ProjectId, step: Change): P
         ...(position && { positionXPx: position.xPx, positionYPx: position.yPx }),
       })
       .where(and(eq(stacks.id, stackIdSchema.parse(step.id)), eq(stacks.projectId, projectId)));
+  }
+  if (step.on === "question") {
+    const { question, isOpen } = step;
+    if (isOpen) await openQuestion(tx, projectId, question);
+    else await tx.delete(questions).where(and(eq(questions.projectId, projectId), eq(questions.id, question.id)));
   }
   if (step.on !== "seams") return;
   for (const { stackId, neighbourId, side, overlap } of step.after) {

@@ -1,6 +1,9 @@
-import { type Change, type FramePatch, seamKey, type StackPatch } from "@/lib/board/changes";
+import { applyChanges, type Change, type FramePatch, seamKey, type StackPatch } from "@/lib/board/changes";
 import { currentSeams, lyingSeamKey } from "@/lib/board/current-seams";
+import { causeStands, elsewhereStack, isMeasuredQuestion } from "@/lib/board/measured-questions";
 import type { Board, BoardFrame, BoardSeam } from "@/lib/board/model";
+import { newId } from "@/lib/ids";
+import type { ProposedQuestion } from "@/lib/sorting/types";
 
 interface Point {
   readonly xPx: number;
@@ -25,6 +28,8 @@ export interface MeasuredStack {
 export interface Measured {
   readonly stacks: readonly MeasuredStack[];
   readonly seams: readonly (BoardSeam & { readonly states: string })[];
+  /** All that is to be asked of these stacks and of any seam. */
+  readonly questions: readonly (ProposedQuestion & { readonly states: string })[];
 }
 
 /** Less than this is the same, px and fractions: it is far below what the measurements resolve. */
@@ -56,11 +61,47 @@ export function seamStates(
   return [stackId, neighbourId].map((id) => states.get(id) ?? "gone").join(" | ");
 }
 
+/** The states of all stacks that a question is about. */
+export function statesOf(
+  { stackIds }: Pick<ProposedQuestion, "stackIds">,
+  states: ReadonlyMap<string, string>,
+): string {
+  return stackIds.map((id) => states.get(id) ?? "gone").join(" | ");
+}
+
 /**
  * What measurements change on a board that may have moved on meanwhile: only what still holds, and nothing that people
  * decide. Empty where everything is known already.
+ * @param settledKeys - of questions that were answered by now
  */
-export function measuredChanges(board: Board, { stacks, seams }: Measured): Change[] {
+export function measuredChanges(board: Board, measured: Measured, settledKeys: readonly string[] = []): Change[] {
+  const changes = measurementChanges(board, measured);
+  return [...changes, ...questionChanges(applyChanges(board, changes), measured, settledKeys)];
+}
+
+/** Asks what is not asked yet, and withdraws what has no cause any more. */
+function questionChanges(board: Board, { stacks, questions }: Measured, settledKeys: readonly string[]): Change[] {
+  const states = stackStates(board);
+  const looked = new Set<string | null>([null]);
+  for (const { id, state } of stacks) if (states.get(id) === state) looked.add(id);
+  const wanted = new Set(questions.map(({ key }) => key));
+  const open = board.questions.filter(isMeasuredQuestion);
+  const known = new Set([...settledKeys, ...open.map(({ key }) => key)]);
+  const gone = open.filter((question) => {
+    return !causeStands(board, question) || (looked.has(elsewhereStack(question)) && !wanted.has(question.key));
+  });
+  const fresh = questions.filter((question) => {
+    return !known.has(question.key) && statesOf(question, states) === question.states && causeStands(board, question);
+  });
+  return [
+    ...gone.map((question): Change => ({ on: "question", question, isOpen: false, isWithdrawn: true })),
+    ...fresh.map(({ states: _, ...question }): Change => {
+      return { on: "question", question: { ...question, id: newId() }, isOpen: true, isWithdrawn: true };
+    }),
+  ];
+}
+
+function measurementChanges(board: Board, { stacks, seams }: Measured): Change[] {
   const states = stackStates(board);
   const standing = stacks.filter(({ id, state }) => states.get(id) === state);
   const neighbours = new Set(currentSeams(board).map(lyingSeamKey));

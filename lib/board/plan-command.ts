@@ -2,6 +2,7 @@ import { closeAnswered } from "@/lib/board/answered-questions";
 import { ChangeConflict, type Change } from "@/lib/board/changes";
 import type { CommandOf, PlannedCommand } from "@/lib/board/command-schema";
 import { framesNamed, framesOf, stackOf } from "@/lib/board/look-up";
+import { isMeasuredQuestion } from "@/lib/board/measured-questions";
 import type { Board } from "@/lib/board/model";
 import {
   moveTo,
@@ -70,7 +71,10 @@ function planSettle(board: Board, { target }: CommandOf<"settle">): Change[] {
   const question = board.questions.find(({ id }) => id === target.questionId);
   if (!question) throw new ChangeConflict("This question is settled already.", target.questionId);
   const action: AnswerAction = target.answer === null ? { type: "keep" } : answerOf(question, target.answer);
-  return [...planAction(board, action, target.newStackId), { on: "question", question, isOpen: false }];
+  // What is measured may be asked again should it come about again, unless somebody has said that it is meant so.
+  const isWithdrawn = isMeasuredQuestion(question) && action.type !== "keep";
+  const closing: Change = { on: "question", question, isOpen: false, ...(isWithdrawn && { isWithdrawn }) };
+  return [...planAction(board, action, target.newStackId), closing];
 }
 
 function answerOf(question: Board["questions"][number], answer: number): AnswerAction {

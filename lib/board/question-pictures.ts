@@ -1,5 +1,6 @@
 import type { BoardIndex } from "@/lib/board/board-index";
-import { spotInFrame, type CropCentre } from "@/lib/board/layout";
+import { spotByShift, type CropCentre } from "@/lib/board/layout";
+import { isMeasuredQuestion } from "@/lib/board/measured-questions";
 import type { BoardFrame, BoardQuestion } from "@/lib/board/model";
 import { tileName } from "@/lib/board/tile-name";
 
@@ -32,7 +33,10 @@ export function questionPictures(index: BoardIndex, question: BoardQuestion): Qu
     ...references(index, question),
     ...besideHole(index, question.tile ?? ""),
   ].slice(0, MOST_PICTURES);
-  const spots = [...question.stackIds.flatMap((id) => sceneSpot(index, id)), ...sharedSpots(placed)];
+  // Of what does not belong together the pictures are shown whole: crops of one spot would look alike.
+  const spots = isMeasuredQuestion(question)
+    ? []
+    : [...question.stackIds.flatMap((id) => sceneSpot(index, id)), ...sharedSpots(placed)];
   const spot = spots.find((candidate) => placed.every((picture) => centreAt(picture, candidate).isSameSpot));
   return placed.map((picture) => ({
     frame: picture.frame,
@@ -114,5 +118,5 @@ function sceneSpot(index: BoardIndex, stackId: string): { x: number; y: number }
 
 function centreAt({ frame, corner }: Placed, spot: { x: number; y: number }): CropCentre {
   const shift = corner ? { xPx: corner.x, yPx: corner.y } : { xPx: Infinity, yPx: Infinity };
-  return spotInFrame({ ...frame, shift }, spot);
+  return spotByShift({ ...frame, shift }, spot);
 }

@@ -176,7 +176,7 @@ async function storeQuestions(
 }
 
 /** Asked again: it is still there, answered; or a sorting has cleared it away meanwhile. */
-async function openQuestion(tx: Transaction, projectId: ProjectId, question: BoardQuestion): Promise<void> {
+export async function openQuestion(tx: Transaction, projectId: ProjectId, question: BoardQuestion): Promise<void> {
   // By its key: a later sorting may have asked the same under another id.
   await tx.delete(questions).where(and(eq(questions.projectId, projectId), eq(questions.key, question.key)));
   await tx.insert(questions).values({ projectId, ...question });

@@ -1,4 +1,5 @@
 import type { BoardIndex } from "@/lib/board/board-index";
+import { askedSeams, misfitKey } from "@/lib/board/measured-questions";
 
 /** An overlap to be printed on the shared edge of two tiles. */
 export interface SeamMark {
@@ -11,17 +12,22 @@ export interface SeamMark {
   readonly overlap: number | null;
   /** Under the overlap that the project wants. */
   readonly isSmall: boolean;
+  /** An open question says that the pictures do not match here. */
+  readonly isMisfit: boolean;
 }
 
-/** The marks by the row they are drawn in: the row of the left tile, or of the lower one. Only small ones unless all are asked for. */
+/** The marks by the row they are drawn in: the row of the left tile, or of the lower one. Only small ones and misfits unless all are asked for. */
 export function seamMarksByRow(index: BoardIndex, isAll: boolean): ReadonlyMap<number, readonly SeamMark[]> {
   const byRow = new Map<number, SeamMark[]>();
-  for (const { stackId, neighbourId, side, overlap } of index.seams) {
+  const misfits = askedSeams(index.board.questions);
+  for (const seam of index.seams) {
+    const { stackId, neighbourId, side, overlap } = seam;
     const tile = index.tileOfStack.get(stackId);
     const neighbour = index.tileOfStack.get(neighbourId);
     if (!tile || !neighbour || tile.row === null || tile.column === null) continue;
     const isSmall = overlap !== null && overlap < index.board.grid.overlapWanted;
-    if (!isSmall && !isAll) continue;
+    const isMisfit = misfits.has(misfitKey(seam));
+    if (!isSmall && !isMisfit && !isAll) continue;
     const drawnIn = side === "right" ? tile.row : tile.row + 1;
     const mark: SeamMark = {
       key: `${stackId}-${neighbourId}`,
@@ -31,6 +37,7 @@ export function seamMarksByRow(index: BoardIndex, isAll: boolean): ReadonlyMap<n
       names: [tile.name, neighbour.name],
       overlap,
       isSmall,
+      isMisfit,
     };
     byRow.set(drawnIn, [...(byRow.get(drawnIn) ?? []), mark]);
   }

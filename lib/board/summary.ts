@@ -1,3 +1,4 @@
+import { isMeasuring } from "@/lib/board/comb";
 import { expectedNoise } from "@/lib/board/expected-noise";
 import { isSetAside, type BoardIndex, type BoardTile } from "@/lib/board/board-index";
 import { countOf, exposureText, groupDigits, percent, trimmed } from "@/lib/board/words";
@@ -73,6 +74,7 @@ export function tileLabel(tile: BoardTile): string {
   return [
     `Tile ${tile.name}`,
     `${tile.inUse} of ${countOf(tile.frames.length, "frame")} in use`,
+    ...(tile.frames.some((frame) => isMeasuring(frame, tile.frames)) ? ["measuring"] : []),
     ...(tile.isFew ? ["few"] : []),
     ...(tile.takes.length > 1 ? [`${tile.takes.length} takes`] : []),
     ...(tile.stack.isSettled ? ["settled"] : []),

@@ -48,3 +48,16 @@ export function stacksToMeasure(before: Board, after: Board): string[] {
   const isOther = (stack: BoardStack) => stacksBefore.get(stack.id)?.referenceId !== stack.referenceId;
   return after.stacks.filter((stack) => ids.has(stack.id) || isOther(stack)).map(({ id }) => id);
 }
+
+/** Whether stacks lie otherwise to each other: what fits beside what may be another thing then. */
+export function areNeighboursOther(before: Board, after: Board): boolean {
+  const was = new Map(before.stacks.map((stack) => [stack.id, stack]));
+  return (
+    before.stacks.length !== after.stacks.length ||
+    after.stacks.some((stack) => {
+      const old = was.get(stack.id);
+      const { row, column, isChosenTake } = stack;
+      return old !== stack && (old?.row !== row || old.column !== column || old.isChosenTake !== isChosenTake);
+    })
+  );
+}

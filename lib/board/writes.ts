@@ -8,6 +8,8 @@ import { parts } from "@/db/statement-parts";
 import type { ProjectAccess } from "@/lib/auth/gate";
 import type { Change } from "@/lib/board/changes";
 import { stepsOfSorting } from "@/lib/board/diff-boards";
+import { causeStands, isMeasuredQuestion } from "@/lib/board/measured-questions";
+import type { Board } from "@/lib/board/model";
 import { getBoardWithin } from "@/lib/board/reads";
 import { inheritedShares } from "@/lib/board/sorting-facts";
 import type { SortBasis } from "@/lib/board/sorting-reads";
@@ -56,7 +58,11 @@ export async function storeProposal(
     await storeStacks(tx, projectId, proposal.stacks, await findShares(tx, projectId, proposal));
     await storeFrames(tx, projectId, proposal.frames);
     await storeSeams(tx, projectId, proposal);
-    await storeQuestions(tx, projectId, proposal.questions);
+    const isMeasured = before.questions.some(isMeasuredQuestion);
+    const kept = isMeasured
+      ? measuredToKeep(await getBoardWithin(tx, projectId), proposal.questions)
+      : new Set<string>();
+    await storeQuestions(tx, projectId, proposal.questions, kept);
     const after = await getBoardWithin(tx, projectId);
     const steps = stepsOfSorting(before, after);
     const tiles = touchedTiles(before, after, steps);
@@ -175,16 +181,32 @@ async function storeSeams(tx: Transaction, projectId: ProjectId, proposal: Propo
   for (const part of parts(rows)) await tx.insert(seams).values(part);
 }
 
-/** Open questions are those of this proposal; one asked before keeps its id, and what is settled stays settled. */
+/** Of what measuring asked, ids of what is still so and what the sorting does not ask about itself. */
+function measuredToKeep(sorted: Board, proposed: readonly ProposedQuestion[]): ReadonlySet<string> {
+  const aboutFrames = new Set(
+    proposed.filter(({ frameIds }) => frameIds.length === 1).flatMap((each) => each.frameIds),
+  );
+  const kept = sorted.questions.filter((question) => {
+    const isAsked = question.frameIds.some((id) => aboutFrames.has(id));
+    return isMeasuredQuestion(question) && !isAsked && causeStands(sorted, question);
+  });
+  return new Set(kept.map(({ id }) => id));
+}
+
+/**
+ * Open questions are those of this proposal; one asked before keeps its id, and what is settled stays settled.
+ * @param keptIds - of open questions that stay although the proposal does not ask them
+ */
 async function storeQuestions(
   tx: Transaction,
   projectId: ProjectId,
   proposed: readonly ProposedQuestion[],
+  keptIds: ReadonlySet<string>,
 ): Promise<void> {
   const open = and(eq(questions.projectId, projectId), isNull(questions.settledAtMs));
   const known = await tx.select({ id: questions.id, key: questions.key }).from(questions).where(open);
   const keys = new Set(proposed.map(({ key }) => key));
-  const gone = known.filter(({ key }) => !keys.has(key)).map(({ id }) => id);
+  const gone = known.filter(({ id, key }) => !keys.has(key) && !keptIds.has(id)).map(({ id }) => id);
   for (const part of parts(gone)) await tx.delete(questions).where(and(open, inArray(questions.id, [...part])));
   const rows = proposed.map((question) => ({ id: newId(), projectId, ...question }));
   for (const part of parts(rows)) {

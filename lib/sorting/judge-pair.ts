@@ -8,7 +8,7 @@ export type Verdict = "same" | "different" | "probably different" | "unknown";
 /** Source of these limits: analysis.md, step 4 (93 simulated shoots). Shifts as fractions of the longer side. */
 const LEAST_NCC = 0.35;
 const LARGEST_SHIFT_WITHIN = 0.07;
-const LEAST_SHIFT_BETWEEN = 0.13;
+export const LEAST_SHIFT_BETWEEN = 0.13;
 const LEAST_TEXTURE = 0.06;
 /** Contrast of the overlap, in units of what counts as texture, under which a match may be vignetting. Our own. */
 const LEAST_CONTRAST = 1;
@@ -42,6 +42,15 @@ const UNLIKE_SIGNIFICANCE = 9;
 export function shiftFraction(measure: PairMeasure, frame: SortFrame): number {
   const { widthPx, heightPx } = frame.measurements;
   return Math.hypot(measure.xPx, measure.yPx) / Math.max(widthPx, heightPx);
+}
+
+/** Whether a shift is larger than frames of one tile lie apart. @param shift - px of the frame */
+export function isFarApart(
+  shift: { readonly xPx: number; readonly yPx: number },
+  frame: Pick<SortFrame, "measurements">,
+): boolean {
+  const { widthPx, heightPx } = frame.measurements;
+  return Math.hypot(shift.xPx, shift.yPx) / Math.max(widthPx, heightPx) > LEAST_SHIFT_BETWEEN;
 }
 
 export function isTextured(frame: SortFrame): boolean {

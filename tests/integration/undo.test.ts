@@ -48,7 +48,7 @@ async function measure(frameId: string, relativeSharpness: number): Promise<void
   const id = board.frames.find((frame) => frame.id === frameId)?.stackId ?? "";
   const frames = [{ id: frameId, relativeSharpness, shift: null }];
   const stack = { id, state: stackStates(board).get(id) ?? "", frames, spot: { x: 0.4, y: 0.55 } };
-  await storeMeasured(accessForJob({ projectId }), { stacks: [stack], seams: [] }, 0);
+  await storeMeasured(accessForJob({ projectId }), { stacks: [stack], seams: [], questions: [] }, 0);
 }
 
 describe("undo", () => {

@@ -18,10 +18,12 @@ export function createMeasureStacksHandler(): JobHandler {
       const { stackIds } = measurePayloadSchema.parse(job.payload);
       const basis = await findSortBasis(access);
       if (!basis) return { type: "done" };
-      const { frames, options } = basis.input;
+      const { frames, options, facts } = basis.input;
       const board = await getBoard(access);
       const measurePair = measurerFor(frames, basis.fileIds, signal);
-      const measured = await measureStacks({ board, frames, stackIds, measurePair, softLimit: options.softLimit });
+      const { softLimit } = options;
+      const { settledQuestionKeys } = facts;
+      const measured = await measureStacks({ board, frames, stackIds, measurePair, softLimit, settledQuestionKeys });
       await storeMeasured(access, measured, Date.now());
       return { type: "done" };
     },

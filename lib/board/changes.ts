@@ -41,7 +41,7 @@ export interface GridSize {
 export class ChangeConflict extends Error {
   constructor(
     message: string,
-    /** The frame, stack or question that is in the way. */
+    /** The frame, stack or question that is in the way, or "grid"; "" where nobody's step is. */
     readonly subjectId: string,
   ) {
     super(message);

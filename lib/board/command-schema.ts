@@ -3,21 +3,37 @@ import { SET_ASIDE_REASONS } from "@/lib/sorting/types";
 
 /** As many frames as one command may name: more than the largest shoots have. */
 const FRAMES_MOST = 10_000;
-/** As many rows or columns as a grid may have. */
-export const LINES_MOST = 1_000;
+/** More than any line's number: how far a grid may reach is `LINES_MOST`, said in words where it is planned. */
+const LINE_NUMBER_MOST = 1_000;
+const UUID = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/i;
 
-const id = z.string().regex(/^[A-Za-z0-9_-]{1,64}$/, "not an identifier");
-const ids = z.array(id).min(1).max(FRAMES_MOST);
-const line = z.int().min(1).max(LINES_MOST);
+/** Letters of a UUID may be sent in capitals; they mean the same (RFC 9562, section 4). */
+const id = z
+  .string()
+  .regex(/^[A-Za-z0-9_-]{1,64}$/, "not an identifier")
+  .overwrite((text) => (UUID.test(text) ? text.toLowerCase() : text));
+/** Named twice is named once. */
+const ids = z
+  .array(id)
+  .min(1)
+  .max(FRAMES_MOST)
+  .overwrite((named) => [...new Set(named)]);
+const commandId = z.uuid().overwrite((text) => text.toLowerCase());
+const line = z.int().min(1).max(LINE_NUMBER_MOST);
 const place = z.object({ row: line, column: line });
 
+const TOO_MANY = `at most ${FRAMES_MOST} frames`;
+function isOfFrames(seen: object): boolean {
+  return Object.keys(seen).length <= FRAMES_MOST;
+}
+
 /** Where the client saw each frame: in a stack, or loose (null). The command is refused where that is no longer so. */
-const framesSeen = z.record(id, id.nullable());
+const framesSeen = z.record(id, id.nullable()).refine(isOfFrames, TOO_MANY);
 /** What the client saw: `null` in use, else the reason. */
-const setAsideSeen = z.record(id, z.enum(SET_ASIDE_REASONS).nullable());
+const setAsideSeen = z.record(id, z.enum(SET_ASIDE_REASONS).nullable()).refine(isOfFrames, TOO_MANY);
 const placeSeen = z.object({ row: line.nullable(), column: line.nullable(), take: z.int().min(1) });
 
-const base = { id: z.uuid(), revision: z.int().min(0) };
+const base = { id: commandId, revision: z.int().min(0) };
 
 /** Every change of the board by a person. `expect` names what the client saw; absent, the newest state is taken. */
 export const boardCommandSchema = z.discriminatedUnion("type", [
@@ -89,7 +105,7 @@ export const boardCommandSchema = z.discriminatedUnion("type", [
   }),
   z.object({ ...base, type: z.literal("assign"), stackIds: ids, userId: id.nullable() }),
   /** Takes back one's own earlier command; redo is the undo of an undo. */
-  z.object({ ...base, type: z.literal("undo"), commandId: z.uuid() }),
+  z.object({ ...base, type: z.literal("undo"), commandId }),
   /** Takes back, as one new step, everything after this revision, whoever did it. */
   z.object({ ...base, type: z.literal("undo-back-to"), toRevision: z.int().min(0) }),
 ]);

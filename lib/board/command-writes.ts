@@ -1,10 +1,10 @@
 import "server-only";
 import { isDeepStrictEqual } from "node:util";
-import { and, eq, inArray } from "drizzle-orm";
+import { eq } from "drizzle-orm";
 import { type Transaction, writeTransaction } from "@/db/client";
 import { users } from "@/db/schema/accounts";
 import { changes } from "@/db/schema/board";
-import { members, projects } from "@/db/schema/projects";
+import { projects } from "@/db/schema/projects";
 import type { ProjectAccess } from "@/lib/auth/gate";
 import { allows } from "@/lib/auth/roles";
 import { applyChanges, type Change, ChangeConflict } from "@/lib/board/changes";
@@ -19,6 +19,7 @@ import { planInverted } from "@/lib/board/plan-inverted";
 import { forgetBoard, getPlanningBoard, keepBoard } from "@/lib/board/planning-reads";
 import { storeDifference } from "@/lib/board/row-writes";
 import { describeCommand } from "@/lib/board/sentence";
+import { listUnfitShares } from "@/lib/board/share-reads";
 import { areNeighboursOther, stacksToMeasure, touchedTiles } from "@/lib/board/touched";
 import { type Plan, planUndo, planUndoBackTo } from "@/lib/board/undo-reads";
 import { requireWholeBoard } from "@/lib/board/whole-board";
@@ -124,16 +125,7 @@ async function nameOfAssignee(tx: Transaction, command: PlannedCommand): Promise
 
 /** Whoever gets stacks to merge must be in the project and may edit: also where an undo gives them back. */
 async function requireShares(tx: Transaction, projectId: ProjectId, before: Board, after: Board): Promise<void> {
-  const was = new Map(before.stacks.map((stack) => [stack.id, stack.shareUserId]));
-  const given = after.stacks.filter(({ id, shareUserId }) => shareUserId !== null && was.get(id) !== shareUserId);
-  const ids = [...new Set(given.map(({ shareUserId }) => userIdSchema.parse(shareUserId)))];
-  if (ids.length === 0) return;
-  const rows = await tx
-    .select({ userId: members.userId, role: members.role })
-    .from(members)
-    .where(and(eq(members.projectId, projectId), inArray(members.userId, ids)));
-  const mayEdit = new Set<string>(rows.filter(({ role }) => allows(role, "edit")).map(({ userId }) => userId));
-  const refused = given.find(({ shareUserId }) => shareUserId !== null && !mayEdit.has(shareUserId));
+  const [refused] = await listUnfitShares(tx, projectId, before, after);
   if (!refused) return;
   throw new ChangeConflict("Only a lead or an editor of this project can be given stacks to merge.", refused.id);
 }

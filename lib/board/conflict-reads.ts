@@ -25,7 +25,7 @@ export async function explainConflict(
   const lastChange = await findLastChange(tx, projectId, {
     subjectId,
     afterRevision,
-    isFrame: present?.kind === "frame",
+    isOfLines: subjectId === "grid" || present?.kind === "stack",
   });
   const extra = { subjectId, revision: board.revision, present, lastChange } satisfies Conflict;
   return new AppError("conflict", tell(message, nameOf(board, present), extra, afterRevision !== null), { extra });
@@ -56,8 +56,9 @@ function nameOf(board: Board, present: Conflict["present"]): string | null {
 async function findLastChange(
   tx: Transaction,
   projectId: ProjectId,
-  { subjectId, afterRevision, isFrame }: { subjectId: string; afterRevision: number | null; isFrame: boolean },
+  { subjectId, afterRevision, isOfLines }: { subjectId: string; afterRevision: number | null; isOfLines: boolean },
 ): Promise<Conflict["lastChange"]> {
+  if (subjectId === "") return null;
   const named = sql`instr(${changes.steps}, ${JSON.stringify(subjectId)}) > 0`;
   const ofLines = sql`instr(${changes.steps}, '"on":"line"') > 0 or instr(${changes.steps}, '"on":"grid"') > 0`;
   const [row] = await tx
@@ -70,7 +71,7 @@ async function findLastChange(
         // Measuring decides nothing: it is never in the way.
         ne(changes.type, "measure"),
         afterRevision === null ? undefined : gt(changes.revision, afterRevision),
-        isFrame ? named : or(named, ofLines, eq(changes.undoes, subjectId)),
+        or(named, isOfLines ? ofLines : undefined, eq(changes.undoes, subjectId)),
       ),
     )
     .orderBy(desc(changes.revision))

@@ -1,6 +1,12 @@
 import { ChangeConflict } from "@/lib/board/changes";
 import type { Board, BoardFrame, BoardStack } from "@/lib/board/model";
 
+/**
+ * As many rows or columns as a grid may have. Shoots of the trade have up to 40 rows; a board of 200 x 200 is 40 000
+ * places, which can still be shown, and listed in a manifest, within seconds.
+ */
+export const LINES_MOST = 200;
+
 export interface Place {
   readonly row: number;
   readonly column: number;

@@ -38,6 +38,9 @@ export async function requestMeasuring(
  */
 export async function storeMeasured({ projectId }: ProjectAccess, measured: Measured, atMs: number): Promise<void> {
   await writeTransaction(async (tx) => {
+    // A project that was put in the archive meanwhile stays as it is.
+    const [project] = await tx.select({ at: projects.archivedAtMs }).from(projects).where(eq(projects.id, projectId));
+    if (!project || project.at !== null) return;
     const before = await getBoardWithin(tx, projectId);
     const steps = measuredChanges(before, measured, await findSettledKeys(tx, projectId));
     if (steps.length === 0) return;

@@ -1,5 +1,5 @@
 import type { BoardIndex } from "@/lib/board/board-index";
-import { LINES_MOST } from "@/lib/board/command-schema";
+import { LINES_MOST } from "@/lib/board/look-up";
 import { targetOfName, type Moving, type Target } from "@/lib/board/moving";
 import { placeOfName, rowLetters } from "@/lib/board/tile-name";
 

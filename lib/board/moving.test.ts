@@ -160,7 +160,7 @@ describe("Move to", () => {
     expect(parse("over there")).toEqual({
       problem: "There is no place called over there. Write a tile as A4, or one of the words below.",
     });
-    expect(parse("A1001")).toEqual({ problem: "A grid reaches to row ALL and column 1000 at the most." });
+    expect(parse("A201")).toEqual({ problem: "A grid reaches to row GR and column 200 at the most." });
     expect(parse("no place")).toEqual({ problem: expect.stringMatching(/loose/) });
     expect(parse("new stack", stack("stack-1-1"))).toEqual({ problem: expect.stringMatching(/already/) });
   });

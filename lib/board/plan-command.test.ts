@@ -4,6 +4,8 @@ import { applyChanges, ChangeConflict, invertChanges, type Change } from "@/lib/
 import { boardCommandSchema, type PlannedCommand } from "@/lib/board/command-schema";
 import type { Board } from "@/lib/board/model";
 import { planCommand } from "@/lib/board/plan-command";
+import { planInverted } from "@/lib/board/plan-inverted";
+import { requireWholeBoard } from "@/lib/board/whole-board";
 import type { AnswerAction } from "@/lib/sorting/types";
 import { makeEventfulBoard } from "@/tests/support/make-board";
 
@@ -121,6 +123,34 @@ describe("any sequence of commands", () => {
         for (const { after } of run(commands)) expectWhole(after);
       }),
       { numRuns: 300 },
+    );
+  });
+
+  test("with undos of any of them in between leaves the board whole, and what was undone can be done again", () => {
+    const anyTurn = fc.record({ command: anyCommand(), isUndo: fc.boolean(), which: fc.nat(30) });
+    fc.assert(
+      fc.property(fc.array(anyTurn, { minLength: 3, maxLength: 14 }), (turns) => {
+        let board = START;
+        const done: (readonly Change[])[] = [];
+        for (const { command, isUndo, which } of turns) {
+          const undone = done[which % Math.max(1, done.length)];
+          try {
+            const changes =
+              isUndo && undone ? planInverted(board, invertChanges(undone), true) : planCommand(board, command);
+            const after = applyChanges(board, changes);
+            requireWholeBoard(board, after);
+            expect(applyChanges(after, invertChanges(changes))).toEqual(board);
+            board = after;
+            done.push(changes);
+          } catch (error) {
+            if (!(error instanceof ChangeConflict)) throw error;
+            // A command is refused for what it asks, never for what it would have made of the board.
+            if (!isUndo || !undone) expect(error.message).not.toMatch(/ would /);
+          }
+          expectWhole(board);
+        }
+      }),
+      { numRuns: 150 },
     );
   });
 

@@ -1,7 +1,10 @@
 import { applyChanges, ChangeConflict, type Change } from "@/lib/board/changes";
 import type { CommandOf } from "@/lib/board/command-schema";
-import { freeTake, othersAt, stackOf, stacksAt, type Place } from "@/lib/board/look-up";
+import { freeTake, LINES_MOST, othersAt, stackOf, stacksAt, type Place } from "@/lib/board/look-up";
 import type { Board, BoardStack } from "@/lib/board/model";
+
+/** A place may lie so many lines beyond the grid: further out is a slip of the hand, and all between would be holes. */
+const BEYOND_MOST = 3;
 
 type Placing = Pick<CommandOf<"place-stack">, "stackId" | "place" | "occupied" | "expect">;
 
@@ -110,6 +113,7 @@ export function planTake(board: Board, stack: BoardStack): Change[] {
 export function planAddLine(board: Board, { axis, at }: CommandOf<"add-line">): Change[] {
   const lines = axis === "row" ? board.grid.rows : board.grid.columns;
   if (at > lines + 1) throw new ChangeConflict("There is no such line.", "grid");
+  if (lines >= LINES_MOST) throw new ChangeConflict(`A grid has ${LINES_MOST} ${axis}s at the most.`, "");
   return [{ on: "line", axis, at, by: 1 }];
 }
 
@@ -121,9 +125,20 @@ export function planRemoveLine(board: Board, { axis, at }: CommandOf<"remove-lin
   return [{ on: "line", axis, at, by: -1 }];
 }
 
+/** @throws ChangeConflict where the place lies too far beyond the grid */
 export function growTo(board: Board, place: Place | null): Change[] {
   if (place === null) return [];
   const { rows, columns } = board.grid;
+  requireNear("row", rows, place.row);
+  requireNear("column", columns, place.column);
   const after = { rows: Math.max(rows, place.row), columns: Math.max(columns, place.column) };
   return after.rows === rows && after.columns === columns ? [] : [{ on: "grid", before: { rows, columns }, after }];
+}
+
+function requireNear(axis: "row" | "column", lines: number, at: number): void {
+  if (at <= lines) return;
+  if (at > LINES_MOST) throw new ChangeConflict(`A grid has ${LINES_MOST} ${axis}s at the most.`, "");
+  if (at <= lines + BEYOND_MOST) return;
+  const most = `The grid has ${lines} ${axis}s. A place may lie at most ${BEYOND_MOST} ${axis}s beyond it.`;
+  throw new ChangeConflict(`${most} Add ${axis}s first, or choose a nearer place.`, "");
 }

@@ -10,6 +10,7 @@ import type { CommandOf } from "@/lib/board/command-schema";
 import { sumOfChanges } from "@/lib/board/diff-boards";
 import type { Board } from "@/lib/board/model";
 import { describeUndo } from "@/lib/board/sentence";
+import { listUnfitShares } from "@/lib/board/share-reads";
 import { standingAfter, undoneSteps } from "@/lib/board/standing";
 import { countOf } from "@/lib/board/words";
 import { AppError } from "@/lib/errors/app-error";
@@ -107,9 +108,14 @@ export async function planUndoBackTo(
   const last = await nameLastStep(tx, access.projectId, toRevision);
   const taken = rows.flatMap(({ steps }) => invertChanges(steps));
   requireDivisionRight(access, taken);
+  const after = applyChanges(board, taken);
+  const unfit = new Set((await listUnfitShares(tx, access.projectId, board, after)).map(({ id }) => id));
+  const stacks = after.stacks.map((stack) => (unfit.has(stack.id) ? { ...stack, shareUserId: null } : stack));
+  const given =
+    unfit.size === 0 ? "" : `; ${countOf(unfit.size, "stack")} given to nobody, as who had them may not edit any more`;
   return {
-    steps: sumOfChanges(board, applyChanges(board, taken), taken),
-    describe: () => `undid ${countOf(done.length, "step")}, back to ${last}`,
+    steps: sumOfChanges(board, { ...after, stacks }, taken),
+    describe: () => `undid ${countOf(done.length, "step")}, back to ${last}${given}`,
     undoes: null,
     afterRevision: null,
   };

@@ -36,6 +36,7 @@ export function answerFile(request: Request, file: FileAnswer): Response {
     return new Response(null, { status: 416, headers });
   }
   const { first, last } = range ?? { first: 0, last: sizeBytes - 1 };
+  // Next leaves it out when it sends (its send-response.js); a download then shows no total, `content-range` does.
   headers.set("content-length", String(last - first + 1));
   if (range) headers.set("content-range", `bytes ${first}-${last}/${sizeBytes}`);
   const isEmpty = request.method === "HEAD" || sizeBytes === 0;

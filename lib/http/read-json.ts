@@ -4,6 +4,10 @@ import { AppError } from "@/lib/errors/app-error";
 /** Largest JSON body that is read: the longest command (6 000 frames of 36 characters, and where each was) is three quarters. */
 const MAX_BODY_BYTES = 1024 * 1024;
 
+/** Of what is wrong, so many are told, each so long: names in a body are its sender's, and may be any number. */
+const TOLD_MOST = 20;
+const TOLD_CHARACTERS = 200;
+
 /**
  * Reads and validates a JSON body.
  * @throws AppError unsupported_media_type unless application/json, too_large, or invalid naming each field
@@ -15,7 +19,10 @@ export async function readJson<Body>(request: Request, schema: z.ZodType<Body>):
   }
   const parsed = schema.safeParse(parse(await readText(request, MAX_BODY_BYTES)));
   if (parsed.success) return parsed.data;
-  const fields = parsed.error.issues.map((issue) => ({ field: issue.path.join("."), message: issue.message }));
+  const fields = parsed.error.issues.slice(0, TOLD_MOST).map((issue) => ({
+    field: issue.path.join(".").slice(0, TOLD_CHARACTERS),
+    message: issue.message.slice(0, TOLD_CHARACTERS),
+  }));
   const sentence = fields.map(({ field, message }) => (field ? `${field}: ${message}` : message)).join("; ");
   throw new AppError("invalid", sentence, { fields });
 }

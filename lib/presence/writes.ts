@@ -1,5 +1,5 @@
 import "server-only";
-import { and, eq, inArray, lte } from "drizzle-orm";
+import { and, eq, gt, inArray, lte } from "drizzle-orm";
 import { database, type Transaction, writeTransaction } from "@/db/client";
 import { sessions } from "@/db/schema/accounts";
 import { presences } from "@/db/schema/board";
@@ -8,6 +8,9 @@ import { AppError } from "@/lib/errors/app-error";
 import { publish } from "@/lib/events/publish";
 import type { ProjectId, SessionId } from "@/lib/ids";
 import { presentPeople, selectPresences, SILENT_MS } from "@/lib/presence/reads";
+
+/** One session's word is written down so often at most, ms, unless it is another tile. */
+const WRITE_EVERY_MS = 2000;
 
 /**
  * Notes that somebody has the board open, and on which tile. Others hear of it only where something changed: somebody
@@ -20,6 +23,7 @@ export async function notePresence(
   tile: string | null,
   nowMs: number,
 ): Promise<void> {
+  if (await isNoted(projectId, user.sessionId, tile, nowMs)) return;
   await writeTransaction((tx) =>
     tellingOfChanges(tx, projectId, nowMs, async () => {
       const [session] = await tx.select({ id: sessions.id }).from(sessions).where(eq(sessions.id, user.sessionId));
@@ -33,6 +37,15 @@ export async function notePresence(
         });
     }),
   );
+}
+
+async function isNoted(projectId: ProjectId, sessionId: SessionId, tile: string | null, nowMs: number) {
+  const ofSession = and(eq(presences.projectId, projectId), eq(presences.sessionId, sessionId));
+  const [row] = await database()
+    .select({ tile: presences.tile })
+    .from(presences)
+    .where(and(ofSession, gt(presences.seenAtMs, nowMs - WRITE_EVERY_MS)));
+  return row !== undefined && row.tile === tile;
 }
 
 /** Takes a session off one board: its page was left or closed. Another tab of it says again within seconds that it is here. */

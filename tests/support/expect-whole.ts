@@ -1,8 +1,9 @@
 import { expect } from "vitest";
 import type { Board } from "@/lib/board/model";
+import { requireWholeBoard } from "@/lib/board/whole-board";
 
 /**
- * Every frame in exactly one place, every stack with frames (but those that had none at the start), every place with
+ * The product's own check finds nothing, and neither does this one, written apart from it: every frame in exactly one place, every stack with frames (but those that had none at the start), every place with
  * one stack a take and one chosen take.
  */
 export function expectWhole(board: Board, start: Board): void {
@@ -10,6 +11,11 @@ export function expectWhole(board: Board, start: Board): void {
   expect(ids(board)).toEqual(ids(start));
   const emptyAtStart = emptyStacks(start);
   expect(emptyStacks(board).filter((id) => !emptyAtStart.includes(id))).toEqual([]);
+  expect(() => requireWholeBoard(start, board)).not.toThrow();
+  const outside = board.stacks.filter(({ row, column }) => {
+    return (row ?? 0) > board.grid.rows || (column ?? 0) > board.grid.columns;
+  });
+  expect(outside).toEqual([]);
   const stackIds = new Set(board.stacks.map(({ id }) => id));
   expect(board.frames.filter(({ stackId }) => stackId !== null && !stackIds.has(stackId))).toEqual([]);
   const placed = board.stacks.filter(({ row }) => row !== null);

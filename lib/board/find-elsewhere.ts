@@ -50,7 +50,8 @@ export function sharpnessApart(
 }
 
 function judgeLast(judged: readonly FrameSharpness[]): FrameSharpness {
-  const own = judged.at(-1) ?? { score: 0, detail: 0, verdict: "cannot tell", relative: null };
+  const own = judged.at(-1);
+  if (!own) return { score: 0, detail: 0, verdict: "cannot tell", relative: null };
   const best = Math.max(...judged.slice(0, -1).map(({ score }) => score));
   if (own.relative === null || !Number.isFinite(best)) return { ...own, relative: null };
   return { ...own, relative: Math.exp(Math.min(0, own.score - best)) };

@@ -147,8 +147,16 @@ function labelOf(question: BoardQuestion): string {
 /** Every frame is where the answers, in their order, said, and where it was before otherwise. */
 function expectAnswered(given: readonly BoardQuestion[], before: Board, now: Board): void {
   const expected = new Map(before.frames.map(({ id, stackId, setAside }) => [id, { stackId, setAside }]));
+  const order = new Map(before.frames.map(({ id, orderTaken }) => [id, orderTaken]));
+  const orderOf = (id: string) => order.get(id) ?? 0;
   for (const question of given) {
     const action = answerOf(question)?.action;
+    if (action?.type === "split-stack") {
+      for (const [id, frame] of expected) {
+        const isBehind = frame.stackId === action.stackId && orderOf(id) >= orderOf(action.atFrameId);
+        if (isBehind) expected.set(id, { ...frame, stackId: "made" });
+      }
+    }
     for (const id of action && "frameIds" in action ? action.frameIds : []) {
       const frame = expected.get(id);
       if (!frame || !action) continue;

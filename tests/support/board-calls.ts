@@ -43,7 +43,7 @@ export function callsOn(projectId: string) {
       expect(response.status, JSON.stringify(body)).toBe(status);
       return body;
     },
-    board: async (): Promise<Board> => boardSchema.parse(await get(getBoardRoute, "board")),
+    board: async (): Promise<Board> => boardSchema.parse(await get(getBoardRoute, "board?texts=tokens")),
     since: async (revision: number) => boardSinceSchema.parse(await get(getBoardRoute, `board?since=${revision}`)),
     record: async (query = "") => recordSchema.parse(await get(getRecordRoute, `record${query}`)),
     mine: async () => undoStateSchema.parse(await get(getMineRoute, "record/mine")),

@@ -91,8 +91,11 @@ async function runJob(handler: JobHandler, job: ClaimedJob, signal: AbortSignal)
 }
 
 async function somethingEnds(running: RunningJobs, signal: AbortSignal): Promise<void> {
-  const pause = delay(POLL_MS, undefined, { signal }).catch(() => undefined);
+  // Ended with whatever ends first: left to run out, pauses would gather on the signal while many short jobs end.
+  const over = new AbortController();
+  const pause = delay(POLL_MS, undefined, { signal: AbortSignal.any([signal, over.signal]) }).catch(() => undefined);
   await Promise.race([pause, ...[...running.values()].map(({ ended }) => ended)]);
+  over.abort();
 }
 
 async function drain(running: RunningJobs): Promise<void> {

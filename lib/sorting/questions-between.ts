@@ -128,7 +128,10 @@ function evidenceOf(draft: SortedDraft, join: Join): string {
 function matchOf({ measure, before }: Join): string {
   const px = Math.round(Math.hypot(measure.xPx, measure.yPx));
   const { name } = before;
-  if (measure.contrast < 1) return `shows too little detail to compare with ${name}`;
+  if (measure.contrast < 1) {
+    // Nothing to register by: what is left to judge is how alike the two are as they lie (SSIM, Wang et al. 2004).
+    return `shows too little detail to be matched with ${name}; as they lie, their similarity is ${measure.ssim.toFixed(2)} of 1`;
+  }
   if (measure.ncc < WEAKLY) return `matches ${name} nowhere for sure`;
   const how = measure.ncc >= CLOSELY ? "closely" : measure.ncc >= FAIRLY ? "fairly" : "weakly";
   const far = Math.round(shiftFraction(measure, before) * 100);

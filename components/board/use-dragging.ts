@@ -20,7 +20,7 @@ export function useDragging(index: BoardIndex) {
   const sayAim = ({ moving, target }: Carried) => {
     if (target) announce(aimSentence(index, moving, target));
   };
-  usePointer(isByPointer, (point) => {
+  const lookNow = usePointer(isByPointer, (point) => {
     const { carried } = hand.get();
     if (!held.current || !carried) return;
     const { target, moving } = aimAt(index, held.current.grip, point);
@@ -44,6 +44,8 @@ export function useDragging(index: BoardIndex) {
       );
     },
     end() {
+      // A quick hand lets go before the next drawn frame: it is put down where the pointer is, not where it was.
+      lookNow();
       const { carried } = hand.get();
       hand.letGo();
       if (!carried) return;
@@ -84,9 +86,13 @@ function aimSentence(index: BoardIndex, moving: Carried["moving"], target: Targe
   return `${nameOfMoved(index, moving)} over ${nameOfTarget(index, target)}. ${outcomeOf(index, moving, target).sentence}`;
 }
 
-/** Where the pointer is, at most once a drawn frame; also when the page scrolls under it. */
-function usePointer(isOn: boolean, onPoint: (point: { x: number; y: number }) => void) {
+/**
+ * Where the pointer is, at most once a drawn frame; also when the page scrolls under it.
+ * @returns tells of a place at once that the next drawn frame would tell of
+ */
+function usePointer(isOn: boolean, onPoint: (point: { x: number; y: number }) => void): () => void {
   const latest = useRef(onPoint);
+  const hurry = useRef<() => void>(() => undefined);
   useEffect(() => {
     latest.current = onPoint;
   });
@@ -101,6 +107,11 @@ function usePointer(isOn: boolean, onPoint: (point: { x: number; y: number }) =>
     const schedule = () => {
       if (request === 0) request = requestAnimationFrame(look);
     };
+    hurry.current = () => {
+      if (request === 0) return;
+      cancelAnimationFrame(request);
+      look();
+    };
     const move = (event: MouseEvent | TouchEvent) => {
       const at = "touches" in event ? event.touches[0] : event;
       if (!at) return;
@@ -111,12 +122,14 @@ function usePointer(isOn: boolean, onPoint: (point: { x: number; y: number }) =>
     window.addEventListener("touchmove", move);
     window.addEventListener("scroll", schedule, true);
     return () => {
+      hurry.current = () => undefined;
       cancelAnimationFrame(request);
       window.removeEventListener("mousemove", move);
       window.removeEventListener("touchmove", move);
       window.removeEventListener("scroll", schedule, true);
     };
   }, [isOn]);
+  return () => hurry.current();
 }
 
 /** Two drawn frames: after the first the list has scrolled, after the second its new lines are drawn. */
